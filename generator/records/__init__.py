@@ -1,0 +1,1 @@
+"""Frozen shapes handed from room to room; no files, no clock, no arithmetic of the trade."""
