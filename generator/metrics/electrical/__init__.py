@@ -1,0 +1,15 @@
+"""Mains quantities: voltage, current, power, power factor, harmonics, over whole cycles."""
+
+from generator.metrics.electrical.figures import mains_figures
+from generator.metrics.electrical.mains_frequency import mains_frequency
+from generator.metrics.electrical.mains_quantities import MainsQuantities, mains_quantities
+from generator.metrics.electrical.mains_view import MainsCycle, mains_cycle
+
+__all__ = [
+    "MainsCycle",
+    "MainsQuantities",
+    "mains_cycle",
+    "mains_figures",
+    "mains_frequency",
+    "mains_quantities",
+]
