@@ -1,0 +1,1 @@
+"""From bytes on disk to exact cells: files, text tables, numbers, and what is wrong with them."""
