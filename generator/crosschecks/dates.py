@@ -1,0 +1,107 @@
+"""Dates and report numbers: whether a report can be about the lamp it stands under."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from decimal import Decimal
+
+from generator.crosschecks.evidence import LampEvidence
+from generator.crosschecks.tolerances import NO_SOURCE, tolerance
+from generator.crosschecks.wording import CheckText, listed
+from generator.records.campaign import Campaign
+from generator.records.figure import MEAN
+from generator.records.finding import Finding, Severity
+from generator.records.lamp import Lamp
+
+__all__ = ["report_after_assessment", "report_older_than_model", "reports_shared"]
+
+_OLDER = CheckText(
+    "report-older-than-model",
+    "Report older than the model",
+    "A test of samples before the start of sale, which is usual within a year; a test of an "
+    "earlier model that this one is said to be equivalent to; or a slip in one of the dates.",
+    (),
+    NO_SOURCE,
+)
+_AFTER = CheckText(
+    "report-after-assessment",
+    "Report dated after the assessment",
+    "A slip in one of the dates, a day and month exchanged, or an assessment date left from an "
+    "earlier issue would explain it.",
+    (),
+    NO_SOURCE,
+)
+_SHARED = CheckText(
+    "report-number-between-bidders",
+    "One report number under two bidders",
+    "Two bidders offering lamps of one maker, two laboratories that number alike, or a report "
+    "attached to the wrong bid would explain it.",
+    (),
+    NO_SOURCE,
+)
+
+
+def report_older_than_model(evidence: LampEvidence) -> Iterator[Finding]:
+    """Date of the report against the date of placing on the market."""
+    lamp = evidence.lamp
+    report, market = lamp.offer.report_date, lamp.placed_on_market
+    if report is None or market is None or report >= market:
+        return
+    days = (market - report).days
+    usual = tolerance("report_before_market_d")
+    yield _OLDER.finding(
+        lamp.lamp_id,
+        MEAN,
+        Severity.REMARK if days <= usual.value else Severity.DOUBT,
+        f"report of {report.isoformat()}, placed on the market on {market.isoformat()}: the report "
+        f"is {days} days older, up to {usual.words} are usual ({usual.reason})",
+        Decimal(-days),
+        "days",
+    )
+
+
+def report_after_assessment(evidence: LampEvidence) -> Iterator[Finding]:
+    """Date of the report against the date of the assessment that the campaign gives."""
+    report, assessed = evidence.lamp.offer.report_date, evidence.assessment_date
+    if report is None or assessed is None or report <= assessed:
+        return
+    days = (report - assessed).days
+    yield _AFTER.finding(
+        evidence.lamp.lamp_id,
+        MEAN,
+        Severity.CONTRADICTION,
+        f"report of {report.isoformat()}, assessment of {assessed.isoformat()}: the report is "
+        f"{days} days younger",
+        Decimal(days),
+        "days",
+    )
+
+
+def reports_shared(campaign: Campaign) -> Iterator[Finding]:
+    """Report numbers that lamps of more than one bidder rest on.
+
+    Parameters
+    ----------
+    campaign
+        The campaign.
+
+    Yields
+    ------
+    Finding
+        One per lamp concerned.
+    """
+    groups: dict[str, list[Lamp]] = {}
+    for lamp in campaign.lamps:
+        if lamp.offer.report_no:
+            groups.setdefault(lamp.offer.report_no.casefold(), []).append(lamp)
+    for lamps in groups.values():
+        for lamp in lamps:
+            others = [other for other in lamps if other.bidder != lamp.bidder]
+            if others:
+                names = listed([f"{other.lamp_id} of {other.bidder}" for other in others])
+                yield _SHARED.finding(
+                    lamp.lamp_id,
+                    MEAN,
+                    Severity.DOUBT,
+                    f"report {lamp.offer.report_no} of {lamp.bidder} also stands under {names}",
+                )
