@@ -1,0 +1,134 @@
+"""Fitting a lamp's sheet onto its pages: what is folded away first, and how that is said.
+
+Nothing disappears silently: what is folded is counted in the words of the sheet, and the page on
+screen and the data files hold it all. A failed clause is folded last.
+"""
+
+from __future__ import annotations
+
+import dataclasses
+from collections import Counter
+
+from generator.sheets.description import Note
+from generator.sheets.drawings.drawing import Drawing
+from generator.sheets.lamp_description import LampSheet, VerdictGroup
+from generator.sheets.lamp_words import FOLDED
+
+__all__ = ["BUDGETS", "Budget", "budgets_for", "fitted"]
+
+_ORDER = ("fail", "inconclusive", "not-measured", "pass", "not-applicable")
+_FIRST_DRAWINGS = ("spectrum", "white", "rendering", "light", "mains", "watts")
+_THEN_DRAWINGS = ("harmonics", "ageing", "intensity", "plane", "hues")
+
+
+@dataclasses.dataclass(frozen=True, slots=True)
+class Budget:
+    """What a sheet may hold on paper.
+
+    Parameters
+    ----------
+    rows
+        Clauses shown on page one.
+    note_length
+        Characters of remarks.
+    drawings
+        How many drawings, in the order of their weight.
+    entries
+        How many methods, and how many notes on the verdicts.
+    dense
+        Whether the text is set closer.
+    """
+
+    rows: int
+    note_length: int
+    drawings: int
+    entries: int
+    dense: bool
+
+
+BUDGETS = (
+    Budget(rows=24, note_length=1600, drawings=11, entries=60, dense=False),
+    Budget(rows=38, note_length=900, drawings=11, entries=60, dense=True),
+    Budget(rows=32, note_length=900, drawings=11, entries=40, dense=True),
+    Budget(rows=24, note_length=700, drawings=10, entries=20, dense=True),
+    Budget(rows=16, note_length=500, drawings=6, entries=6, dense=True),
+    Budget(rows=8, note_length=0, drawings=4, entries=0, dense=True),
+)
+"""Tried in turn until the pages suffice."""
+
+
+def budgets_for(sheet: LampSheet) -> tuple[Budget, ...]:
+    """Give the budgets worth trying: the roomy one only where it folds no clause.
+
+    Parameters
+    ----------
+    sheet
+        The whole description.
+    """
+    clauses = sum(len(group.clauses) for group in sheet.verdicts)
+    return tuple(budget for budget in BUDGETS if budget.dense or clauses <= budget.rows)
+
+
+def fitted(sheet: LampSheet, budget: Budget) -> LampSheet:
+    """Fold a sheet to a budget.
+
+    Parameters
+    ----------
+    sheet
+        The whole description.
+    budget
+        What it may hold.
+    """
+    drawings = _chosen(sheet.drawings, budget.drawings)
+    methods, notes = sheet.methods[: budget.entries], sheet.verdict_notes[: budget.entries]
+    left = {
+        "drawings": sum(1 for item in sheet.drawings if item.svg)
+        - sum(1 for item in drawings if item.svg),
+        "methods": len(sheet.methods) - len(methods),
+        "notes": len(sheet.verdict_notes) - len(notes),
+    }
+    return dataclasses.replace(
+        sheet,
+        verdicts=_folded(sheet.verdicts, budget.rows),
+        verdict_notes=notes,
+        notes=_shortened(sheet.notes, budget.note_length),
+        drawings=drawings,
+        methods=methods,
+        folded=tuple(FOLDED[key].format(count=count) for key, count in left.items() if count),
+    )
+
+
+def _chosen(drawings: tuple[Drawing, ...], most: int) -> tuple[Drawing, ...]:
+    """Keep the weightiest drawings in reading order; those with nothing to draw stay as words."""
+    weight = (*_FIRST_DRAWINGS, *_THEN_DRAWINGS)
+    drawn = sorted((item for item in drawings if item.svg), key=lambda item: weight.index(item.key))
+    kept = {item.key for item in drawn[:most]}
+    return tuple(item for item in drawings if item.key in kept or not item.svg)
+
+
+def _folded(groups: tuple[VerdictGroup, ...], rows: int) -> tuple[VerdictGroup, ...]:
+    every = [clause for group in groups for clause in group.clauses]
+    ranked = sorted(range(len(every)), key=lambda at: (_ORDER.index(every[at].mark), at))
+    kept = {id(every[at]) for at in ranked[:rows]}
+    return tuple(_fold(group, kept) for group in groups)
+
+
+def _fold(group: VerdictGroup, kept: set[int]) -> VerdictGroup:
+    left = [clause for clause in group.clauses if id(clause) not in kept]
+    if not left:
+        return group
+    shown = tuple(clause for clause in group.clauses if id(clause) in kept)
+    words = Counter(text.word for clause in left for text in clause.verdicts)
+    counted = ", ".join(f"{count} {word}" for word, count in words.items())
+    return dataclasses.replace(
+        group, clauses=shown, folded=FOLDED["verdicts"].format(counted=counted)
+    )
+
+
+def _shortened(notes: tuple[Note, ...], length: int) -> tuple[Note, ...]:
+    used = 0
+    for place, note in enumerate(notes):
+        used += note.length
+        if used > length:
+            return (*notes[:place], Note(f"<p>{FOLDED['remarks']}</p>", len(FOLDED["remarks"])))
+    return notes

@@ -1,0 +1,226 @@
+"""Costs, light, energy and emissions of the bids of a lot in words and tables."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping, Sequence
+
+from generator.records.tender import BidResult, CostItem, LifeCycleCost, LotResult
+from generator.records.tender_settings import Sensitivity
+from generator.sheets.drawings.drawing import DataTable, Drawing, Palette
+from generator.sheets.drawings.tornado import draw_tornado
+from generator.sheets.tender_description import (
+    Block,
+    DrawingBlock,
+    HeadingBlock,
+    ListBlock,
+    ParagraphBlock,
+    TableBlock,
+)
+from generator.sheets.tender_text import NONE, amount, number
+
+__all__ = ["cost_blocks", "energy_blocks", "item_table", "tornado_blocks"]
+
+_STUDY = (
+    "Present value over {years} years, {prices} prices, in {currency}, for the number of lamps "
+    "named in each row."
+)
+_EQUAL = (
+    "Mean luminous flux is that over the study. Lamps needed is the number that gives the light "
+    "the lot asks for; a dash stands where it asks for none."
+)
+_TORNADO = (
+    "{bid}: of the assumptions moved one at a time, {first} changes the life-cycle cost most, from "
+    "{low} to {high} {currency}."
+)
+_RANGE = "{low} to {high}"
+_SAVED = "Against {lamp}, which the lot uses today."
+_FACTOR = "{basis}: {factor} g/kWh, {region}, {year}. Source: {source}"
+
+
+def cost_blocks(lot: LotResult, titles: Mapping[str, str], currency: str) -> Iterator[Block]:
+    """Life-cycle cost by item, cost at equal light, break-even."""
+    costed = [item for item in lot.bids if item.cost is not None]
+    yield HeadingBlock("Life-cycle cost", 3)
+    withheld = [
+        f"{item.shown_as}: {'; '.join(item.withheld)}." for item in lot.bids if item.withheld
+    ]
+    first = next((item.cost for item in costed if item.cost is not None), None)
+    if first is not None:
+        words = _STUDY.format(years=first.years, prices=first.prices, currency=currency)
+        yield ParagraphBlock(words, "quiet")
+        yield item_table(lot, titles, currency)
+        yield ParagraphBlock(_EQUAL, "quiet")
+        yield _light_table(costed, currency)
+        if lot.baseline is not None:
+            yield ParagraphBlock(_SAVED.format(lamp=titles[lot.baseline_lamp]), "quiet")
+            yield _break_even_table(costed, currency)
+    if withheld:
+        yield ParagraphBlock("Not given")
+        yield ListBlock(tuple(withheld))
+    if lot.notes:
+        yield ListBlock(lot.notes)
+
+
+def item_table(lot: LotResult, titles: Mapping[str, str], currency: str) -> TableBlock:
+    """Present value by item of cost, one row per bid and one for the baseline lamp."""
+    costs = [(item.shown_as, item.cost) for item in lot.bids if item.cost is not None]
+    if lot.baseline is not None:
+        costs.append((f"{titles[lot.baseline_lamp]} (in use today)", lot.baseline))
+    used = [item for item in CostItem if any(item in cost.by_item for _, cost in costs)]
+    rows = tuple(_cost_row(name, cost, used) for name, cost in costs)
+    headings = ("Bid", "Lamps", *(item.value for item in used), "Total")
+    caption = f"Life-cycle cost by item, present value in {currency}"
+    return TableBlock(caption, headings, rows)
+
+
+def _cost_row(name: str, cost: LifeCycleCost, used: Sequence[CostItem]) -> tuple[str, ...]:
+    items = cost.by_item
+    return (
+        name,
+        str(cost.lamps),
+        *(amount(items.get(item)) for item in used),
+        amount(cost.total),
+    )
+
+
+def _light_table(costed: Sequence[BidResult], currency: str) -> TableBlock:
+    rows = []
+    for item in costed:
+        light = item.equal_light
+        if light is None:
+            rows.append((item.shown_as, NONE, NONE, NONE, NONE, NONE))
+            continue
+        rows.append(
+            (
+                item.shown_as,
+                number(light.flux_lm, 0),
+                number(light.flux_lm * light.maintained_share, 0),
+                number(light.million_lumen_hours, 1),
+                number(light.cost_per_million_lumen_hours, 3),
+                NONE if light.lamps_needed is None else str(light.lamps_needed),
+            )
+        )
+    headings = (
+        "Bid",
+        "Initial flux, lm",
+        "Mean flux, lm",
+        "Light, Mlm h",
+        f"{currency} per Mlm h",
+        "Lamps needed",
+    )
+    return TableBlock("Cost at equal light", headings, tuple(rows))
+
+
+def _break_even_table(costed: Sequence[BidResult], currency: str) -> TableBlock:
+    rows = []
+    for item in costed:
+        even = item.break_even
+        payback, year = NONE, NONE
+        if even is not None:
+            year = "never" if even.year is None else str(even.year)
+            payback = number(even.simple_payback_years, 1)
+            if payback == "0.0":
+                payback = "< 0.1"
+            if even.simple_payback_years is None and even.year == 0:
+                payback = "at once"
+        rows.append((item.shown_as, amount(even.saving if even else None), year, payback))
+    headings = (
+        "Bid",
+        f"Saving, {currency}",
+        "Break-even, end of year",
+        "Simple payback, years",
+    )
+    return TableBlock("Saving against the lamp in use today, present value", headings, tuple(rows))
+
+
+def tornado_blocks(
+    lot: LotResult, moved: Sensitivity, currency: str, colours: Palette
+) -> Iterator[Block]:
+    """Sensitivity: a drawing for the bid that stands first, a table for every bid."""
+    bids = [item for item in lot.bids if item.sensitivity and item.cost is not None]
+    if not bids:
+        return
+    yield HeadingBlock("Sensitivity", 3)
+    yield DrawingBlock(_tornado(bids[0], currency, colours))
+    spans = {
+        "tariff": moved.tariff_percent,
+        "hours per year": moved.hours_percent,
+        "discount rate": moved.discount_rate_percent,
+        "life": moved.life_percent,
+    }
+    rows = tuple((item.shown_as, *_ranges(item, tuple(spans))) for item in bids)
+    headings = ("Bid", *(f"{name} ± {span} %" for name, span in spans.items()))
+    caption = f"Life-cycle cost with one assumption moved down and up, {currency}"
+    yield TableBlock(caption, headings, rows)
+
+
+def _ranges(item: BidResult, names: Sequence[str]) -> Iterator[str]:
+    """Cost at the lower and at the higher value of each assumption."""
+    bars = {bar.assumption: bar for bar in item.sensitivity}
+    for name in names:
+        bar = bars[name]
+        yield (
+            "unchanged"
+            if bar.swing == 0
+            else _RANGE.format(low=amount(bar.low_cost), high=amount(bar.high_cost))
+        )
+
+
+def _tornado(item: BidResult, currency: str, colours: Palette) -> Drawing:
+    bars, widest = item.sensitivity, item.sensitivity[0]
+    ends = sorted((widest.low_cost, widest.high_cost))
+    says = _TORNADO.format(
+        bid=item.shown_as,
+        first=widest.assumption,
+        low=amount(ends[0]),
+        high=amount(ends[1]),
+        currency=currency,
+    )
+    cost = float(item.cost.total) if item.cost is not None else 0.0
+    rows = tuple((bar.assumption, amount(bar.low_cost), amount(bar.high_cost)) for bar in bars)
+    table = DataTable(("assumption", "cost at the lower", "cost at the higher"), rows)
+    return Drawing(
+        "tornado",
+        "Sensitivity of the cost",
+        says,
+        draw_tornado(bars, cost, currency, says, colours),
+        table,
+    )
+
+
+def energy_blocks(lot: LotResult, titles: Mapping[str, str]) -> Iterator[Block]:
+    """Energy of a year, its saving, and emissions on each basis."""
+    known = [item for item in lot.bids if item.energy is not None]
+    if not known:
+        return
+    yield HeadingBlock("Energy and emissions of a year", 3)
+    first = known[0].energy
+    bases = first.emissions if first is not None else ()
+    rows = []
+    for item in known:
+        use = item.energy
+        if use is None:
+            continue
+        cells = [item.shown_as, str(use.lamps), number(use.in_use_kwh, 0)]
+        cells += [number(use.standby_kwh, 0), number(use.saving_kwh, 0)]
+        for emission in use.emissions:
+            cells += [number(emission.tonnes, 2), number(emission.saving_tonnes, 2)]
+        rows.append(tuple(cells))
+    headings = ["Bid", "Lamps", "In use, kWh", "Standby, kWh", "Saved, kWh"]
+    for emission in bases:
+        headings += [f"{emission.basis}, t CO2e", "saved, t CO2e"]
+    caption = "Energy and emissions of a year"
+    if lot.baseline_lamp:
+        caption += f"; saved against {titles[lot.baseline_lamp]}"
+    yield TableBlock(caption, tuple(headings), tuple(rows))
+    factors = tuple(
+        _FACTOR.format(
+            basis=emission.basis.capitalize(),
+            factor=emission.factor.g_per_kwh,
+            region=emission.factor.region,
+            year=emission.factor.year or "year not stated",
+            source=emission.factor.source,
+        )
+        for emission in bases
+    )
+    yield ListBlock((*factors, *(first.notes if first is not None else ())))

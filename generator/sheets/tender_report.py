@@ -1,0 +1,194 @@
+"""The tender report: what is asked, each lot from gate to certainty, plan, formulas."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+from dataclasses import replace
+
+from generator.errors import SheetError
+from generator.records.assessment import Assessment
+from generator.records.comparison import SheetContext
+from generator.records.tender import LotResult, Tender
+from generator.records.tender_settings import TenderSettings
+from generator.sheets.description import Pair, SheetFrame
+from generator.sheets.drawings.drawing import Palette
+from generator.sheets.sheet_frame import sheet_frame
+from generator.sheets.tender_award import award_blocks, certainty_blocks
+from generator.sheets.tender_costs import cost_blocks, energy_blocks, tornado_blocks
+from generator.sheets.tender_description import (
+    Block,
+    HeadingBlock,
+    ListBlock,
+    PairsBlock,
+    ParagraphBlock,
+    TenderDocument,
+)
+from generator.sheets.tender_eligibility import asked_for, eligibility_blocks, outcome_table
+from generator.sheets.tender_plan import plan_blocks
+from generator.sheets.tender_text import number
+from generator.sheets.tender_trail import trail_blocks
+from generator.sheets.tender_words import FORMULAS, REPORT_LEAD, TENDER_CAUTIONS
+from generator.sheets.themes import palette
+
+__all__ = ["describe_tender_report", "lot_name", "tender_frame", "tender_of"]
+
+_SOURCES = ("eu_2014_24", "ghg_scope_2", "ies_tm_21", "iec_62717", "jcgm_101", "jcgm_106")
+_FILES = (
+    ("Workbook with live formulas", "workbook.xlsx"),
+    ("Bids as CSV", "bids.csv"),
+    ("Cash flows as CSV", "cash_flows.csv"),
+    ("Scores as CSV", "scores.csv"),
+    ("Ranks as CSV", "ranks.csv"),
+    ("Plan as CSV", "plan.csv"),
+)
+
+
+def tender_of(assessment: Assessment) -> Tender:
+    """The tender of an assessment.
+
+    Raises
+    ------
+    SheetError
+        If the campaign is no tender.
+    """
+    if assessment.tender is None:
+        raise SheetError("the campaign is no tender")
+    return assessment.tender
+
+
+def tender_frame(
+    assessment: Assessment,
+    context: SheetContext,
+    title: str,
+    summary: str,
+    keys: tuple[str, ...] = _SOURCES,
+) -> SheetFrame:
+    """Frame of a tender document, with the cautions of a tender."""
+    frame = sheet_frame(
+        assessment,
+        context,
+        title=title,
+        summary=summary,
+        gaps=(),
+        keys=keys,
+        principal=keys,
+    )
+    return replace(frame, cautions=TENDER_CAUTIONS)
+
+
+def describe_tender_report(assessment: Assessment, context: SheetContext) -> TenderDocument:
+    """Describe the tender report.
+
+    Parameters
+    ----------
+    assessment
+        Assessment of a campaign that is a tender.
+    context
+        Sources, and whether documents on paper are issued.
+
+    Returns
+    -------
+    TenderDocument
+        The report, fit for the file.
+
+    Raises
+    ------
+    SheetError
+        If the campaign is no tender, or the theme does not exist.
+    """
+    tender = tender_of(assessment)
+    settings = assessment.campaign.settings
+    title = f"Tender report: {settings.campaign.title}"
+    lead = " ".join(_lead(lot, tender.shown_as) for lot in tender.lots)
+    colours = palette(settings.sheet.theme, context.overrides)
+    reference = f"{settings.campaign.reference}. " if settings.campaign.reference else ""
+    frame = tender_frame(assessment, context, title, lead)
+    plan = [Pair("Relamping plan", "#plan")] if tender.plan is not None else []
+    lots = [Pair(lot_name(lot), f"#{_anchor(lot)}") for lot in tender.lots]
+    return TenderDocument(
+        frame=frame,
+        over=f"{reference}Assessed on {frame.assessed_words}",
+        lead=lead,
+        blocks=tuple(_blocks(assessment, tender, colours)),
+        pdf_name="report.pdf" if context.with_pdf else "",
+        links=(*lots, *plan, *(Pair(*file) for file in _FILES)),
+    )
+
+
+def lot_name(lot: LotResult) -> str:
+    """Lot in a few words."""
+    return f"Lot {lot.lot}" if lot.lot else "The lot"
+
+
+def _anchor(lot: LotResult) -> str:
+    return f"lot-{lot.lot or 'only'}"
+
+
+def _lead(lot: LotResult, names: Mapping[str, str]) -> str:
+    if lot.award is None:
+        return REPORT_LEAD["unranked"].format(lot=lot_name(lot))
+    winners = lot.award.winners
+    if not winners:
+        return REPORT_LEAD["none"].format(lot=lot_name(lot))
+    if len(winners) > 1:
+        bids = " and ".join(names[lamp_id] for lamp_id in winners)
+        return REPORT_LEAD["shared"].format(lot=lot_name(lot), bids=bids)
+    best = lot.award.scores[0]
+    key = "provisional" if best.provisional else "first"
+    return REPORT_LEAD[key].format(
+        lot=lot_name(lot), bid=names[winners[0]], points=number(best.total, 2)
+    )
+
+
+def _blocks(assessment: Assessment, tender: Tender, colours: Palette) -> Iterator[Block]:
+    settings = assessment.campaign.settings
+    currency = settings.use.currency or ""
+    yield PairsBlock(tuple(_facts(assessment)))
+    yield HeadingBlock("What a bid must bring", 2, "asked")
+    yield ListBlock(asked_for(settings))
+    for lot in tender.lots:
+        yield from _lot_blocks(lot, tender, settings, colours)
+    if tender.plan is not None:
+        yield from plan_blocks(tender.plan, tender.shown_as, tender.existing_titles, currency)
+    yield HeadingBlock("Formulas and notes", 2, "formulas")
+    yield ListBlock((*FORMULAS, *tender.notes))
+
+
+def _facts(assessment: Assessment) -> Iterator[Pair]:
+    settings = assessment.campaign.settings
+    use, tender = settings.use, settings.tender
+    yield Pair("Client", settings.campaign.client or "not stated")
+    yield Pair("Law as it stood on", assessment.assessed_on.isoformat())
+    if use.years is not None:
+        yield Pair("Study", f"{use.years} years, {use.prices} prices")
+    if use.discount_rate_percent is not None:
+        yield Pair("Discount rate", f"{use.discount_rate_percent} % a year, {use.prices}")
+    if use.hours_per_year is not None:
+        yield Pair("Hours in use", f"{use.hours_per_year} h a year")
+    if use.tariff_per_kwh is not None:
+        rise = use.price_rise_percent or 0
+        yield Pair("Energy", f"{use.tariff_per_kwh} {use.currency}/kWh, rising {rise} % a year")
+    names = "Code names" if assessment.shown_bidders else "Names of bidders and models"
+    yield Pair("Bids are shown by", names)
+    yield Pair("Random numbers", f"seed {tender.seed}, {tender.trials} trials")
+
+
+def _lot_blocks(
+    lot: LotResult, tender: Tender, settings: TenderSettings, colours: Palette
+) -> Iterator[Block]:
+    currency = settings.use.currency or ""
+    title = f": {lot.title}" if lot.title else ""
+    yield HeadingBlock(f"{lot_name(lot)}{title}", 2, _anchor(lot))
+    yield ParagraphBlock(f"{lot.quantity} light points.")
+    if not lot.bids:
+        yield ParagraphBlock("No lamp is offered for this lot.")
+        return
+    yield outcome_table(lot, currency)
+    yield HeadingBlock("Eligibility", 3)
+    yield from eligibility_blocks(lot, under_codes=tender.under_codes)
+    yield from award_blocks(lot, tender.shown_as, currency)
+    yield from certainty_blocks(lot, tender.shown_as, currency, colours)
+    yield from cost_blocks(lot, tender.existing_titles, currency)
+    yield from tornado_blocks(lot, settings.use.sensitivity, currency, colours)
+    yield from energy_blocks(lot, tender.existing_titles)
+    yield from trail_blocks(lot, currency)

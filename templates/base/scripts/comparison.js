@@ -1,0 +1,400 @@
+/* The controls of the comparison. The page is whole without this; only choosing is lost. */
+"use strict";
+
+(() => {
+  const { MOST_SIDE, columnPlaces, difference, emptyView, filled, fromFragment, matches, order, prepared, toCsv, toFragment, typedNumber } = lampassay;
+  const byId = (id) => document.getElementById(id);
+  const data = JSON.parse(byId("comparison-data").textContent);
+  const words = data.words;
+  const texts = prepared(data);
+  const places = columnPlaces(data);
+  const lampPlaces = new Map(data.lamps.map((lamp, at) => [lamp.id, at]));
+  const table = byId("matrix");
+  const body = table.tBodies[0];
+  const rows = [...body.rows];
+  const FIRST = 2; // cells before the first column: the lamp, its verdicts
+  const plotWait = 120;
+  const STEP = 50; // rows laid out at once, so that a filter answers at once however many lamps
+
+  let view = emptyView(data);
+  let most = STEP;
+  let matching = data.lamps.map(() => true);
+  let placed = data.lamps.map((_, at) => at);
+  let drawn = "";
+  let waiting = 0;
+  let told = "";
+
+  function made(name, properties = {}, ...children) {
+    const element = Object.assign(document.createElement(name), properties);
+    element.append(...children);
+    return element;
+  }
+
+  const shownLamps = () => placed.filter((at) => matching[at]);
+  const columnAt = (key) => data.columns[places.get(key)];
+  const columnName = (key) => (key === "lamp" ? words.lamp : key === "verdicts" ? words.verdicts : columnAt(key).label);
+
+  /* ---- the parts of the page that follow the view ---- */
+
+  function say(text) {
+    if (text === told) return;
+    told = text;
+    byId("status").textContent = text;
+  }
+
+  function countText() {
+    const count = matching.filter(Boolean).length;
+    return filled(count > most ? words.shown_first : words.shown, { shown: count, all: rows.length, first: most });
+  }
+
+  function filterRows() {
+    matching = matches(data, texts, view);
+    byId("nothing").hidden = matching.includes(true);
+  }
+
+  /** Lay out the first lamps that match, in the order of the view. */
+  function layOutRows() {
+    const base = data.lamps[lampPlaces.get(view.reference)];
+    let count = 0;
+    for (const at of placed) {
+      if (matching[at]) count += 1;
+      const away = !matching[at] || count > most;
+      if (away !== rows[at].hidden) rows[at].hidden = away;
+      if (!away && base) writeDifferences(at, base);
+    }
+    byId("more").hidden = count <= most;
+    byId("show-all").textContent = filled(words.show_all, { count });
+  }
+
+  function sortRows() {
+    const now = order(data, view);
+    if (now.some((at, index) => at !== placed[index])) {
+      placed = now;
+      body.append(...placed.map((at) => rows[at]));
+    }
+    for (const heading of table.tHead.rows[0].cells) {
+      const key = heading.dataset.key;
+      if (key && key === view.sort) heading.setAttribute("aria-sort", view.down ? "descending" : "ascending");
+      else heading.removeAttribute("aria-sort");
+    }
+  }
+
+  const columnStyle = new CSSStyleSheet();
+  document.adoptedStyleSheets = [...document.adoptedStyleSheets, columnStyle];
+
+  function showColumns() {
+    const hidden = data.columns.map((column, at) => (view.columns.includes(column.key) ? "" : `#matrix tr > :nth-child(${at + FIRST + 1})`)).filter(Boolean);
+    columnStyle.replaceSync(hidden.length ? `${hidden.join(",")}{display:none}` : "");
+    for (const box of document.querySelectorAll('input[name="column"]')) box.checked = view.columns.includes(box.value);
+  }
+
+  function showDifferences() {
+    const base = data.lamps[lampPlaces.get(view.reference)];
+    table.classList.toggle("differences", Boolean(base));
+    byId("side-table").classList.toggle("differences", Boolean(base));
+    const legend = byId("difference-legend");
+    legend.hidden = !base;
+    if (base) legend.textContent = filled(words.difference_legend, { model: base.model });
+    for (const [at, row] of rows.entries()) row.classList.toggle("reference", data.lamps[at] === base);
+  }
+
+  function writeDifferences(at, base) {
+    const [row, lamp] = [rows[at], data.lamps[at]];
+    if (row.dataset.base === base.id) return;
+    row.dataset.base = base.id;
+    for (const column of data.columns) {
+      const place = places.get(column.key);
+      const cell = row.cells[place + FIRST];
+      const text = lamp === base ? null : difference(lamp.cells[place], base.cells[place]);
+      let span = cell.querySelector(".difference");
+      if (text === null) {
+        span?.remove();
+        continue;
+      }
+      if (!span) {
+        span = made("span", { className: "difference" });
+        cell.prepend(span, " ");
+      }
+      span.textContent = text;
+    }
+  }
+
+  function showRanges() {
+    const list = byId("ranges");
+    list.hidden = !view.ranges.length;
+    list.replaceChildren(
+      ...view.ranges.map((range) => {
+        const low = range.low === null ? "" : `${words.range_low} ${range.low}`;
+        const high = range.high === null ? "" : `${words.range_high} ${range.high}`;
+        const text = `${columnName(range.key)} ${[low, high].filter(Boolean).join(", ")}`;
+        const button = made("button", { type: "button" }, `${text} \u00d7`);
+        button.setAttribute("aria-label", `${words.range_remove}: ${text}`);
+        button.addEventListener("click", () => {
+          change({ ranges: view.ranges.filter((other) => other !== range) });
+          byId("find").focus();
+        });
+        return made("li", {}, button);
+      }),
+    );
+  }
+
+  function showSide() {
+    const lamps = view.side.map((id) => data.lamps[lampPlaces.get(id)]);
+    byId("side").hidden = !lamps.length;
+    for (const [at, row] of rows.entries()) row.querySelector(".pick input").checked = view.side.includes(data.lamps[at].id);
+    if (!lamps.length) return;
+    const base = data.lamps[lampPlaces.get(view.reference)];
+    if (base) for (const lamp of lamps) writeDifferences(lampPlaces.get(lamp.id), base);
+    const head = byId("side-table").tHead.rows[0];
+    head.replaceChildren(head.cells[0], ...lamps.map(sideHeading));
+    const lines = [sideLine(words.verdicts, "", lamps, 1)];
+    for (const [at, column] of data.columns.entries()) lines.push(sideLine(column.label, column.unit, lamps, at + FIRST));
+    byId("side-table").tBodies[0].replaceChildren(...lines);
+    lampassay.spectra(byId("side-spectra"), data, lamps, words);
+  }
+
+  function sideHeading(lamp) {
+    const link = rows[lampPlaces.get(lamp.id)].querySelector("a.model").cloneNode(true);
+    const button = made("button", { type: "button" }, "\u00d7");
+    button.setAttribute("aria-label", filled(words.side_remove, { model: lamp.model }));
+    button.addEventListener("click", () => {
+      pick(lamp.id, false);
+      (view.side.length ? byId("side-heading") : byId("find")).focus();
+    });
+    return made("th", { scope: "col" }, link, " ", button);
+  }
+
+  function sideLine(label, unit, lamps, place) {
+    const heading = made("th", { scope: "row" }, label);
+    if (unit) heading.append(" ", made("span", { className: "unit" }, unit));
+    const cells = lamps.map((lamp) => {
+      const cell = rows[lampPlaces.get(lamp.id)].cells[place].cloneNode(true);
+      return cell;
+    });
+    return made("tr", {}, heading, ...cells);
+  }
+
+  /* ---- drawings follow a moment later, so that a filter answers at once ---- */
+
+  const firstPlot = [...(byId("pair-plot")?.childNodes ?? [])];
+  const firstCaption = byId("pair-caption").textContent;
+  const pairTable = byId("pair-numbers")?.querySelector("table");
+  const firstPair = pairTable && [...pairTable.tHead.rows[0].childNodes, ...pairTable.tBodies[0].childNodes];
+  const firstHead = pairTable && [...pairTable.tHead.rows[0].childNodes];
+  const firstBody = pairTable && [...pairTable.tBodies[0].childNodes];
+
+  function drawPair() {
+    if (!byId("pair-plot") || !firstPair) return;
+    const [x, y] = [view.x || data.pair[0], view.y || data.pair[1]];
+    byId("pair-x").value = x;
+    byId("pair-y").value = y;
+    const shown = [...shownLamps()].sort((one, other) => one - other);
+    const wanted = JSON.stringify([x, y, shown]);
+    if (wanted === drawn) return;
+    drawn = wanted;
+    if (x === data.pair[0] && y === data.pair[1] && shown.length === rows.length) {
+      byId("pair-plot").replaceChildren(...firstPlot);
+      byId("pair-caption").textContent = firstCaption;
+      pairTable.tHead.rows[0].replaceChildren(...firstHead);
+      pairTable.tBodies[0].replaceChildren(...firstBody);
+      return;
+    }
+    byId("pair-caption").textContent = lampassay.scatter(byId("pair-plot"), data, shown, x, y, words);
+    writePairTable(shown, x, y);
+  }
+
+  function writePairTable(shown, x, y) {
+    const name = (column) => (column.unit ? `${column.label}, ${column.unit}` : column.label);
+    const heading = (text) => made("th", { scope: "col" }, text);
+    const told = (cell) => (cell === null ? words.none : `${cell[0].toFixed(cell[2])}${cell[1] ? ` \u00b1 ${cell[1].toFixed(cell[2])}` : ""}`);
+    pairTable.tHead.rows[0].replaceChildren(heading(words.lamp), heading(name(columnAt(x))), heading(name(columnAt(y))));
+    pairTable.tBodies[0].replaceChildren(
+      ...shown.map((at) => {
+        const lamp = data.lamps[at];
+        const cells = [x, y].map((key) => made("td", {}, told(lamp.cells[places.get(key)])));
+        return made("tr", {}, made("th", { scope: "row" }, lamp.model), ...cells);
+      }),
+    );
+  }
+
+  function drawSoon() {
+    clearTimeout(waiting);
+    waiting = setTimeout(drawPair, plotWait);
+  }
+
+  /* ---- from one view to the next ---- */
+
+  function remember() {
+    const fragment = toFragment(data, view);
+    try {
+      history.replaceState(null, "", fragment ? `#${fragment}` : location.pathname + location.search);
+    } catch {
+      location.hash = fragment;
+    }
+  }
+
+  function fillFields() {
+    byId("find").value = view.find;
+    byId("verdict").value = view.verdict;
+    if (byId("bidder")) byId("bidder").value = view.bidder;
+    byId("reference").value = view.reference;
+  }
+
+  /** Take up some parts of a view, and show what follows from them. */
+  function change(parts, { keep = true, announce = "" } = {}) {
+    const before = view;
+    view = { ...view, ...parts };
+    const changed = (...keys) => keys.some((key) => before[key] !== view[key]);
+    if (changed("columns")) showColumns();
+    if (changed("find", "verdict", "bidder", "ranges")) filterRows();
+    if (changed("sort", "down")) sortRows();
+    if (changed("reference")) showDifferences();
+    if (changed("find", "verdict", "bidder", "ranges", "sort", "down", "reference")) layOutRows();
+    if (changed("ranges")) showRanges();
+    if (changed("side", "reference")) showSide();
+    drawSoon();
+    if (keep) remember();
+    say(announce || countText());
+  }
+
+  function restore() {
+    if (location.hash.length > 1 && !location.hash.includes("=")) return;
+    change(fromFragment(data, location.hash.slice(1)), { keep: false });
+    fillFields();
+  }
+
+  function sortBy(key) {
+    const better = key === "lamp" ? -1 : key === "verdicts" ? -1 : columnAt(key).better;
+    const down = view.sort === key ? !view.down : better > 0;
+    const way = down ? words.descending : words.ascending;
+    change({ sort: key, down }, { announce: filled(words.sorted, { column: columnName(key), way }) });
+  }
+
+  function pick(id, chosen) {
+    if (chosen && view.side.length >= MOST_SIDE) {
+      showSide();
+      say(words.side_full);
+      return;
+    }
+    const side = view.side.filter((other) => other !== id);
+    if (chosen) side.push(id);
+    change({ side }, { announce: filled(words.side_lamps, { count: side.length }) });
+  }
+
+  function addRange() {
+    const [low, high] = ["range-low", "range-high"].map((id) => typedNumber(byId(id).value));
+    if (low === null && high === null) {
+      byId("range-low").focus();
+      return;
+    }
+    const key = byId("range-figure").value;
+    change({ ranges: [...view.ranges.filter((range) => range.key !== key), { key, low, high }] });
+    for (const id of ["range-low", "range-high"]) byId(id).value = "";
+  }
+
+  async function copyText(text) {
+    try {
+      await navigator.clipboard.writeText(text);
+      say(words.copied);
+    } catch {
+      const field = made("textarea", { value: text, readOnly: true, className: "out-of-sight" });
+      field.setAttribute("aria-hidden", "true");
+      document.body.append(field);
+      field.select();
+      say(document.execCommand("copy") ? words.copied : words.copy_failed);
+      field.remove();
+    }
+  }
+
+  function download() {
+    const address = URL.createObjectURL(new Blob([toCsv(data, view, shownLamps())], { type: "text/csv;charset=utf-8" }));
+    const link = made("a", { href: address, download: "comparison.csv", hidden: true });
+    document.body.append(link);
+    link.click();
+    link.remove();
+    setTimeout(() => URL.revokeObjectURL(address), 10000);
+  }
+
+  function layOut(count) {
+    most = count;
+    layOutRows();
+    say(countText());
+  }
+
+  /* ---- the controls ---- */
+
+  function sortable(heading, key) {
+    heading.dataset.key = key;
+    const button = made("button", { type: "button" });
+    button.append(...heading.childNodes);
+    if (!button.querySelector(".label")) button.replaceChildren(made("span", { className: "label" }, button.textContent));
+    button.addEventListener("click", () => sortBy(key));
+    heading.append(button);
+  }
+
+  function addPick(row, lamp) {
+    const box = made("input", { type: "checkbox" });
+    box.setAttribute("aria-label", filled(words.compare, { model: lamp.model }));
+    box.addEventListener("change", () => pick(lamp.id, box.checked));
+    row.cells[0].append(made("label", { className: "pick" }, box, words.compare_short));
+  }
+
+  const option = (column) => made("option", { value: column.key }, column.label);
+
+  function build() {
+    const headings = [...table.tHead.rows[0].cells];
+    ["lamp", "verdicts", ...data.columns.map((column) => column.key)].forEach((key, at) => sortable(headings[at], key));
+    rows.forEach((row, at) => addPick(row, data.lamps[at]));
+    const numbers = data.columns.filter((column) => column.number);
+    byId("range-figure").append(...numbers.map(option));
+    for (const id of ["pair-x", "pair-y"]) byId(id).append(...numbers.map(option));
+    byId("controls").hidden = false;
+    byId("pair-controls").hidden = !pairTable;
+  }
+
+  function listen() {
+    byId("find").addEventListener("input", (event) => change({ find: event.target.value }));
+    for (const key of ["verdict", "bidder", "reference"]) byId(key)?.addEventListener("change", (event) => change({ [key]: event.target.value }));
+    byId("pair-x").addEventListener("change", (event) => change({ x: event.target.value }));
+    byId("pair-y").addEventListener("change", (event) => change({ y: event.target.value }));
+    byId("column-choice").addEventListener("change", () => {
+      const ticked = [...document.querySelectorAll('input[name="column"]:checked')].map((box) => box.value);
+      change({ columns: ticked });
+    });
+    byId("columns-few").addEventListener("click", () => change({ columns: emptyView(data).columns }));
+    byId("columns-all").addEventListener("click", () => change({ columns: data.columns.map((column) => column.key) }));
+    byId("range-add").addEventListener("click", addRange);
+    for (const id of ["range-low", "range-high"]) {
+      byId(id).addEventListener("keydown", (event) => {
+        if (event.key === "Enter") addRange();
+      });
+    }
+    byId("download").addEventListener("click", download);
+    byId("copy").addEventListener("click", () => copyText(toCsv(data, view, shownLamps())));
+    byId("link").addEventListener("click", () => copyText(location.href));
+    byId("reset").addEventListener("click", () => {
+      change(emptyView(data));
+      fillFields();
+    });
+    byId("side-clear").addEventListener("click", () => {
+      change({ side: [] });
+      byId("find").focus();
+    });
+    byId("show-more").addEventListener("click", () => layOut(most + STEP));
+    byId("show-all").addEventListener("click", () => layOut(Infinity));
+    let before = most;
+    addEventListener("beforeprint", () => {
+      before = most;
+      layOut(Infinity);
+    });
+    addEventListener("afterprint", () => layOut(before));
+    addEventListener("hashchange", restore);
+  }
+
+  build();
+  listen();
+  showColumns();
+  layOutRows();
+  say(countText());
+  restore();
+})();
