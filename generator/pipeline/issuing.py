@@ -1,0 +1,266 @@
+"""From an assessment to an issued folder: comparison, sheets, publish."""
+
+from __future__ import annotations
+
+import logging
+from collections.abc import Mapping
+from dataclasses import dataclass
+from datetime import date
+from importlib.metadata import version
+from pathlib import Path
+from typing import TYPE_CHECKING
+
+from generator.pipeline.assessing import assess
+
+if TYPE_CHECKING:
+    import pandas
+
+    from generator.publish import FolderExchange, PublicCampaign
+    from generator.publish.signing import Signer
+    from generator.publish.site import Site
+    from generator.records.assessment import Assessment
+
+__all__ = ["Issued", "issue", "versions_of"]
+
+_log = logging.getLogger("lampassay")
+
+_LIBRARIES = (
+    "jinja2",
+    "markdown",
+    "nh3",
+    "numpy",
+    "openpyxl",
+    "pandas",
+    "pydantic",
+    "scipy",
+    "weasyprint",
+)
+
+
+@dataclass(frozen=True, slots=True)
+class Issued:
+    """What was issued, and where.
+
+    Parameters
+    ----------
+    folder
+        The output folder.
+    index
+        The page to open first.
+    lamps
+        Number of lamps.
+    gaps
+        What could not be issued, one sentence each; empty when all is there.
+    """
+
+    folder: Path
+    index: Path
+    lamps: int
+    gaps: tuple[str, ...]
+
+    def figures(self) -> pandas.DataFrame:
+        """The figures as a table of text, one row per figure; columns as in ``figures.csv``."""
+        return _table(self.folder / "data" / "figures.csv")
+
+    def verdicts(self) -> pandas.DataFrame:
+        """The verdicts as a table of text, one row each; columns as in ``verdicts.csv``."""
+        return _table(self.folder / "data" / "verdicts.csv")
+
+
+def _table(path: Path) -> pandas.DataFrame:
+    """A data file as text throughout, so that every decimal stays as it was written."""
+    import pandas
+
+    return pandas.read_csv(path, dtype=str)
+
+
+def issue(
+    campaign: str | Path,
+    *,
+    target: str | Path | None = None,
+    on: date | None = None,
+    jobs: int | None = None,
+    pdf: bool = True,
+    archive: str | Path | None = None,
+    public: bool = False,
+    salt: str | Path | None = None,
+    signer: Signer | None = None,
+) -> Issued:
+    """Check, compute, judge, and write the sheets of a campaign.
+
+    Parameters
+    ----------
+    campaign
+        The campaign folder.
+    target
+        Folder to write; ``output/<campaign>`` under the current folder by default. It is
+        replaced whole, and only when the new one is complete.
+    on
+        Date on which the law is read; the campaign's own by default, else today.
+    jobs
+        PDF documents rendered at once; the number of processors by default.
+    pdf
+        Whether to render PDF documents.
+    archive
+        File to write the issue to as one archive, beside the folder.
+    public
+        Whether to write a public edition too, beside the target: without prices, client and
+        bidder names.
+    salt
+        ``data/redaction.json`` of a full edition, for the same code names and digests again.
+    signer
+        Who signs documents and manifest; nobody by default.
+
+    Returns
+    -------
+    Issued
+        What was issued, and where.
+
+    Raises
+    ------
+    DataProblems
+        If the data have errors; carries all of them.
+    PublishError
+        If the target may not be replaced, or a name would stay in the public edition.
+    SheetError
+        If a document cannot be rendered.
+    """
+    from generator.publish import FolderExchange, edition_salt, public_place, write_archive
+    from generator.publish.site import missing_engine
+
+    source = Path(campaign)
+    place = Path(target) if target else Path("output") / source.resolve().name
+    exchange = FolderExchange(place, source)
+    beside = FolderExchange(public_place(place), source) if public else None
+    secret = edition_salt(place, Path(salt) if salt else None) if public else None
+    assessment = assess(source, on)
+    no_engine = missing_engine() if pdf else None
+    making = _Making(jobs, pdf and no_engine is None, signer)
+    _write_edition(source, assessment, exchange, making, secret)
+    if beside is not None and secret is not None:
+        _write_public(source, assessment, beside, making, secret)
+    if archive is not None:
+        write_archive(place, Path(archive), assessment.campaign.name)
+    gaps = (f"No PDF sheets were issued: {no_engine}",) if no_engine else ()
+    for gap in gaps:
+        _log.warning("%s", gap)
+    return Issued(place, place / "index.html", len(assessment.campaign.lamps), gaps)
+
+
+@dataclass(frozen=True, slots=True)
+class _Making:
+    """How an edition is made: processes, whether with PDF documents, and who signs."""
+
+    jobs: int | None
+    pdf: bool
+    signer: Signer | None
+
+
+def _write_public(
+    source: Path, full: Assessment, exchange: FolderExchange, making: _Making, salt: bytes
+) -> None:
+    from generator.publish import PublishError, public_campaign
+
+    with public_campaign(source, full.campaign, salt) as public:
+        assessment = assess(public.folder, full.assessed_on)
+        if [item.verdict for item in assessment.verdicts] != [
+            item.verdict for item in full.verdicts
+        ]:
+            raise PublishError("the public edition would give other verdicts than the full one")
+        _write_edition(public.folder, assessment, exchange, making, public=public)
+
+
+def _write_edition(
+    source: Path,
+    assessment: Assessment,
+    exchange: FolderExchange,
+    making: _Making,
+    salt: bytes | None = None,
+    public: PublicCampaign | None = None,
+) -> None:
+    from generator.conformity.product_information import product_information
+    from generator.lawbook import read_law_book
+    from generator.metrics.uncertainty.monte_carlo import SEED
+    from generator.publish import EditionWriter
+
+    site = _sheets(source, assessment, with_pdf=making.pdf)
+    _log.info("publish: %s", exchange.target)
+    law, day = read_law_book(), assessment.assessed_on
+    products = [
+        field
+        for lamp in assessment.campaign.lamps
+        for field in product_information(lamp, assessment.figures, law, day)
+    ]
+    writer = EditionWriter(source, assessment, versions_of(assessment), SEED, public)
+    with exchange.building() as folder:
+        writer.write_data(folder, products, salt)
+        writer.write_sheets(folder, site, pdf=making.pdf, jobs=making.jobs)
+        _write_tender(folder, source, assessment, making)
+        writer.close(folder, making.signer)
+
+
+def _write_tender(folder: Path, source: Path, assessment: Assessment, making: _Making) -> None:
+    from generator.datasets import sources
+    from generator.publish.tender_files import tender_files
+    from generator.records.comparison import SheetContext
+    from generator.sheets import (
+        TenderSheets,
+        describe_letters,
+        describe_tender_report,
+        theme_overrides,
+    )
+
+    if assessment.tender is None:
+        return
+    _log.info("sheets: tender")
+    theme = assessment.campaign.settings.sheet.theme
+    context = SheetContext(sources(), with_pdf=making.pdf, overrides=theme_overrides(source, theme))
+    sheets = TenderSheets(
+        describe_tender_report(assessment, context), describe_letters(assessment, context)
+    )
+    files = tender_files(assessment, sheets, pdf=making.pdf, jobs=making.jobs)
+    for name, content in files.items():
+        path = folder / name
+        path.parent.mkdir(parents=True, exist_ok=True)
+        path.write_bytes(content)
+
+
+def _sheets(source: Path, assessment: Assessment, *, with_pdf: bool) -> Site:
+    from generator.comparison import compare
+    from generator.datasets import method, sources
+    from generator.metrics import curves_of
+    from generator.publish.site import Site
+    from generator.records.comparison import SheetContext
+    from generator.sheets import describe_comparison, describe_lamp, theme_overrides
+
+    _log.info("comparison")
+    campaign = assessment.campaign
+    matrix = compare(campaign.lamps, assessment.figures, assessment.verdicts, assessment.findings)
+    _log.info("sheets")
+    theme = campaign.settings.sheet.theme
+    used = dict.fromkeys(figure.method or figure.grade.value for figure in assessment.figures)
+    context = SheetContext(
+        sources=sources(),
+        curves=curves_of(campaign, assessment.figures),
+        matrix=matrix,
+        with_pdf=with_pdf,
+        methods={key: known for key in used if (known := method(key)) is not None},
+        overrides=theme_overrides(source, theme),
+    )
+    lamps = {
+        lamp.lamp_id: describe_lamp(assessment, lamp.lamp_id, context) for lamp in campaign.lamps
+    }
+    return Site(describe_comparison(assessment, context), lamps, theme, context.overrides)
+
+
+def versions_of(assessment: Assessment) -> Mapping[str, str]:
+    """Versions of the program, the law book behind an assessment, and the libraries."""
+    from generator.publish.program_digest import program_digest
+
+    found = {name: version(name) for name in _LIBRARIES}
+    return {
+        "lampassay": assessment.version,
+        "program sources": program_digest(),
+        "law book": assessment.law_book,
+        **found,
+    }
