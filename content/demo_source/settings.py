@@ -27,6 +27,64 @@ methods = [
     "endurance: 150 min on, 30 min off, 25 degrees C ambient",
 ]
 
+# Place of work and condition of the items are left out: the sheets list what a report lacks.
+[report]
+number = "TPL-26-030-A1"
+title = "Light, power and endurance of lamps offered for three harbour schools"
+customer_contact = "Purchasing office of the Trust (invented)"
+accreditation_scope = "light, power and spectra; endurance is outside the scope"
+received_on = 2025-07-07
+tested_from = 2025-07-14
+tested_to = 2026-01-23
+issued_on = 2026-02-26
+sampling = "Units sent by the bidders, taken from stock by them; the laboratory took no samples."
+conditions = "Ambient air 25 degrees C within 1 degree, draught-free; lamps aged until stable."
+signatory = "Edda Quillfeather (invented)"
+signatory_function = "head of photometry"
+reproduction_note = "To be copied whole; in part only with written consent of the laboratory."
+
+[[report.methods]]
+name = "Luminous flux and spectrum: EN 13032-4, 2 m sphere, 4 pi geometry, auxiliary lamp"
+deviations = "tubes of 1500 mm measured with the goniophotometer's flux, spectrum from the sphere"
+
+[[report.methods]]
+name = "Intensity: EN 13032-4, near-horizontal goniophotometer, C-gamma planes"
+
+[[report.methods]]
+name = "Light modulation: IEC TR 61547-1 and IEC TR 63158, 20 kHz for 1 s, 2 kHz for long records"
+
+[[report.methods]]
+name = "Power and harmonics: stabilised supply, total harmonic content of the voltage below 1 %"
+
+[[report.methods]]
+name = "Endurance: EU 2019/2020, Annex V, 150 min on, 30 min off"
+
+[[report.equipment]]
+name = "Integrating sphere with array spectroradiometer"
+serial = "TPL-S2"
+calibrated_on = 2025-05-19
+calibration_certificate = "C-25-0417"
+traceable_to = "the invented national institute of Aldermoor"
+
+[[report.equipment]]
+name = "Goniophotometer"
+serial = "TPL-G1"
+calibrated_on = 2025-06-02
+calibration_certificate = "C-25-0463"
+traceable_to = "the invented national institute of Aldermoor"
+
+[[report.equipment]]
+name = "Power analyser"
+serial = "TPL-P3"
+calibrated_on = 2025-03-11
+calibration_certificate = "C-25-0198"
+traceable_to = "the invented national institute of Aldermoor"
+
+[[report.amendments]]
+replaces = "TPL-26-030"
+issued_on = 2026-02-20
+reason = "the name of one model was misspelt; no result changed"
+
 [supply]
 voltage_v = 230
 frequency_hz = 50
@@ -59,6 +117,13 @@ lumen_maintenance_factor = 0.005
 wavelength_scale_nm = 0.3
 spectral_noise_percent = 0.1
 spectral_calibration_percent = 1.5
+light_noise_percent = 0.2
+light_offset_percent = 0.3
+time_base_percent = 0.01
+voltage_current_skew_us = 2
+angle_deg = 0.3
+flux_repeatability_percent = 0.3
+chromaticity_repeatability = 0.0003
 
 [decision]
 # A guard band as wide as the expanded uncertainty: a value closer to its limit than that is open.

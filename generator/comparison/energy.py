@@ -61,7 +61,7 @@ def energy_use(
 
 def _emissions(kwh: Decimal, before: Decimal | None, use: TenderUse) -> Iterator[Emissions]:
     for name, factor in (
-        ("location-based", use.location_factor),
+        ("location-based", use.location_based),
         ("market-based", use.market_based),
     ):
         if factor is not None:

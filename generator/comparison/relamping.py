@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from decimal import ROUND_CEILING, Decimal
 
@@ -24,11 +24,15 @@ _NOTES = (
 
 @dataclass(frozen=True, slots=True)
 class Winner:
-    """The lot of a room, the lamp that won it (``None`` without a single one), and why not."""
+    """The lot of a room, the lamp that won it (``None`` without a single one), and why not.
+
+    ``provisional`` says that questions to the winner are open.
+    """
 
     lot: TenderLot
     basis: LampBasis | None
     reason: str = ""
+    provisional: bool = False
 
 
 def relamping_plan(
@@ -67,8 +71,21 @@ def relamping_plan(
         for room, item in zip(rooms, planned, strict=True)
     }
     return RelampingPlan(
-        planned, tuple(_years(planned, renewals, use)), dict(sorted(quantities.items())), _NOTES
+        planned,
+        tuple(_years(planned, renewals, use)),
+        dict(sorted(quantities.items())),
+        (*_NOTES, *_provisional(planned, winners)),
     )
+
+
+def _provisional(planned: Sequence[RoomPlan], winners: Mapping[str, Winner]) -> Iterator[str]:
+    for lot in sorted({item.lot for item in planned if item.new_lamp}):
+        if winners[lot].provisional:
+            name = f"lot {lot}" if lot else "the lot"
+            yield (
+                f"The first place of {name} is provisional: no lamp of it may be ordered before "
+                "the open questions are answered."
+            )
 
 
 def _room(room: Room, winner: Winner, before: LampBasis, use: TenderUse) -> RoomPlan:

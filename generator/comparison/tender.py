@@ -38,7 +38,7 @@ from generator.comparison.relamping import Winner, relamping_plan
 from generator.comparison.tender_checks import tender_problems
 from generator.errors import DataProblems
 from generator.quantities import QUANTITIES
-from generator.records.figure import Figure, FigureSet
+from generator.records.figure import Figure, FigureSet, Grade
 from generator.records.finding import Finding
 from generator.records.lamp import Lamp, Unit
 from generator.records.tender import (
@@ -56,6 +56,11 @@ from generator.records.tender_settings import TenderLot, TenderSettings
 from generator.records.verdict import Verdict
 
 __all__ = ["compare_tender"]
+
+_BASELINE_NOTE = (
+    "The lamp in use today is costed like a bid, as if bought and fitted anew at the start; "
+    "the saving and the break-even year hold that price too."
+)
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -194,7 +199,9 @@ def _lot(name: str, lot: TenderLot, inputs: _Inputs) -> LotResult:
     baseline = None
     if before is not None and not inputs.gaps:
         baseline = cost_study(before, inputs.settings.use, quantity)
-        if baseline is None:
+        if baseline is not None:
+            notes = (*notes, _BASELINE_NOTE)
+        else:
             missing = ", ".join(before.missing)
             notes = (*notes, f"No cost of the baseline lamp: {missing} not known.")
     bases = {
@@ -297,6 +304,11 @@ def _candidate(item: BidResult, inputs: _Inputs) -> Candidate:
             values[name] = None if figure is None else figure.number
             units[name] = QUANTITIES[name].unit
     outcome = item.eligibility.outcome
+    declared = {
+        name
+        for name in values
+        if (figure := _criterion_figure(name, lamp_id, inputs)) and figure.grade is Grade.DECLARED
+    }
     return Candidate(
         lamp_id,
         values,
@@ -305,6 +317,7 @@ def _candidate(item: BidResult, inputs: _Inputs) -> Candidate:
         cost,
         provisional=outcome is Outcome.TO_CLARIFY,
         barred=outcome.value if outcome is Outcome.NOT_ADMISSIBLE else "",
+        declared=frozenset(declared),
     )
 
 
@@ -380,10 +393,10 @@ def _plan(
 
 def _winner(lot: TenderLot, result: LotResult, inputs: _Inputs) -> Winner:
     best = result.award.winners if result.award is not None else ()
-    if len(best) != 1:
+    if result.award is None or len(best) != 1:
         return Winner(lot, None, "no bid won the lot" if not best else "first place is shared")
     basis = lamp_basis(inputs.lamps[best[0]], inputs.figures, inputs.settings.use)
-    return Winner(lot, basis)
+    return Winner(lot, basis, provisional=result.award.scores[0].provisional)
 
 
 def _existing_titles(inputs: _Inputs) -> dict[str, str]:

@@ -9,11 +9,16 @@ from decimal import Decimal, localcontext
 from fractions import Fraction
 
 from generator.conformity.decision_rule import Limits
+from generator.conformity.evidence import Evidence
 from generator.conformity.exact_number import decimal_of, number_text
 from generator.conformity.limits import Limit, Question, no_limit
 from generator.records.clause import DatedValue
+from generator.records.verdict import Basis
 
 __all__ = ["curve_efficacy", "efficacy_curve"]
+
+_LENGTH_BOUND = "length_below_in"
+_LONG_CURVE = "long_curve"
 
 
 def curve_efficacy(flux_lm: Fraction, table: DatedValue) -> Fraction:
@@ -44,7 +49,7 @@ def curve_efficacy(flux_lm: Fraction, table: DatedValue) -> Fraction:
 
 
 def efficacy_curve(question: Question) -> Limit:
-    """The minimum efficacy at the luminous flux of the lamp.
+    """The minimum efficacy at the luminous flux of the lamp, on the curve for its length.
 
     Parameters
     ----------
@@ -63,9 +68,32 @@ def efficacy_curve(question: Question) -> Limit:
     flux = question.evidence.reading("useful_luminous_flux_lm")
     if flux.value is None:
         return no_limit(f"the limit depends on the luminous flux, which is {flux.reason}")
-    number = curve_efficacy(flux.value, question.constants("curve"))
+    curve, said = _curve_by_length(question)
+    if curve is None:
+        return no_limit(said)
+    number = curve_efficacy(flux.value, curve)
     step = (
         f"Limit at {number_text(flux.value)} lm: {number_text(number)} lm/W "
         f"({question.clause.source.text})."
     )
-    return Limit(Limits(lower=number), shown=decimal_of(number), steps=(step,))
+    notes = (said,) if said else ()
+    return Limit(Limits(lower=number), shown=decimal_of(number), steps=(step,), notes=notes)
+
+
+def _curve_by_length(question: Question) -> tuple[DatedValue | None, str]:
+    """The curve for the length of the lamp, and what is to be said of that choice."""
+    curve = question.constants("curve")
+    if _LENGTH_BOUND not in curve.entries:
+        return curve, ""
+    bound = curve.number(_LENGTH_BOUND)
+    length = Evidence(question.evidence.record, Basis.DECLARED).reading("length_mm").value
+    if length is None:
+        return curve, f"The length is not given; the lamp is taken as shorter than {bound} in."
+    bound_mm = Fraction(bound) * Fraction(curve.number("mm_per_in"))
+    compared = f"{number_text(length)} mm, and {bound} in are {number_text(bound_mm)} mm"
+    if length < bound_mm:
+        return curve, f"The lamp counts as shorter than {bound} in: its length is {compared}."
+    if _LONG_CURVE in question.clause.constants:
+        said = f"The lamp counts as {bound} in or longer: its length is {compared}."
+        return question.constants(_LONG_CURVE), said
+    return None, f"there is no curve for such a lamp of {bound} in or more in the law book"

@@ -5,12 +5,12 @@ Source: iec_61000_3_2, class C. Tables come from the law book, by edition and po
 
 from __future__ import annotations
 
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from fractions import Fraction
 
 from generator.conformity.evidence import Evidence
-from generator.conformity.exact_number import decimal_of, number_text
-from generator.conformity.limits import Question
+from generator.conformity.exact_number import decimal_of
+from generator.conformity.limits import Question, quantity_text
 from generator.conformity.ruling import Ruling, not_measured
 from generator.quantities import QUANTITIES
 from generator.records.clause import DatedValue
@@ -22,6 +22,7 @@ NEEDS_WAVEFORM = "option_b"
 """The option whose angles of the current cannot be told from harmonics alone."""
 
 _PER_ORDER = "odd_ma_per_w_times_order"
+_AT_LEAST = "_at_least"
 
 
 @dataclass(frozen=True, slots=True)
@@ -36,6 +37,8 @@ class TableResult:
         The figure that decides: the one nearest to its limit, in proportion.
     value, limit
         Its value and its limit.
+    comparison
+        ``at most``, or ``at least``.
     absent
         Figures that are missing.
     """
@@ -44,11 +47,33 @@ class TableResult:
     quantity: str = ""
     value: Fraction | None = None
     limit: Fraction | None = None
+    comparison: str = "at most"
     absent: tuple[str, ...] = ()
+
+    @property
+    def share(self) -> Fraction:
+        """How much of the limit is used up; above one where it is not kept."""
+        if self.value is None or not self.limit:
+            return Fraction(0)
+        return _share(self.value, self.limit, self.comparison)
+
+    @property
+    def margin(self) -> Fraction | None:
+        """Distance to the limit, negative where it is not kept."""
+        if self.value is None or self.limit is None:
+            return None
+        away = self.limit - self.value
+        return away if self.comparison == "at most" else -away
+
+
+def _share(value: Fraction, limit: Fraction, comparison: str) -> Fraction:
+    # As a difference, for a lower limit may be met by a value of any size.
+    away = value - limit if comparison == "at most" else limit - value
+    return 1 + away / limit
 
 
 def table_limits(table: DatedValue) -> dict[str, Fraction]:
-    """Catalogue quantity -> limit, with the orders that a rule gives written out.
+    """Catalogue quantity -> upper limit, with the orders that a rule gives written out.
 
     Parameters
     ----------
@@ -58,7 +83,7 @@ def table_limits(table: DatedValue) -> dict[str, Fraction]:
     Returns
     -------
     dict
-        Every limit of the table.
+        Every upper limit of the table.
 
     Notes
     -----
@@ -72,6 +97,14 @@ def table_limits(table: DatedValue) -> dict[str, Fraction]:
     return limits
 
 
+def _lower_limits(table: DatedValue) -> dict[str, Fraction]:
+    return {
+        name.removesuffix(_AT_LEAST): Fraction(table.number(name))
+        for name in table.entries
+        if name.endswith(_AT_LEAST)
+    }
+
+
 def judged_table(evidence: Evidence, table: DatedValue) -> TableResult:
     """Compare the harmonics of a lamp with one table.
 
@@ -80,24 +113,29 @@ def judged_table(evidence: Evidence, table: DatedValue) -> TableResult:
     evidence
         Determined figures.
     table
-        The limits; a value on its limit meets it.
+        The limits, upper ones by catalogue name, lower ones with ``_at_least`` behind it; a
+        value on its limit meets it.
 
     Returns
     -------
     TableResult
         With the figure that decides.
     """
-    limits = table_limits(table)
-    readings = {name: evidence.reading(name).value for name in limits}
-    known = {name: value for name, value in readings.items() if value is not None}
-    absent = tuple(name for name in limits if name not in known)
+    limits = [(name, limit, "at most") for name, limit in table_limits(table).items()]
+    limits += [(name, limit, "at least") for name, limit in _lower_limits(table).items()]
+    readings = {name: evidence.reading(name).value for name, _, _ in limits}
+    absent = tuple(name for name, value in readings.items() if value is None)
+    known = [
+        TableResult(None, name, value, limit, comparison, absent)
+        for name, limit, comparison in limits
+        if (value := readings[name]) is not None
+    ]
     if not known:
         return TableResult(None, absent=absent)
-    worst = max(known, key=lambda name: known[name] / limits[name])
-    met: bool | None = known[worst] <= limits[worst]
-    if met and absent:
-        met = None
-    return TableResult(met, worst, known[worst], limits[worst], absent)
+    worst = max(known, key=lambda item: item.share)
+    if worst.share > 1:
+        return replace(worst, met=False)
+    return replace(worst, met=None if absent else True)
 
 
 def harmonic_currents(question: Question) -> Ruling:
@@ -111,7 +149,8 @@ def harmonic_currents(question: Question) -> Ruling:
     Returns
     -------
     Ruling
-        Pass where one option holds; inconclusive where the only one left needs the waveform.
+        Pass where one option holds; inconclusive where the only one left needs the waveform,
+        and that was not captured.
 
     Notes
     -----
@@ -123,28 +162,23 @@ def harmonic_currents(question: Question) -> Ruling:
     }
     steps = tuple(_table_step(role, result) for role, result in results.items())
     whole = {role: item for role, item in results.items() if role != NEEDS_WAVEFORM}
-    met = next((role for role, item in whole.items() if item.met), None)
+    met = next((role for role, item in results.items() if item.met), None)
     if met is not None:
-        return _ruled(VerdictWord.PASS, whole[met], _met_note(met, len(results)), steps)
+        return _ruled(VerdictWord.PASS, results[met], _met_note(met, len(results)), steps)
     if any(item.met is None for item in whole.values()):
         absent = sorted({name for item in whole.values() for name in item.absent})
         shown = ", ".join(absent[:3]) + (" and others" if len(absent) > 3 else "")
         return not_measured(f"not measured: {shown}").with_steps_before(steps)
-    nearest = min(whole.values(), key=_excess)
     left = results.get(NEEDS_WAVEFORM)
-    if left is not None and left.met is not False:
+    if left is not None and left.met is None:
+        nearest = min(whole.values(), key=lambda item: item.share)
         note = (
             "Options A and C do not hold. Option B is not decidable without the waveform of the "
             "current."
         )
         return _ruled(VerdictWord.INCONCLUSIVE, nearest, note, steps)
+    nearest = min(results.values(), key=lambda item: item.share)
     return _ruled(VerdictWord.FAIL, nearest, "", steps)
-
-
-def _excess(result: TableResult) -> Fraction:
-    if result.value is None or not result.limit:
-        return Fraction(0)
-    return result.value / result.limit
 
 
 def _met_note(role: str, count: int) -> str:
@@ -157,13 +191,14 @@ def _words(role: str) -> str:
 
 
 def _ruled(word: VerdictWord, result: TableResult, note: str, steps: tuple[str, ...]) -> Ruling:
-    value, limit = result.value, result.limit
+    value, limit, margin = result.value, result.limit, result.margin
     return Ruling(
         word,
         value=None if value is None else decimal_of(value),
         limit=None if limit is None else decimal_of(limit),
-        margin=None if value is None or limit is None else decimal_of(limit - value),
+        margin=None if margin is None else decimal_of(margin),
         quantity=result.quantity,
+        comparison=result.comparison,
         unit=QUANTITIES[result.quantity].unit if result.quantity else None,
         notes=(note,) if note else (),
         steps=steps,
@@ -171,12 +206,14 @@ def _ruled(word: VerdictWord, result: TableResult, note: str, steps: tuple[str, 
 
 
 def _table_step(role: str, result: TableResult) -> str:
-    name = _words(role).capitalize() if role != "table" else "Table"
+    words = _words(role)
+    name = f"{words[0].upper()}{words[1:]}"
     if result.value is None or result.limit is None:
         return f"{name}: not measured."
     figure = QUANTITIES[result.quantity]
     word = {True: "every limit met", False: "not met", None: "figures missing"}[result.met]
+    limit = f"{result.comparison} {quantity_text(result.limit, figure.unit)}"
     return (
-        f"{name}: nearest to its limit is the {figure.label} with {number_text(result.value)} "
-        f"{figure.unit} of {number_text(result.limit)} {figure.unit}: {word}."
+        f"{name}: nearest to its limit is the {figure.label} with "
+        f"{quantity_text(result.value, figure.unit)} against {limit}: {word}."
     )

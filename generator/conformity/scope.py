@@ -8,17 +8,19 @@ from __future__ import annotations
 
 from fractions import Fraction
 
-from generator.conformity.evidence import LampRecord
+from generator.conformity.evidence import Evidence, LampRecord
 from generator.conformity.exact_number import decimal_of, number_text
 from generator.conformity.limits import Question
 from generator.conformity.ruling import Ruling, not_measured
 from generator.quantities import QUANTITIES
 from generator.records.clause import DatedValue
-from generator.records.verdict import VerdictWord
+from generator.records.verdict import Basis, VerdictWord
 
 __all__ = ["in_scope", "light_source_scope", "unit_in_scope", "window_bounds"]
 
 _NEEDED = ("x", "y", "luminous_flux_lm", "ra")
+_AREA = "light_emitting_area_mm2"
+_NO_AREA = "The flux density is not checked: the light-emitting area is not given."
 
 
 def window_bounds(x: Fraction, window: DatedValue) -> tuple[Fraction, Fraction]:
@@ -53,7 +55,8 @@ def unit_in_scope(figures: dict[str, Fraction], window: DatedValue) -> bool | No
     Parameters
     ----------
     figures
-        Known figures of the unit among x, y, luminous flux and Ra.
+        Known figures of the unit among x, y, luminous flux and Ra, and the declared
+        light-emitting area of the lamp, without which the flux density is not judged.
     window
         The constants of the definition.
 
@@ -64,7 +67,7 @@ def unit_in_scope(figures: dict[str, Fraction], window: DatedValue) -> bool | No
 
     Notes
     -----
-    Source: eu_2019_2020, Article 2 point 1. The flux density is not among the figures.
+    Source: eu_2019_2020, Article 2 point 1.
     """
     checks: list[bool] = []
     x, y = figures.get("x"), figures.get("y")
@@ -77,6 +80,9 @@ def unit_in_scope(figures: dict[str, Fraction], window: DatedValue) -> bool | No
     if flux is not None:
         least = Fraction(window.number("luminous_flux_at_least_lm"))
         checks.append(least <= flux <= Fraction(window.number("luminous_flux_at_most_lm")))
+        if figures.get(_AREA):
+            density = flux / figures[_AREA]
+            checks.append(density < Fraction(window.number("flux_density_below_lm_per_mm2")))
     if ra is not None:
         checks.append(ra > Fraction(window.number("cri_above")))
     if not all(checks):
@@ -85,6 +91,7 @@ def unit_in_scope(figures: dict[str, Fraction], window: DatedValue) -> bool | No
 
 
 def _unit_figures(record: LampRecord) -> dict[str, dict[str, Fraction]]:
+    area = Evidence(record, Basis.DECLARED).reading(_AREA).value
     units: dict[str, dict[str, Fraction]] = {}
     for unit_id in record.unit_ids:
         units[unit_id] = {}
@@ -92,6 +99,8 @@ def _unit_figures(record: LampRecord) -> dict[str, dict[str, Fraction]]:
             figure = record.figures.measured(record.lamp.lamp_id, name, unit_id)
             if figure is not None and figure.number is not None:
                 units[unit_id][name] = Fraction(figure.number)
+        if units[unit_id] and area:
+            units[unit_id][_AREA] = area
     return units
 
 
@@ -145,14 +154,15 @@ def light_source_scope(question: Question) -> Ruling:
     )
     shown = f"{least} to {most}"
     steps = tuple(_unit_step(unit, units[unit], item, window) for unit, item in found.items())
+    open_density = () if any(_AREA in figures for figures in units.values()) else (_NO_AREA,)
     if any(found.values()):
         inside = sum(item is True for item in found.values())
         sample = f"{len(found)} unit{'s' if len(found) > 1 else ''}"
         note = f"{inside} of {sample} shown to be in scope; one is enough."
-        return _scoped(VerdictWord.PASS, flux.value, shown, note, steps)
+        return _scoped(VerdictWord.PASS, flux.value, shown, (note, *open_density), steps)
     if found and all(item is False for item in found.values()):
         note = "Every unit is outside the definition, so the act does not cover the lamp."
-        return _scoped(VerdictWord.NOT_APPLICABLE, flux.value, shown, note, steps)
+        return _scoped(VerdictWord.NOT_APPLICABLE, flux.value, shown, (note,), steps)
     ruling = not_measured("chromaticity, luminous flux and CRI are not all measured on one unit")
     note = "The clauses of the act are judged as if the lamp were in scope."
     return ruling.with_notes([note]).with_steps_before(steps)
@@ -162,11 +172,11 @@ def _scoped(
     word: VerdictWord,
     flux: Fraction | None,
     shown: str,
-    note: str,
+    notes: tuple[str, ...],
     steps: tuple[str, ...],
 ) -> Ruling:
     value = None if flux is None else decimal_of(flux)
-    return Ruling(word, value=value, limit=shown, notes=(note,), steps=steps)
+    return Ruling(word, value=value, limit=shown, notes=notes, steps=steps)
 
 
 def _unit_step(
@@ -180,5 +190,9 @@ def _unit_step(
         if name == "y" and "x" in figures:
             lower, upper = (f"{float(end):.6f}" for end in window_bounds(figures["x"], window))
             parts[-1] += f" (window {lower} to {upper})"
+        if name == _AREA and "luminous_flux_lm" in figures:
+            density = f"{float(figures['luminous_flux_lm'] / value):.6g}"
+            most = window.number("flux_density_below_lm_per_mm2")
+            parts[-1] += f" (flux density {density} lm/mm², to be below {most} lm/mm²)"
     word = {True: "in scope", False: "outside", None: "not all figures known"}[found]
     return f"Unit {unit_id}: {', '.join(parts) or 'nothing measured'}: {word}."

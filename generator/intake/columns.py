@@ -78,10 +78,13 @@ def _spans() -> dict[str, Span]:
         ("peak_intensity_cd", "0", "", True, "1", "1000000"),
         ("ambient_temperature_c", "-90", "200", False, "10", "60"),
         ("luminance_cd_per_mm2", "0", "", True, "0.001", "1000"),
+        ("light_emitting_area_mm2", "0", "", True, "0.1", "1000000"),
+        ("length_mm", "0", "", True, "5", "3000"),
         ("cct_k", "0", "", True, "1000", "25000"),
         ("duv", "-0.5", "0.5", False, "-0.05", "0.05"),
         ("x", "0", "1", True, "0.1", "0.75"),
         ("y", "0", "1", True, "0.01", "0.85"),
+        ("excitation_purity", "0", "1", False, "0", "1"),
         ("ra", "", "100", False, "0", "100"),
         ("r9", "", "100", False, "-250", "100"),
         ("sdcm", "0", "", False, "0", "20"),
@@ -132,6 +135,9 @@ DECLARED_COLUMNS = MappingProxyType(
         "declared_colour_consistency_sdcm": "sdcm",
         "declared_equivalent_power_w": "equivalent_power_w",
         "declared_luminance_cd_per_mm2": "luminance_cd_per_mm2",
+        "declared_excitation_purity": "excitation_purity",
+        "light_emitting_area_mm2": "light_emitting_area_mm2",
+        "length_mm": "length_mm",
     }
 )
 """Column of ``lamps.csv`` -> catalogue quantity of the declared number."""

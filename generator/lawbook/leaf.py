@@ -69,6 +69,7 @@ class _Judged(Strict):
     rounding: RoundingTable | None = None
     statistic: Literal["mean", "lowest unit", "highest unit"] = "mean"
     sample_units: int | None = None
+    claim: QuantityName | None = None
 
     @model_validator(mode="after")
     def _unit_of_catalogue(self) -> Self:
@@ -93,7 +94,6 @@ class ClauseLeaf(_DatedLeaf, _Judged):
     bases: Annotated[list[Basis], Field(min_length=1)] | None = None
     formula: str = ""
     constants: dict[str, str] = Field(default_factory=dict)
-    claim: QuantityName | None = None
     scope: str = ""
 
     @model_validator(mode="after")
@@ -165,6 +165,7 @@ class VerificationLeaf(_DatedLeaf, _Judged):
             checked_on=self.checked_on,
             applies=self.conditions,
             bases=("determined",),
+            claim=self.claim or "",
             scope=self.scope,
             statistic=self.statistic,
             sample_units=self.sample_units,

@@ -19,6 +19,7 @@ if TYPE_CHECKING:
     from generator.publish.signing import Signer
     from generator.publish.site import Site
     from generator.records.assessment import Assessment
+    from generator.records.product_field import ProductField
 
 __all__ = ["Issued", "issue", "versions_of"]
 
@@ -178,25 +179,30 @@ def _write_edition(
     salt: bytes | None = None,
     public: PublicCampaign | None = None,
 ) -> None:
-    from generator.conformity.product_information import product_information
-    from generator.lawbook import read_law_book
     from generator.metrics.uncertainty.monte_carlo import SEED
     from generator.publish import EditionWriter
 
-    site = _sheets(source, assessment, with_pdf=making.pdf)
+    products = _products(assessment)
+    site = _sheets(source, assessment, products, with_pdf=making.pdf)
     _log.info("publish: %s", exchange.target)
-    law, day = read_law_book(), assessment.assessed_on
-    products = [
-        field
-        for lamp in assessment.campaign.lamps
-        for field in product_information(lamp, assessment.figures, law, day)
-    ]
     writer = EditionWriter(source, assessment, versions_of(assessment), SEED, public)
     with exchange.building() as folder:
-        writer.write_data(folder, products, salt)
+        writer.write_data(folder, [field for lamp in products.values() for field in lamp], salt)
         writer.write_sheets(folder, site, pdf=making.pdf, jobs=making.jobs)
         _write_tender(folder, source, assessment, making)
         writer.close(folder, making.signer)
+
+
+def _products(assessment: Assessment) -> dict[str, tuple[ProductField, ...]]:
+    """The product information of every lamp."""
+    from generator.conformity.product_information import product_information
+    from generator.lawbook import read_law_book
+
+    law, day = read_law_book(), assessment.assessed_on
+    return {
+        lamp.lamp_id: product_information(lamp, assessment.figures, law, day)
+        for lamp in assessment.campaign.lamps
+    }
 
 
 def _write_tender(folder: Path, source: Path, assessment: Assessment, making: _Making) -> None:
@@ -225,7 +231,13 @@ def _write_tender(folder: Path, source: Path, assessment: Assessment, making: _M
         path.write_bytes(content)
 
 
-def _sheets(source: Path, assessment: Assessment, *, with_pdf: bool) -> Site:
+def _sheets(
+    source: Path,
+    assessment: Assessment,
+    products: Mapping[str, tuple[ProductField, ...]],
+    *,
+    with_pdf: bool,
+) -> Site:
     from generator.comparison import compare
     from generator.datasets import method, sources
     from generator.metrics import curves_of
@@ -246,6 +258,7 @@ def _sheets(source: Path, assessment: Assessment, *, with_pdf: bool) -> Site:
         with_pdf=with_pdf,
         methods={key: known for key in used if (known := method(key)) is not None},
         overrides=theme_overrides(source, theme),
+        products=products,
     )
     lamps = {
         lamp.lamp_id: describe_lamp(assessment, lamp.lamp_id, context) for lamp in campaign.lamps

@@ -15,6 +15,7 @@ from generator.publish.manifest import MANIFEST_SCHEMA, manifest_schema
 from generator.quantities import quantity
 from generator.records.assessment import Assessment
 from generator.records.figure import Figure
+from generator.records.finding import Finding
 from generator.records.product_field import ProductField
 from generator.records.verdict import Verdict
 
@@ -191,6 +192,22 @@ def _json_row(row: Mapping[str, str], source: Figure | Verdict) -> dict[str, Any
     return result
 
 
+def _finding_row(finding: Finding) -> dict[str, Any]:
+    deviation = finding.deviation
+    return {
+        "lamp_id": finding.lamp_id,
+        "unit_id": finding.unit_id,
+        "check": finding.check,
+        "severity": finding.severity.value,
+        "title": finding.title,
+        "compared": finding.compared,
+        "deviation": None if deviation is None else float(deviation),
+        "deviation_unit": finding.deviation_unit,
+        "explanation": finding.explanation,
+        "source": finding.source,
+    }
+
+
 def _lamp_row(assessment: Assessment, lamp_id: str) -> dict[str, Any]:
     lamp = assessment.campaign.lamp(lamp_id)
     return {
@@ -208,7 +225,7 @@ def _lamp_row(assessment: Assessment, lamp_id: str) -> dict[str, Any]:
 
 
 def results_json(assessment: Assessment, lamp_ids: Sequence[str] | None = None) -> bytes:
-    """Write ``data/results.json``: campaign, figures and verdicts in one file.
+    """Write ``data/results.json``: campaign, figures, verdicts and findings in one file.
 
     Parameters
     ----------
@@ -216,7 +233,7 @@ def results_json(assessment: Assessment, lamp_ids: Sequence[str] | None = None) 
         The assessment.
     lamp_ids
         Lamps to name; all by default. Where lamps are named, problems of the campaign as a
-        whole are left out.
+        whole and findings on other lamps are left out.
 
     Returns
     -------
@@ -244,6 +261,11 @@ def results_json(assessment: Assessment, lamp_ids: Sequence[str] | None = None) 
         },
         "figures": [_json_row(_figure_row(item), item) for item in assessment.figures],
         "verdicts": [_json_row(_verdict_row(item), item) for item in assessment.verdicts],
+        "findings": [
+            _finding_row(item)
+            for item in assessment.findings
+            if lamp_ids is None or item.lamp_id in lamp_ids
+        ],
     }
     return (json.dumps(content, ensure_ascii=False, indent=1) + "\n").encode()
 

@@ -12,11 +12,30 @@ from collections.abc import Iterable, Iterator, Mapping, Sequence
 from decimal import Decimal
 
 from generator.publish.evidence import plain
-from generator.records.tender import BidResult, LotResult, Outcome, RelampingPlan, Tender, money
+from generator.publish.tender_details import (
+    ASSUMPTION_COLUMNS,
+    EMISSION_COLUMNS,
+    GATE_COLUMNS,
+    LEAD_COLUMNS,
+    SENSITIVITY_COLUMNS,
+    assumption_rows,
+    emission_rows,
+    gate_rows,
+    lead_rows,
+    plain_text,
+    sensitivity_rows,
+)
+from generator.records.tender import (
+    BidResult,
+    LifeCycleCost,
+    LotResult,
+    Outcome,
+    RelampingPlan,
+    Tender,
+    money,
+)
 
-__all__ = ["plain_text", "tender_tables"]
-
-_FORMULA_SIGNS = ("=", "+", "-", "@", "\t", "\r")
+__all__ = ["tender_tables"]
 
 BID_COLUMNS = (
     "lot",
@@ -83,11 +102,6 @@ PLAN_COLUMNS = (
 )
 
 
-def plain_text(text: str) -> str:
-    """Text that no spreadsheet takes for a formula."""
-    return f"'{text}" if text.startswith(_FORMULA_SIGNS) else text
-
-
 def tender_tables(tender: Tender, currency: str) -> Mapping[str, bytes]:
     """Write the CSV files of a tender.
 
@@ -111,6 +125,11 @@ def tender_tables(tender: Tender, currency: str) -> Mapping[str, bytes]:
         "scores.csv": _csv(SCORE_COLUMNS, _scores(tender, names)),
         "ranks.csv": _csv(RANK_COLUMNS, _ranks(tender, names)),
         "plan.csv": _csv(PLAN_COLUMNS, _plan(tender.plan, names) if tender.plan else ()),
+        "gate.csv": _csv(GATE_COLUMNS, gate_rows(tender, names.lamp)),
+        "assumptions.csv": _csv(ASSUMPTION_COLUMNS, assumption_rows(tender, names.lamp)),
+        "emissions.csv": _csv(EMISSION_COLUMNS, emission_rows(tender, names.lamp)),
+        "sensitivity.csv": _csv(SENSITIVITY_COLUMNS, sensitivity_rows(tender, names.lamp)),
+        "lead.csv": _csv(LEAD_COLUMNS, lead_rows(tender, names.lamp)),
     }
 
 
@@ -189,20 +208,26 @@ def _cost_cells(item: BidResult) -> dict[str, str]:
 
 
 def _flows(tender: Tender, names: _Names) -> Iterator[dict[str, str]]:
+    """Payments of every bid, then of the lamp in use today."""
     for lot in tender.lots:
         for item in lot.bids:
-            for flow in item.cost.cash_flows if item.cost else ():
-                yield {
-                    "lot": lot.lot,
-                    "lamp_id": names.lamp(item.bid.lamp_id),
-                    "year": str(flow.year),
-                    "moment_years": _exact(flow.moment_years),
-                    "item": flow.item.value,
-                    "amount": _exact(flow.amount),
-                    "discount_factor": _exact(flow.factor),
-                    "present_value": _exact(flow.present_value),
-                    "currency": item.cost.currency if item.cost else "",
-                }
+            yield from _flow_rows(lot.lot, names.lamp(item.bid.lamp_id), item.cost)
+        yield from _flow_rows(lot.lot, names.existing(lot.baseline_lamp), lot.baseline)
+
+
+def _flow_rows(lot: str, lamp: str, cost: LifeCycleCost | None) -> Iterator[dict[str, str]]:
+    for flow in cost.cash_flows if cost else ():
+        yield {
+            "lot": lot,
+            "lamp_id": plain_text(lamp),
+            "year": str(flow.year),
+            "moment_years": _exact(flow.moment_years),
+            "item": flow.item.value,
+            "amount": _exact(flow.amount),
+            "discount_factor": _exact(flow.factor),
+            "present_value": _exact(flow.present_value),
+            "currency": cost.currency if cost else "",
+        }
 
 
 def _scores(tender: Tender, names: _Names) -> Iterator[dict[str, str]]:

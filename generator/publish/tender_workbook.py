@@ -107,7 +107,7 @@ def _write_assumptions(sheet: SheetWriter, use: TenderUse, *, costed: bool) -> _
             row = sheet.next_row(words)
             sheet.number(2, value)
             cells[key] = f"Assumptions!$B${row}"
-    factor = use.location_factor
+    factor = use.location_based
     if use.carbon_price_per_t is not None and factor is not None:
         row = sheet.next_row("Location-based factor, g/kWh")
         sheet.number(2, factor.g_per_kwh)

@@ -64,7 +64,8 @@ FORMULAS: Mapping[str, Formula] = MappingProxyType(
             ("l70b50_h",),
         ),
         "efficacy_curve": Formula(
-            "a / (b + exp(−c × (luminous flux + d))) + e", ("useful_luminous_flux_lm",)
+            "a / (b + exp(−c × (luminous flux + d))) + e",
+            ("useful_luminous_flux_lm", "length_mm"),
         ),
         "equivalent_power": Formula(
             "the power that the luminous flux stands for, linear between the rows of the table, "
@@ -82,8 +83,9 @@ FORMULAS: Mapping[str, Formula] = MappingProxyType(
             ("useful_luminous_flux_lm", "power_w"),
         ),
         "light_source_scope": Formula(
-            "chromaticity, luminous flux and CRI within the window of the act, unit by unit",
-            ("x", "y", "ra"),
+            "chromaticity, luminous flux, flux density and CRI within the window of the act, unit "
+            "by unit",
+            ("x", "y", "ra", "light_emitting_area_mm2"),
         ),
         "harmonic_currents": Formula(
             "every harmonic current within its table or, where there are options, within one of "

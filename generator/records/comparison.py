@@ -9,6 +9,7 @@ from typing import Protocol
 
 from generator.records.curves import LampCurves
 from generator.records.figure import Figure
+from generator.records.product_field import ProductField
 from generator.records.verdict import Verdict, VerdictWord
 
 __all__ = [
@@ -146,6 +147,8 @@ class SheetContext:
         Method id, as a figure carries it -> method, for the list of methods.
     overrides
         Folder of the campaign with templates of its own for the theme; ``None`` without one.
+    products
+        ``lamp_id`` -> product information, in the order of the act.
     """
 
     sources: Mapping[str, SourceLike] = field(default_factory=dict)
@@ -154,3 +157,4 @@ class SheetContext:
     with_pdf: bool = True
     methods: Mapping[str, MethodLike] = field(default_factory=dict)
     overrides: Path | None = None
+    products: Mapping[str, tuple[ProductField, ...]] = field(default_factory=dict)

@@ -99,9 +99,14 @@ class Decision(Table):
 
 
 class SheetTable(Table):
-    """``[sheet]``: theme and languages of what is issued."""
+    """``[sheet]``: theme and languages of what is issued, and the pages of a lamp on paper.
+
+    With two pages a lamp's PDF is the short form; with four it holds the tables too. By default
+    the tender theme has two, the others four.
+    """
 
     theme: str = "tender"
+    lamp_pages: Literal[2, 4] | None = None
     languages: tuple[str, ...] = ("en",)
 
 

@@ -52,7 +52,7 @@ class EmissionFactor(Table):
 
     g_per_kwh: NonNegative
     source: str = Field(min_length=1)
-    year: Annotated[int, Field(ge=1990, le=2100)] | None
+    year: Annotated[int, Field(ge=1990, le=2100)]
     region: str = Field(min_length=1)
 
 
@@ -90,8 +90,6 @@ class TenderUse(Table):
     end_of_life_cost_per_lamp: NonNegative = Decimal(0)
     survival_stated_at_h: Positive | None = None
     carbon_price_per_t: NonNegative | None = None
-    emission_factor_g_per_kwh: NonNegative | None = None
-    emission_factor_source: str = ""
     location_based: EmissionFactor | None = None
     market_based: EmissionFactor | None = None
     baseline_lamp: str | None = None
@@ -112,18 +110,6 @@ class TenderUse(Table):
         if self.years is None or len(path) != self.years:
             raise wrong_key("tariff_path_per_kwh", "one price for each of the years")
         return self
-
-    @property
-    def location_factor(self) -> EmissionFactor | None:
-        """The location-based factor, in either way of writing it."""
-        if self.location_based is not None or self.emission_factor_g_per_kwh is None:
-            return self.location_based
-        return EmissionFactor(
-            g_per_kwh=self.emission_factor_g_per_kwh,
-            source=self.emission_factor_source or "not stated",
-            year=None,
-            region="not stated",
-        )
 
 
 class ScoreStep(Table):

@@ -209,6 +209,8 @@ class SheetFrame:
         Whether to link to PDF sheets.
     overrides
         Folder of the campaign's own templates and tokens; ``None`` where it has none.
+    short
+        Whether a lamp's PDF is the short form of two pages.
     """
 
     title: str
@@ -228,3 +230,4 @@ class SheetFrame:
     gaps: tuple[str, ...]
     with_pdf: bool
     overrides: Path | None = None
+    short: bool = False

@@ -24,6 +24,9 @@ __all__ = [
     "Headline",
     "LampSheet",
     "MethodText",
+    "ProductTable",
+    "ProductText",
+    "ReportText",
     "Shortfall",
     "Statements",
     "UnitsTable",
@@ -234,6 +237,61 @@ class Statements:
 
 
 @dataclass(frozen=True, slots=True)
+class ReportText:
+    """The items of the test report.
+
+    Parameters
+    ----------
+    opening, closing
+        What stands at the head of a report, and what stands at its end.
+    signatory
+        Who authorises it; empty where nobody is named.
+    missing
+        Labels of the items that nobody stated.
+    """
+
+    opening: tuple[Pair, ...] = ()
+    closing: tuple[Pair, ...] = ()
+    signatory: str = ""
+    missing: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, slots=True)
+class ProductText:
+    """One field of the product information.
+
+    Parameters
+    ----------
+    name, text, unit
+        The field, and what is to be published; empty where there is nothing.
+    declared
+        The declared value before rounding; empty where there is none.
+    rounding
+        The rounding in words.
+    reason
+        Why there is nothing to publish.
+    warning
+        What is wrong with publishing it.
+    """
+
+    name: str
+    text: str
+    unit: str
+    declared: str
+    rounding: str
+    reason: str
+    warning: str
+
+
+@dataclass(frozen=True, slots=True)
+class ProductTable:
+    """The product information: every field, and the reasons with the fields left empty."""
+
+    rows: tuple[ProductText, ...]
+    missing: tuple[Pair, ...]
+
+
+@dataclass(frozen=True, slots=True)
 class LampSheet:
     """The spec sheet of one lamp.
 
@@ -271,6 +329,10 @@ class LampSheet:
         In reading order; those with nothing to draw say why.
     declared
         Declared against determined.
+    product
+        Product information; ``None`` where no act asks for it, or where there is no room.
+    report
+        Items of the test report.
     units
         The units one by one; ``None`` where none was measured.
     findings
@@ -309,6 +371,8 @@ class LampSheet:
     verdict_notes: tuple[Pair, ...]
     drawings: tuple[Drawing, ...]
     declared: tuple[DeclaredText, ...]
+    product: ProductTable | None
+    report: ReportText
     units: UnitsTable | None
     findings: tuple[FindingText, ...]
     figures: tuple[FigureGroup, ...]

@@ -26,6 +26,7 @@ from generator.sheets.figure_text import (
 )
 from generator.sheets.lamp_description import EnergyClass, FigureGroup, Headline, LampSheet
 from generator.sheets.lamp_drawings import lamp_drawings
+from generator.sheets.lamp_report import product_table, report_text
 from generator.sheets.lamp_statements import (
     finding_texts,
     grade_texts,
@@ -120,6 +121,8 @@ def describe_lamp(assessment: Assessment, lamp_id: str, context: SheetContext) -
             assessment, lamp_id, context.curves.get(lamp_id, LampCurves()), colours
         ),
         declared=declared_texts(assessment, lamp, colours),
+        product=product_table(context.products.get(lamp_id, ()), lamp, names),
+        report=report_text(assessment, lamp, names),
         units=units_table(assessment, lamp),
         findings=finding_texts(assessment.findings_of(lamp_id), context),
         figures=_figure_groups(figures),

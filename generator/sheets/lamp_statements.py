@@ -254,7 +254,7 @@ def _money(settings: Settings, energy: Decimal) -> Iterator[UseText]:
         rate = f"{exact_text(use.tariff_per_kwh)}\u00a0{currency}".strip()
         cost = shown(energy * use.tariff_per_kwh, 2)
         yield UseText(USE_LABELS["cost"], cost, currency, USE_BASES["cost"].format(tariff=rate))
-    factors = {"location": use.location_factor, "market": use.market_based}
+    factors = {"location": use.location_based, "market": use.market_based}
     for kind, factor in factors.items():
         if factor is None:
             continue

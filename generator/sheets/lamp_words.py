@@ -104,6 +104,11 @@ FOLDED = {
     "methods": "Further methods on the HTML sheet: {count}.",
     "notes": "Further notes on the verdicts on the HTML sheet: {count}.",
     "remarks": "The remarks continue on the HTML sheet.",
+    "products": "Product information, {count} fields, stands on the HTML sheet.",
+    "tables": (
+        "This is the short form. Declared values beside determined ones, product information, the "
+        "units with their spread, grades and methods stand on the HTML sheet."
+    ),
 }
 """What is said where something is left out on paper."""
 

@@ -14,10 +14,10 @@ from generator.sheets.drawings.drawing import Drawing
 from generator.sheets.lamp_description import LampSheet, VerdictGroup
 from generator.sheets.lamp_words import FOLDED
 
-__all__ = ["BUDGETS", "Budget", "budgets_for", "fitted"]
+__all__ = ["BUDGETS", "SHORT_BUDGETS", "Budget", "budgets_for", "fitted"]
 
 _ORDER = ("fail", "inconclusive", "not-measured", "pass", "not-applicable")
-_FIRST_DRAWINGS = ("spectrum", "white", "rendering", "light", "mains", "watts")
+_FIRST_DRAWINGS = ("spectrum", "light", "mains", "rendering", "white", "watts")
 _THEN_DRAWINGS = ("harmonics", "ageing", "intensity", "plane", "hues")
 
 
@@ -37,6 +37,8 @@ class Budget:
         How many methods, and how many notes on the verdicts.
     dense
         Whether the text is set closer.
+    products
+        Whether the product information is printed.
     """
 
     rows: int
@@ -44,10 +46,12 @@ class Budget:
     drawings: int
     entries: int
     dense: bool
+    products: bool = False
 
 
 BUDGETS = (
-    Budget(rows=24, note_length=1600, drawings=11, entries=60, dense=False),
+    Budget(rows=24, note_length=1600, drawings=11, entries=60, dense=False, products=True),
+    Budget(rows=38, note_length=900, drawings=11, entries=60, dense=True, products=True),
     Budget(rows=38, note_length=900, drawings=11, entries=60, dense=True),
     Budget(rows=32, note_length=900, drawings=11, entries=40, dense=True),
     Budget(rows=24, note_length=700, drawings=10, entries=20, dense=True),
@@ -55,6 +59,18 @@ BUDGETS = (
     Budget(rows=8, note_length=0, drawings=4, entries=0, dense=True),
 )
 """Tried in turn until the pages suffice."""
+
+
+SHORT_BUDGETS = (
+    Budget(rows=38, note_length=900, drawings=6, entries=0, dense=True),
+    Budget(rows=38, note_length=700, drawings=4, entries=0, dense=True),
+    Budget(rows=38, note_length=0, drawings=4, entries=0, dense=True),
+    Budget(rows=22, note_length=700, drawings=4, entries=0, dense=True),
+    Budget(rows=12, note_length=300, drawings=4, entries=0, dense=True),
+    Budget(rows=8, note_length=0, drawings=4, entries=0, dense=True),
+    Budget(rows=8, note_length=0, drawings=2, entries=0, dense=True),
+)
+"""The same for the short form, which has no tables behind page one."""
 
 
 def budgets_for(sheet: LampSheet) -> tuple[Budget, ...]:
@@ -65,6 +81,8 @@ def budgets_for(sheet: LampSheet) -> tuple[Budget, ...]:
     sheet
         The whole description.
     """
+    if sheet.frame.short:
+        return SHORT_BUDGETS
     clauses = sum(len(group.clauses) for group in sheet.verdicts)
     return tuple(budget for budget in BUDGETS if budget.dense or clauses <= budget.rows)
 
@@ -86,6 +104,7 @@ def fitted(sheet: LampSheet, budget: Budget) -> LampSheet:
         - sum(1 for item in drawings if item.svg),
         "methods": len(sheet.methods) - len(methods),
         "notes": len(sheet.verdict_notes) - len(notes),
+        "products": 0 if budget.products or sheet.frame.short else _product_fields(sheet),
     }
     return dataclasses.replace(
         sheet,
@@ -94,8 +113,19 @@ def fitted(sheet: LampSheet, budget: Budget) -> LampSheet:
         notes=_shortened(sheet.notes, budget.note_length),
         drawings=drawings,
         methods=methods,
-        folded=tuple(FOLDED[key].format(count=count) for key, count in left.items() if count),
+        product=sheet.product if budget.products else None,
+        folded=_left_words(sheet, left),
     )
+
+
+def _product_fields(sheet: LampSheet) -> int:
+    return len(sheet.product.rows) if sheet.product else 0
+
+
+def _left_words(sheet: LampSheet, left: dict[str, int]) -> tuple[str, ...]:
+    """What is said of the parts that are left to the page on screen."""
+    tables = (FOLDED["tables"],) if sheet.frame.short else ()
+    return (*tables, *(FOLDED[key].format(count=count) for key, count in left.items() if count))
 
 
 def _chosen(drawings: tuple[Drawing, ...], most: int) -> tuple[Drawing, ...]:

@@ -25,6 +25,7 @@ from generator.sheets.themes import FACES, font_bytes, paper_style
 
 __all__ = [
     "MOST_LAMP_PAGES",
+    "MOST_SHORT_PAGES",
     "PdfEngine",
     "SheetAttachment",
     "pdf_engine",
@@ -34,6 +35,7 @@ __all__ = [
 ]
 
 MOST_LAMP_PAGES = 4
+MOST_SHORT_PAGES = 2
 _SHORT_FORM_ENDS = "behind"
 _VARIANT = "pdf/a-3a"
 _CURE = (
@@ -189,12 +191,13 @@ class PdfEngine:
     def _fitting(self, sheet: Sheet) -> Any:
         if not isinstance(sheet, LampSheet):
             return self.lay_out(render_paper(sheet))
+        most = MOST_SHORT_PAGES if sheet.frame.short else MOST_LAMP_PAGES
         for budget in budgets_for(sheet):
             page = render_paper(fitted(sheet, budget), dense=budget.dense)
             document = self.lay_out(page)
-            if len(document.pages) <= MOST_LAMP_PAGES and _short_form_fits(document):
+            if len(document.pages) <= most and _short_form_fits(document):
                 return document
-        raise SheetError(f"the sheet of {sheet.lamp_id} does not fit on {MOST_LAMP_PAGES} pages")
+        raise SheetError(f"the sheet of {sheet.lamp_id} does not fit on {most} pages")
 
 
 def _short_form_fits(document: Any) -> bool:

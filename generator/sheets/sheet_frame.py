@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
+from typing import TYPE_CHECKING
 
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext, SourceLike
@@ -11,6 +12,9 @@ from generator.sheets.drawings.margin_ruler import draw_ruler_scale
 from generator.sheets.number_format import date_words
 from generator.sheets.themes import palette
 from generator.sheets.words import CAUTIONS, LANGUAGE, RULER_SCALE_TITLE, RULER_SIDES
+
+if TYPE_CHECKING:
+    from generator.records.settings import SheetTable
 
 __all__ = ["sheet_frame", "source_text"]
 
@@ -64,7 +68,13 @@ def sheet_frame(
         gaps=tuple(gaps),
         with_pdf=context.with_pdf,
         overrides=context.overrides,
+        short=_short(settings.sheet),
     )
+
+
+def _short(table: SheetTable) -> bool:
+    """Whether a lamp has two pages on paper: where it is asked for, else in the tender theme."""
+    return (table.lamp_pages or (2 if table.theme == "tender" else 4)) == 2
 
 
 def source_text(source: SourceLike | None, key: str) -> str:

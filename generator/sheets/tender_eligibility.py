@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 
 from generator.records.tender import BidResult, Eligibility, LotResult, Outcome
 from generator.records.tender_settings import TenderSettings
@@ -15,15 +15,15 @@ from generator.sheets.tender_description import (
     TableBlock,
 )
 from generator.sheets.tender_text import NONE, amount, capital, number, worded
-from generator.sheets.tender_words import ASKED_REPORTS, LOT_OUTCOME, OUTCOME_NOTES
+from generator.sheets.tender_words import ASKED_REPORTS, CHECK_TITLES, LOT_OUTCOME, OUTCOME_NOTES
 
 __all__ = ["asked_for", "eligibility_blocks", "outcome_table", "question_blocks", "reason_table"]
 
 
-def asked_for(settings: TenderSettings) -> tuple[str, ...]:
-    """What a bid must bring, in words."""
+def asked_for(settings: TenderSettings, titles: Mapping[str, str]) -> tuple[str, ...]:
+    """What a bid must bring, in words; ``titles`` gives the title of a clause by its id."""
     tender = settings.tender
-    mandatory = (*tender.mandatory_regimes, *tender.mandatory_clauses)
+    mandatory = (*tender.mandatory_regimes, *_titled(tender.mandatory_clauses, titles))
     words = [ASKED_REPORTS["report"]]
     if tender.reports_from or tender.reports_to:
         begin, end = tender.reports_from or "any day", tender.reports_to or "the assessment"
@@ -35,7 +35,7 @@ def asked_for(settings: TenderSettings) -> tuple[str, ...]:
     if tender.accreditation_required:
         words.append(ASKED_REPORTS["accreditation"])
     if mandatory:
-        words.append(ASKED_REPORTS["clauses"].format(clauses=", ".join(mandatory)))
+        words.append(ASKED_REPORTS["clauses"].format(clauses="; ".join(mandatory)))
     else:
         words.append(ASKED_REPORTS["own"])
     return (*words, ASKED_REPORTS["findings"])
@@ -96,8 +96,16 @@ def question_blocks(eligibility: Eligibility, *, particulars: bool) -> Iterator[
         )
 
 
-def eligibility_blocks(lot: LotResult, *, under_codes: bool) -> Iterator[Block]:
-    """Reasons and questions of a lot."""
+def _titled(checks: Iterable[str], titles: Mapping[str, str]) -> tuple[str, ...]:
+    """The titles of some checks; the id where a check has no title."""
+    known = CHECK_TITLES | dict(titles)
+    return tuple(capital(known[check]) if check in known else check for check in checks)
+
+
+def eligibility_blocks(
+    lot: LotResult, titles: Mapping[str, str], *, under_codes: bool
+) -> Iterator[Block]:
+    """Reasons, questions and checks of a lot; ``titles`` gives the title of a clause by its id."""
     counts = [item.eligibility.outcome for item in lot.bids]
     yield ParagraphBlock(
         LOT_OUTCOME.format(
@@ -116,7 +124,8 @@ def eligibility_blocks(lot: LotResult, *, under_codes: bool) -> Iterator[Block]:
         yield HeadingBlock("Bids that may be accepted", 4)
         yield ListBlock(
             tuple(
-                f"{item.shown_as}. Checks passed: {', '.join(item.eligibility.passed)}."
+                f"{item.shown_as}. Checks passed: "
+                f"{'; '.join(_titled(item.eligibility.passed, titles))}."
                 for item in passed
             )
         )

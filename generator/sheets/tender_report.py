@@ -27,7 +27,7 @@ from generator.sheets.tender_eligibility import asked_for, eligibility_blocks, o
 from generator.sheets.tender_plan import plan_blocks
 from generator.sheets.tender_text import number
 from generator.sheets.tender_trail import trail_blocks
-from generator.sheets.tender_words import FORMULAS, REPORT_LEAD, TENDER_CAUTIONS
+from generator.sheets.tender_words import FORMULAS, NAMES_CAUTION, REPORT_LEAD, TENDER_CAUTIONS
 from generator.sheets.themes import palette
 
 __all__ = ["describe_tender_report", "lot_name", "tender_frame", "tender_of"]
@@ -40,6 +40,11 @@ _FILES = (
     ("Scores as CSV", "scores.csv"),
     ("Ranks as CSV", "ranks.csv"),
     ("Plan as CSV", "plan.csv"),
+    ("Eligibility as CSV", "gate.csv"),
+    ("Assumptions as CSV", "assumptions.csv"),
+    ("Emissions as CSV", "emissions.csv"),
+    ("Sensitivity as CSV", "sensitivity.csv"),
+    ("Lead as CSV", "lead.csv"),
 )
 
 
@@ -73,7 +78,8 @@ def tender_frame(
         keys=keys,
         principal=keys,
     )
-    return replace(frame, cautions=TENDER_CAUTIONS)
+    names = (NAMES_CAUTION,) if tender_of(assessment).under_codes else ()
+    return replace(frame, cautions=(*names, *TENDER_CAUTIONS))
 
 
 def describe_tender_report(assessment: Assessment, context: SheetContext) -> TenderDocument:
@@ -143,11 +149,12 @@ def _lead(lot: LotResult, names: Mapping[str, str]) -> str:
 def _blocks(assessment: Assessment, tender: Tender, colours: Palette) -> Iterator[Block]:
     settings = assessment.campaign.settings
     currency = settings.use.currency or ""
+    titles = {item.clause: item.title for item in assessment.verdicts}
     yield PairsBlock(tuple(_facts(assessment)))
     yield HeadingBlock("What a bid must bring", 2, "asked")
-    yield ListBlock(asked_for(settings))
+    yield ListBlock(asked_for(settings, titles))
     for lot in tender.lots:
-        yield from _lot_blocks(lot, tender, settings, colours)
+        yield from _lot_blocks(lot, tender, settings, colours, titles)
     if tender.plan is not None:
         yield from plan_blocks(tender.plan, tender.shown_as, tender.existing_titles, currency)
     yield HeadingBlock("Formulas and notes", 2, "formulas")
@@ -174,7 +181,11 @@ def _facts(assessment: Assessment) -> Iterator[Pair]:
 
 
 def _lot_blocks(
-    lot: LotResult, tender: Tender, settings: TenderSettings, colours: Palette
+    lot: LotResult,
+    tender: Tender,
+    settings: TenderSettings,
+    colours: Palette,
+    titles: Mapping[str, str],
 ) -> Iterator[Block]:
     currency = settings.use.currency or ""
     title = f": {lot.title}" if lot.title else ""
@@ -185,7 +196,7 @@ def _lot_blocks(
         return
     yield outcome_table(lot, currency)
     yield HeadingBlock("Eligibility", 3)
-    yield from eligibility_blocks(lot, under_codes=tender.under_codes)
+    yield from eligibility_blocks(lot, titles, under_codes=tender.under_codes)
     yield from award_blocks(lot, tender.shown_as, currency)
     yield from certainty_blocks(lot, tender.shown_as, currency, colours)
     yield from cost_blocks(lot, tender.existing_titles, currency)

@@ -6,9 +6,11 @@ from generator.sheets.description import Caution
 
 __all__ = [
     "ASKED_REPORTS",
+    "CHECK_TITLES",
     "FORMULAS",
     "LETTER",
     "LOT_OUTCOME",
+    "NAMES_CAUTION",
     "OUTCOME_NOTES",
     "REPORT_LEAD",
     "TENDER_CAUTIONS",
@@ -36,6 +38,19 @@ OUTCOME_NOTES = {
     "no_reasons": "No bid is refused.",
     "no_questions": "No question is open for a bid that may still win.",
 }
+
+CHECK_TITLES = {
+    "evidence-report": "Test report",
+    "evidence-model": "Model named in the report",
+    "evidence-laboratory": "Laboratory",
+    "evidence-accreditation": "Accreditation",
+    "evidence-date": "Date of the report",
+    "evidence-sample": "Size of the sample",
+    "lot-cap": "Cap",
+    "lot-beam": "Beam angle",
+    "lot-flux": "Luminous flux",
+}
+"""Checks of the evidence and of the lot, by id; a clause has a title of its own."""
 
 ASKED_REPORTS = {
     "report": "A test report with number and date that names the offered model.",
@@ -76,6 +91,13 @@ FORMULAS = (
     ),
     "Emissions of a year: energy of a year in kWh × factor in g/kWh / 1 000 000, in t.",
 )
+
+NAMES_CAUTION = Caution(
+    "Names",
+    "Bidders stand here under code names. The folders data and inputs of the same issue name "
+    "them, and so do file names of lamps: pass on the tender folder alone, or the public edition.",
+)
+"""What is said where code names are in use."""
 
 TENDER_CAUTIONS = (
     Caution(

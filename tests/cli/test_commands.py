@@ -145,6 +145,20 @@ def test_clauses_differ_between_the_two_days_of_the_svm_limit() -> None:
     assert (svm("2024-08-31"), svm("2024-09-01")) == ("0.9", "0.4")
 
 
+def test_clauses_are_read_as_sentences() -> None:
+    text = run("clauses", "--on", "2024-09-01").stdout
+    for words in (
+        "applies where the lamp runs on the mains",
+        "at least 0.7, where the active power is above 10 W and at most 25 W",
+        "within the declared value ± 25 %",
+        "where the declared correlated colour temperature is 2200 K",
+        "Factor R for colour rendering (eu-2019-2020-rendering-factor; read):",
+        "divisor 160",
+    ):
+        assert words in text
+    assert "at least no limit" not in text
+
+
 def test_explain_traces_a_figure_to_its_file_and_row(small_campaign: Path) -> None:
     result = run("explain", small_campaign, "ONE", "power_w")
     assert result.returncode == 0

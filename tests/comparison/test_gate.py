@@ -11,6 +11,7 @@ from typing import Any
 import pytest
 
 from generator.comparison.eligibility.code_names import shown_names
+from generator.records.figure import Figure, Grade
 from generator.records.finding import Finding, Severity
 from generator.records.lamp import Lamp
 from generator.records.tender import Eligibility, Outcome
@@ -99,9 +100,13 @@ def test_clauses_of_the_buyer_bind_and_named_clauses_must_be_judged(
             Outcome.NOT_ADMISSIBLE,
         ),
         ({}, {}, {"reports_to": date(2026, 4, 30)}, "evidence-date", Outcome.NOT_ADMISSIBLE),
+        # the days at both ends of the window belong to it, and so does that of the assessment
+        ({}, {}, {"reports_to": date(2026, 5, 1)}, None, Outcome.ADMISSIBLE),
+        ({"report_date": date(2026, 9, 1)}, {}, {}, None, Outcome.ADMISSIBLE),
         ({}, {}, {"minimum_sample_units": 3}, None, Outcome.ADMISSIBLE),
         ({}, {}, {"minimum_sample_units": 4}, "evidence-sample", Outcome.TO_CLARIFY),
         ({"unit_price": None}, {}, {}, "offer-price", Outcome.TO_CLARIFY),
+        ({"currency": None}, {}, {}, "offer-currency", Outcome.TO_CLARIFY),
         ({"quantity": 99}, {}, {}, "offer-quantity", Outcome.TO_CLARIFY),
     ],
 )
@@ -143,6 +148,26 @@ def test_limits_of_the_lot(
     assert gate.outcome is outcome
     named = [item.clause for item in (*gate.reasons, *gate.questions)]
     assert named == ([] if clause is None else [clause])
+
+
+@pytest.mark.parametrize(
+    ("beam", "outcome"),
+    [
+        ("29.9", Outcome.NOT_ADMISSIBLE),
+        ("30", Outcome.ADMISSIBLE),
+        ("40", Outcome.ADMISSIBLE),
+        ("40.1", Outcome.NOT_ADMISSIBLE),
+    ],
+)
+def test_both_ends_of_a_span_belong_to_it(tender_case: Any, beam: str, outcome: Outcome) -> None:
+    rows = [{**tender_case.settings["lot"][0], "beam_from_deg": 30, "beam_to_deg": 40}]
+    figure = Figure("a", "", "beam_angle_deg", Decimal(beam), Grade.REPORTED, "m")
+    case = replace(
+        tender_case,
+        figures=(*tender_case.figures, figure),
+        settings={**tender_case.settings, "lot": rows},
+    )
+    assert gate_of(case).outcome is outcome
 
 
 @pytest.mark.parametrize(

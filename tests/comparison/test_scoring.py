@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
 from decimal import Decimal
 from itertools import permutations
 
@@ -122,6 +123,14 @@ def test_a_bid_without_a_value_or_barred_is_not_ranked_and_sets_no_best_value() 
     assert by_id["c"].reason == "no value for price"
 
 
+def test_a_declared_value_is_scored_and_named_as_declared() -> None:
+    told = replace(candidate("a", "20", "95"), declared=frozenset({"ra"}))
+    price, rendering = award([told], TWO).scores[0].sub_scores
+    assert "declared" not in price.arithmetic
+    assert rendering.arithmetic.endswith("points; the value is declared, not measured")
+    assert rendering.score == 75
+
+
 def test_ties_share_the_rank_unless_the_rule_settles_them() -> None:
     only_ra = {"criteria": (criterion(quantity="ra", better="higher"),)}
     bids = [
@@ -141,6 +150,15 @@ def test_ties_share_the_rank_unless_the_rule_settles_them() -> None:
     assert by_cost.scores[0].tied_with == ("b",)
 
 
+def test_totals_are_rounded_before_they_are_compared() -> None:
+    """85.001 against 85 of 20 is 0.002 points of 40 more: equal at two decimals, so tied."""
+    result = award([candidate("a", "20", "85"), candidate("b", "20", "85.001")], TWO)
+    assert [(item.lamp_id, item.rank, item.tied_with) for item in result.scores] == [
+        ("a", 1, ("b",)),
+        ("b", 1, ("a",)),
+    ]
+
+
 def test_order_of_bids_does_not_matter() -> None:
     bids = [candidate("a", "20"), candidate("b", "16", "85"), candidate("c", "16", "85")]
     results = {repr(award(list(order), TWO)) for order in permutations(bids)}
@@ -155,6 +173,8 @@ def test_low_offers_are_flagged_and_stay() -> None:
     assert low.mean_of_others == 105
     assert abs(low.percent_below - Decimal("42.857")) < Decimal("0.001")
     assert low_offers(prices, Decimal(43)) == ()
+    at_the_threshold = {"a": Decimal(100), "b": Decimal(100), "c": Decimal(60)}
+    assert [item.lamp_id for item in low_offers(at_the_threshold, Decimal(40))] == ["c"]
     assert low_offers({"a": Decimal(1), "b": Decimal(9)}, Decimal(20)) == ()
     settings_low = TWO.model_copy(update={"abnormally_low_percent": Decimal(40)})
     result = award(

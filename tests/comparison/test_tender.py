@@ -11,9 +11,19 @@ import pytest
 from pydantic import ValidationError
 from scipy.optimize import brentq
 
+from generator.comparison.cost.study import break_even
 from generator.errors import DataProblems
 from generator.records.figure import Figure, Grade
-from generator.records.tender import BidResult, CostItem, LotResult, Outcome, Tender, money
+from generator.records.tender import (
+    BidResult,
+    CashFlow,
+    CostItem,
+    LifeCycleCost,
+    LotResult,
+    Outcome,
+    Tender,
+    money,
+)
 from generator.records.tender_settings import TenderSettings
 
 
@@ -73,6 +83,72 @@ def test_equal_light_counts_lamps_and_light(tender_case: Any) -> None:
     cost = bid_of(scaled, "a").cost
     assert cost is not None
     assert cost.lamps == light.lamps_needed
+
+
+def spent_over(*yearly: int) -> LifeCycleCost:
+    """A cost study of so much present value in each year, year 0 first."""
+    flows = [
+        CashFlow(k, CostItem.ENERGY, Decimal(k), Decimal(v), Decimal(1), Decimal(v))
+        for k, v in enumerate(yearly)
+    ]
+    return LifeCycleCost(1, "EUR", len(yearly) - 1, "real", tuple(flows), ())
+
+
+@pytest.mark.parametrize(
+    ("offer", "year"),
+    [
+        ((10, 1, 1, 9, 1), 4),  # sums 10 11 12 21 22 to 5 10 15 20 25: ahead, dearer again, ahead
+        ((10, 0, 5, 5, 5), 1),  # equal from the end of year 1 on: no dearer
+        ((10, 9, 9, 9, 9), None),
+        ((5, 5, 5, 5, 9), None),  # dearer at the end, whatever came before
+        ((4, 5, 5, 5, 5), 0),
+    ],
+)
+def test_break_even_is_the_year_from_whose_end_the_bid_stays_no_dearer(
+    offer: tuple[int, ...], year: int | None
+) -> None:
+    assert break_even(spent_over(*offer), spent_over(5, 5, 5, 5, 5)).year == year
+
+
+def test_what_the_baseline_is_costed_at_is_said(tender_case: Any) -> None:
+    assert any("bought and fitted anew" in note for note in tender_case.compared().lots[0].notes)
+    bare = tender_case.with_settings("use", baseline_lamp=None)
+    assert bare.compared().lots[0].notes == ()
+
+
+def in_floats(
+    *, life: float = 10_000, hours: float = 2000, rate: float = 0.04, tariff: float = 0.25
+) -> float:
+    """Cost of bid a summed year by year in floats, apart from the formula of the program."""
+    kwh = 100 * (8 * hours + 0.5 * 0.4 * (8760 - hours)) / 1000
+    total: float = 100 * (6 + 1) + sum(
+        kwh * tariff * (1.02 / (1 + rate)) ** k for k in range(1, 11)
+    )
+    renewals = math.ceil(10 * hours / life) - 1
+    return total + sum(800 / (1 + rate) ** (j * life / hours) for j in range(1, renewals + 1))
+
+
+def test_both_ends_of_every_bar_of_the_tornado(tender_case: Any) -> None:
+    """A fifth up and down: life 8000 and 12 000 h, two renewals and one; standby two fifths."""
+    figures = [
+        replace(item, value=Decimal(10_000)) if item.quantity == "l70b50_h" else item
+        for item in tender_case.figures
+    ]
+    figures.append(Figure("a", "", "standby_power_w", Decimal("0.5"), Grade.REPORTED, "m"))
+    case = replace(tender_case, figures=tuple(figures))
+    result = bid_of(case.with_settings("use", standby_share_percent=40).compared(), "a")
+    assert result.cost is not None
+    assert float(result.cost.total) == pytest.approx(in_floats(), rel=1e-12)
+    bars = {bar.assumption: (bar.low_cost, bar.high_cost) for bar in result.sensitivity}
+    assert {name: tuple(map(float, ends)) for name, ends in bars.items()} == {
+        name: pytest.approx(ends, rel=1e-12)
+        for name, ends in {
+            "tariff": (in_floats(tariff=0.20), in_floats(tariff=0.30)),
+            "hours per year": (in_floats(hours=1600), in_floats(hours=2400)),
+            "discount rate": (in_floats(rate=0.032), in_floats(rate=0.048)),
+            "life": (in_floats(life=8000), in_floats(life=12_000)),
+        }.items()
+    }
 
 
 def test_tornado_is_widest_first_and_exact_for_the_tariff(tender_case: Any) -> None:
@@ -223,6 +299,25 @@ def test_relamping_counts_replacements_of_the_new_lamps(tender_case: Any) -> Non
     assert tender.plan is not None
     spends = [year.spend for year in tender.plan.years]
     assert spends == [100, 0, 0, 0, 110, 0, 0, 0, 0, 0]  # (9 + 1) a lamp, then (9 + 2)
+    later = replace(
+        tender_case, settings={**tender_case.settings, "room": [{**room, "relamp_year": 5}]}
+    ).compared()
+    assert later.plan is not None
+    spends = [year.spend for year in later.plan.years]
+    assert spends == [0, 0, 0, 0, 100, 0, 0, 0, 110, 0]  # five years on, within the study
+
+
+def test_a_plan_says_where_the_first_place_is_provisional(tender_case: Any) -> None:
+    room = {"id": "r", "lot": "rooms", "points": 1, "hours_per_year": 9, "existing_lamp": "old"}
+    case = replace(tender_case, settings={**tender_case.settings, "room": [room]})
+    plan = case.compared().plan
+    assert plan is not None
+    assert plan.rooms[0].new_lamp == "c"
+    assert not any("provisional" in note for note in plan.notes)
+    asked = case.with_bid("c", laboratory="").compared().plan
+    assert asked is not None
+    assert asked.rooms[0].new_lamp == "c"
+    assert "first place of lot rooms is provisional" in asked.notes[-1]
 
 
 def test_a_price_path_stands_in_place_of_price_and_rise(tender_case: Any) -> None:
@@ -267,6 +362,9 @@ def test_both_bases_of_emissions_are_labelled(tender_case: Any) -> None:
         ("use", {"currency": "euro"}, "use.currency"),
         ("use", {"tariff_path_per_kwh": [0.2]}, "use"),
         ("use", {"location_based": {"g_per_kwh": 1, "source": "s"}}, "use.location_based.year"),
+        ("use", {"location_based": {"g_per_kwh": 1, "source": "s"}}, "use.location_based.region"),
+        ("use", {"market_based": {"g_per_kwh": 1, "year": 2025}}, "use.market_based.source"),
+        ("use", {"emission_factor_g_per_kwh": 250}, "use.emission_factor_g_per_kwh"),
         ("tender", {"reports_from": "2026-02-01", "reports_to": "2026-01-01"}, "tender"),
         ("tender", {"nonsense": 1}, "tender.nonsense"),
     ],
@@ -329,8 +427,6 @@ def test_settings_of_a_campaign_without_a_tender_still_read() -> None:
                 "currency": "EUR",
                 "price_rise_percent": 2.0,
                 "discount_rate_percent": 3.0,
-                "emission_factor_g_per_kwh": 250,
-                "emission_factor_source": "stated",
                 "years": 10,
                 "baseline_lamp": "x",
             },
@@ -338,6 +434,5 @@ def test_settings_of_a_campaign_without_a_tender_still_read() -> None:
         }
     )
     assert settings.use.tariff_per_kwh == Decimal("0.24")
-    assert settings.use.location_factor is not None
-    assert settings.use.location_factor.region == "not stated"
+    assert settings.use.location_based is None
     assert settings.award.criteria[0].method == "relative to best"

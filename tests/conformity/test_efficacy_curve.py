@@ -19,6 +19,8 @@ from generator.records.clause import LawBook
         ("integrated-directional", 92.4, 97.6),
         ("integrated-directional-standby", 88.7, 93.9),
         ("non-integrated-omnidirectional", 122.4, 136.9),
+        ("integrated-omnidirectional-long", 170.1, 174.1),
+        ("non-integrated-omnidirectional-long", 191.4, 195.4),
         ("non-integrated-directional", 88.1, 93.8),
     ],
 )

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
+from decimal import Decimal
 from typing import Any
 
 import pytest
@@ -64,6 +65,62 @@ def test_option_c_is_missed_just_beyond_each_limit(verdict_of: VerdictOf, quanti
 
 def test_option_b_needs_the_waveform(verdict_of: VerdictOf) -> None:
     units = per_watt("3.41") | percent(h3_percent="80", h5_percent="50")
+    verdict = verdict_of(small(units), CLAUSE, "determined")
+    assert verdict.verdict == "inconclusive"
+    assert "not decidable without the waveform" in verdict.note
+
+
+ANGLES = {
+    "current_start_deg": "60",
+    "current_last_peak_deg": "65",
+    "current_end_deg": "90",
+}
+
+
+def with_angles(**changed: str) -> dict[str, list[str]]:
+    """Neither option A nor C; third and fifth order, and the angles, on the limits of option B."""
+    units = {**ANGLES, **changed}
+    orders = percent(h3_percent="86", h5_percent="61")
+    return per_watt("3.41") | orders | {name: [value] for name, value in units.items()}
+
+
+def test_option_b_holds_on_its_limits(verdict_of: VerdictOf) -> None:
+    verdict = verdict_of(small(with_angles()), CLAUSE, "determined")
+    assert verdict.verdict == "pass"
+    assert "option B" in verdict.note
+    assert verdict.margin == 0
+
+
+@pytest.mark.parametrize(
+    "changed",
+    [
+        {"current_start_deg": "60.1"},
+        {"current_last_peak_deg": "65.1"},
+        {"current_end_deg": "89.9"},
+    ],
+)
+def test_option_b_is_missed_just_beyond_each_angle(
+    verdict_of: VerdictOf, changed: dict[str, str]
+) -> None:
+    verdict = verdict_of(small(with_angles(**changed)), CLAUSE, "determined")
+    assert verdict.verdict == "fail"
+
+
+def test_a_current_that_ends_too_soon_is_shown_against_a_lower_limit(
+    verdict_of: VerdictOf,
+) -> None:
+    units = with_angles(current_end_deg="89.5") | {"h3_ma_per_w": ["5"]}
+    verdict = verdict_of(small(units), CLAUSE, "determined")
+    assert (verdict.quantity, verdict.unit) == ("current_end_deg", "°")
+    assert verdict.comparison == "at least"
+    assert verdict.limit == 90
+    assert verdict.margin == Decimal("-0.5")
+
+
+@pytest.mark.parametrize("absent", ANGLES)
+def test_option_b_needs_all_three_angles(verdict_of: VerdictOf, absent: str) -> None:
+    units = with_angles()
+    del units[absent]
     verdict = verdict_of(small(units), CLAUSE, "determined")
     assert verdict.verdict == "inconclusive"
     assert "not decidable without the waveform" in verdict.note

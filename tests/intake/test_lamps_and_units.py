@@ -46,6 +46,28 @@ def test_a_lamp_needs_an_identifier_and_nothing_else() -> None:
     assert problems.problems == ()
 
 
+def test_size_and_purity_stand_under_their_quantities() -> None:
+    (lamp,), problems = _lamps(
+        "lamp_id,light_emitting_area_mm2,length_mm,declared_excitation_purity\nL1,12.5,1200,0.92\n"
+    )
+    assert problems.problems == ()
+    assert lamp.declared == {
+        "light_emitting_area_mm2": Decimal("12.5"),
+        "length_mm": Decimal(1200),
+        "excitation_purity": Decimal("0.92"),
+    }
+
+
+@pytest.mark.parametrize(
+    ("column", "cell"),
+    [("light_emitting_area_mm2", "0"), ("length_mm", "-3"), ("declared_excitation_purity", "92")],
+)
+def test_impossible_size_or_purity_is_an_error(column: str, cell: str) -> None:
+    (lamp,), problems = _lamps(f"lamp_id,{column}\nL1,{cell}\n")
+    assert lamp.declared == {}
+    assert [problem.column for problem in problems.problems] == [column]
+
+
 def test_declared_columns_stand_under_their_quantities() -> None:
     (lamp,), problems = _lamps(
         "lamp_id;declared_colour_consistency_sdcm;declared_l70b50_h;declared_equivalent_power_w;"

@@ -24,6 +24,7 @@ from generator.publish.evidence import (
 from generator.records.assessment import Assessment
 from generator.records.campaign import Campaign, InputFile
 from generator.records.figure import Figure, FigureSet, Grade
+from generator.records.finding import Finding, Severity
 from generator.records.lamp import Lamp, Unit
 from generator.records.product_field import ProductField
 from generator.records.settings import Settings
@@ -78,7 +79,23 @@ def small_assessment() -> Assessment:
         "read",
         steps=("80.0 is at least 80",),
     )
-    return Assessment(campaign, date(2026, 3, 2), figures, (verdict,), "0.0")
+    findings = tuple(
+        Finding(
+            lamp_id,
+            "",
+            "efficacy-above-ler",
+            Severity.IMPOSSIBLE,
+            "Efficacy above that of its own light",
+            "380 lm/W against 320 lm/W",
+            deviation,
+            "lm/W",
+            "A flux or a power of another lamp.",
+            ("efficacy_lm_per_w",),
+            "cie_eilv, luminous efficacy of radiation",
+        )
+        for lamp_id, deviation in (("L1", Decimal("60.0")), ("L2", None))
+    )
+    return Assessment(campaign, date(2026, 3, 2), figures, (verdict,), "0.0", findings=findings)
 
 
 def rows(content: bytes) -> list[dict[str, str]]:
@@ -122,6 +139,18 @@ def test_results_keep_to_the_schema(small_assessment: Assessment) -> None:
     jsonschema.validate(results, SCHEMA)
     assert results["figures"][0]["value"] == 16.6
     assert results["figures"][1]["value"] is None
+    assert [item["deviation"] for item in results["findings"]] == [60.0, None]
+
+
+@pytest.mark.parametrize("changed", [{"severity": "grave"}, {"check": ""}, {"explanation": ""}])
+def test_the_schema_refuses_a_finding_that_does_not_say_what_it_is(
+    small_assessment: Assessment, changed: dict[str, str]
+) -> None:
+    results = json.loads(results_json(small_assessment))
+    assert results["findings"][0]["compared"] == "380 lm/W against 320 lm/W"
+    results["findings"][0] |= changed
+    with pytest.raises(jsonschema.ValidationError):
+        jsonschema.validate(results, SCHEMA)
 
 
 def test_the_schema_refuses_a_silent_gap(small_assessment: Assessment) -> None:
@@ -143,6 +172,7 @@ def test_results_of_one_lamp_name_that_lamp_alone(small_assessment: Assessment) 
     jsonschema.validate(results, SCHEMA)
     assert [lamp["lamp_id"] for lamp in results["campaign"]["lamps"]] == ["L1"]
     assert results["campaign"]["warnings"] == []
+    assert [item["lamp_id"] for item in results["findings"]] == ["L1"]
 
 
 def test_product_information_has_one_row_per_field() -> None:

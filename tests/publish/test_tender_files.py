@@ -10,6 +10,7 @@ import subprocess
 import warnings
 import zipfile
 from collections.abc import Iterator
+from dataclasses import replace
 from decimal import Decimal
 from pathlib import Path
 from typing import Any
@@ -18,10 +19,11 @@ import pytest
 
 from generator import pipeline
 from generator.datasets import sources
+from generator.publish.tender_details import gate_rows, plain_text
 from generator.publish.tender_files import tender_files
-from generator.publish.tender_tables import plain_text
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext
+from generator.records.tender import Eligibility, Outcome, Question
 from generator.sheets import TenderSheets, describe_letters, describe_tender_report
 
 SETTINGS = """
@@ -297,10 +299,70 @@ def test_no_text_of_a_user_is_a_formula(tender_output: dict[str, bytes]) -> None
     assert all(cell.data_type == "s" and cell.quotePrefix for cell in hostile)
 
 
+TABLES = (
+    *("bids", "cash_flows", "scores", "ranks", "plan"),
+    *("gate", "assumptions", "emissions", "sensitivity", "lead"),
+)
+
+
+def table_of(output: dict[str, bytes], name: str) -> list[dict[str, str]]:
+    return list(csv.DictReader(io.StringIO(output[f"tender/{name}.csv"].decode())))
+
+
+def test_detailed_tables_hold_what_the_tender_holds(
+    tender_assessment: Assessment, tender_output: dict[str, bytes]
+) -> None:
+    """Everything that the report prints of a bid can be read from a table, unrounded."""
+    tender = tender_assessment.tender
+    assert tender is not None
+    bids = [(lot, item) for lot in tender.lots for item in lot.bids]
+    gates = [item.eligibility for _, item in bids]
+    low = sum(len(lot.award.low_offers) for lot in tender.lots if lot.award)
+    expected = sum(len(g.reasons) + len(g.questions) + len(g.passed) for g in gates) + low
+    assert len(table_of(tender_output, "gate")) == expected > 0
+    bars = table_of(tender_output, "sensitivity")
+    assert [Decimal(row["high_cost"]) for row in bars] == [
+        bar.high_cost for _, item in bids for bar in item.sensitivity
+    ]
+    emissions = table_of(tender_output, "emissions")
+    assert {row["basis"] for row in emissions} >= {"location-based"}
+    for row in emissions:
+        energy = next(i.energy for _, i in bids if i.bid.lamp_id == row["lamp_id"])
+        assert energy is not None
+        tonnes = energy.total_kwh * Decimal(row["factor_g_per_kwh"]) / 10**6
+        assert Decimal(row["tonnes_per_year"]) == tonnes
+        assert row["factor_source"]
+        assert row["factor_region"]
+    lead = table_of(tender_output, "lead")
+    assert sum(float(row["share"]) for row in lead if row["kind"] == "driver") > 0
+    inputs = table_of(tender_output, "assumptions")
+    assert {row["lamp_id"] for row in inputs} == set("abcde")
+    flows = table_of(tender_output, "cash_flows")
+    for lot in tender.lots:
+        if lot.baseline is not None:
+            names = (lot.lot, lot.baseline_lamp)
+            own = [row for row in flows if (row["lot"], row["lamp_id"]) == names]
+            assert sum(Decimal(row["present_value"]) for row in own) == lot.baseline.total
+
+
+@pytest.mark.parametrize("hidden", [True, False])
+def test_particulars_of_a_question_are_left_out_under_code_names(
+    tender_assessment: Assessment, hidden: bool
+) -> None:
+    tender = tender_assessment.tender
+    assert tender is not None
+    asked = Question("evidence-model", "Model", "Which model is it?", "report: Model X")
+    gate = Eligibility(Outcome.TO_CLARIFY, questions=(asked,))
+    lot = tender.lots[0]
+    lot = replace(lot, bids=(replace(lot.bids[0], eligibility=gate),), award=None)
+    (row,) = gate_rows(replace(tender, lots=(lot,), under_codes=hidden), str)
+    assert row["text"] == "Which model is it?" + ("" if hidden else " report: Model X")
+
+
 def test_tables_hold_no_formula_and_every_bid(
     tender_assessment: Assessment, tender_output: dict[str, bytes]
 ) -> None:
-    for name in ("bids", "cash_flows", "scores", "ranks", "plan"):
+    for name in TABLES:
         text = tender_output[f"tender/{name}.csv"].decode()
         rows = list(csv.DictReader(io.StringIO(text)))
         assert rows

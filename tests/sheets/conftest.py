@@ -485,7 +485,7 @@ def invented_assessment() -> Assessment:
         ),
         laboratory=Laboratory(name="Light bench of Fernwick", accreditation="none"),
         use=TenderUse(hours_per_year=Decimal(2000), tariff_per_kwh=Decimal("0.30"), currency="EUR"),
-        sheet=SheetTable(theme="tender"),
+        sheet=SheetTable(theme="tender", lamp_pages=4),
     )
     warnings = (
         Problem("warning", "units.csv", 3, "r9", "", "a number", "R9 is missing for one unit."),

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import re
 from collections import Counter
+from dataclasses import replace
 from datetime import date
 from decimal import Decimal
 
@@ -51,15 +52,16 @@ def small_assessment() -> Assessment:
     )
     figures = []
     for name, value in DECLARED.items():
-        place = (f"lamps.csv, row 2, column declared_{name}",)
-        declared = Figure("L1", MEAN, name, Decimal(value), Grade.DECLARED, f"declared_{name}")
-        figures.append(Figure(**{**_fields(declared), "origin": place}))
-    for name, (value, uncertainty) in MEASURED.items():
+        column = f"declared_{name}"
+        declared = Figure("L1", MEAN, name, Decimal(value), Grade.DECLARED, column)
+        figures.append(replace(declared, origin=(f"lamps.csv, row 2, column {column}",)))
+    for name, (measured, uncertainty) in MEASURED.items():
         for unit in ("u1", MEAN):
-            found = Figure("L1", unit, name, value, Grade.REPORTED, name)
-            place = () if unit == MEAN else (f"units.csv, row 2, column {name}",)
-            extra = {"origin": place, "expanded_uncertainty": uncertainty, "units_count": 1}
-            figures.append(Figure(**{**_fields(found), **extra}))
+            found = Figure("L1", unit, name, measured, Grade.REPORTED, name)
+            found = replace(found, expanded_uncertainty=uncertainty, units_count=1)
+            if unit != MEAN:
+                found = replace(found, origin=(f"units.csv, row 2, column {name}",))
+            figures.append(found)
     settings = Settings(
         campaign=CampaignTable(title="small"), decision=Decision(rule="guarded acceptance")
     )
@@ -74,10 +76,6 @@ def small_assessment() -> Assessment:
         verdicts=judgement.verdicts,
         clauses=clauses,
     )
-
-
-def _fields(figure: Figure) -> dict[str, object]:
-    return {name: getattr(figure, name) for name in Figure.__dataclass_fields__}
 
 
 def explained(assessment: Assessment, topic: str) -> Explanation:

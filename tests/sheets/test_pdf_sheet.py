@@ -26,7 +26,7 @@ from generator.sheets.html_sheet import render_paper
 from generator.sheets.paper_fit import BUDGETS, fitted
 from generator.sheets.paper_tree import page_tree
 from generator.sheets.pdf_archive import finish_archive
-from generator.sheets.pdf_sheet import MOST_LAMP_PAGES
+from generator.sheets.pdf_sheet import MOST_LAMP_PAGES, MOST_SHORT_PAGES
 
 
 @pytest.fixture(scope="module")
@@ -102,6 +102,18 @@ def test_a_lamp_takes_four_pages_of_a4_at_the_most(opened):
     for page in opened.pages:
         width, height = (float(edge) for edge in page.mediabox[2:])
         assert (width, height) == pytest.approx((595.276, 841.89), abs=0.01)  # A4, ISO 216
+
+
+def test_the_short_form_takes_two_pages_of_a4(lamp_sheet):
+    frame = dataclasses.replace(lamp_sheet.frame, short=True)
+    short = dataclasses.replace(_crowded(lamp_sheet, 2), frame=frame)
+    with pikepdf.open(io.BytesIO(render_pdf(short))) as pdf:
+        assert len(pdf.pages) == MOST_SHORT_PAGES == 2
+        words = _words(pdf)
+    for heading in ("Verdictbyclause", "Whatthemeasurementsshow", "Cautions", "Sources"):
+        assert heading in words
+    assert "Thisistheshortform." in words
+    assert "Unitsandspread" not in words
 
 
 def test_page_and_paper_say_the_same(lamp_sheet, opened):

@@ -12,6 +12,8 @@ import pytest
 
 from generator.records.finding import Finding, Severity
 from generator.records.lamp import Offer
+from generator.records.product_field import ProductField
+from generator.records.report_settings import ReportTable
 from generator.records.tender import Tender
 from generator.sheets import describe_comparison, describe_lamp, render_html
 from generator.sheets.html_sheet import render_paper
@@ -51,7 +53,15 @@ def coded(invented_assessment, invented_context):
     )
     matrix = invented_context.matrix
     rows = (replace(matrix.rows[0], questions=1), *matrix.rows[1:])
-    context = replace(invented_context, matrix=replace(matrix, rows=rows))
+    products = {
+        "L-01": (
+            ProductField("L-01", "supplier's name", "Quarrow"),
+            ProductField("L-01", "model identifier", "Harbour 806"),
+        )
+    }
+    context = replace(invented_context, matrix=replace(matrix, rows=rows), products=products)
+    report = ReportTable(item_description="Harbour 806 of Quarrow", sampling="by Quarrow")
+    settings = campaign.settings.model_copy(update={"report": report})
     tender = Tender(
         lots=(),
         shown_as=CODES,
@@ -60,7 +70,7 @@ def coded(invented_assessment, invented_context):
     )
     assessment = replace(
         invented_assessment,
-        campaign=replace(campaign, lamps=lamps),
+        campaign=replace(campaign, lamps=lamps, settings=settings),
         findings=(finding,),
         tender=tender,
     )

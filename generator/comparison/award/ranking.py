@@ -34,6 +34,8 @@ class Candidate:
         Whether questions are open.
     barred
         Why it is not ranked; empty where it may be.
+    declared
+        Names of the criteria whose value is declared and not measured.
     """
 
     lamp_id: str
@@ -43,6 +45,7 @@ class Candidate:
     life_cycle_cost: Decimal | None
     provisional: bool = False
     barred: str = ""
+    declared: frozenset[str] = frozenset()
 
 
 def award(candidates: Sequence[Candidate], settings: TenderAward) -> AwardResult:
@@ -115,6 +118,7 @@ def _sub_score(criterion: TenderCriterion, item: Candidate, best: Decimal | None
         return SubScore(name, value, unit, None, weight, None, text)
     reached = score(exact_function(criterion), value, best)
     points = reached * weight / FULL_SCORE
+    origin = "; the value is declared, not measured" if name in item.declared else ""
     return SubScore(
         name,
         value,
@@ -123,7 +127,7 @@ def _sub_score(criterion: TenderCriterion, item: Candidate, best: Decimal | None
         weight,
         points,
         f"{_arithmetic(criterion, value, best, reached)}; "
-        f"x {_shown(weight)} % = {_shown(points)} points",
+        f"x {_shown(weight)} % = {_shown(points)} points{origin}",
     )
 
 

@@ -32,6 +32,7 @@ _NOTES = (
     "Life, tariff and price rise vary as [use] states.",
     "Not varied: declared values, prices offered, weights. Bids vary independently of each other.",
     "Conformity is that of the true value: it meets a limit or does not, and never stays open.",
+    "What the shares of the inputs leave of the whole comes from steps and from inputs together.",
     "Swaps are sought from {} % to +{} % of each input.".format(*FURTHEST_PERCENT),
 )
 
@@ -91,7 +92,7 @@ def certainty(
     admitted = np.array([met[entry.lamp_id] for entry in scene.entries]).reshape(-1, trials)
     drawn = drawn_inputs(scene, use, seed, trials)
     result = evaluated(scene, drawn, trials, admitted)
-    places = _places(result, admitted)
+    places = _places(result, admitted, scene.award.decimals)
     rows = {entry.lamp_id: row for row, entry in enumerate(scene.entries)}
     order = [*ranking, *sorted(item.lamp_id for item in gated if item.lamp_id not in rows)]
     outcomes = {item.lamp_id: _outcomes(item, met[item.lamp_id]) for item in gated}
@@ -107,12 +108,16 @@ def certainty(
     return Certainty(seed, trials, bids, swaps, drivers, _NOTES)
 
 
-def _places(result: SceneResult, admitted: NDArray[np.bool_]) -> NDArray[np.int64]:
-    """Rank of each bid in each trial, shared where equal; 0 where not admitted (bids, trials)."""
-    places = np.zeros(result.totals.shape, dtype=np.int64)
+def _places(result: SceneResult, admitted: NDArray[np.bool_], decimals: int) -> NDArray[np.int64]:
+    """Rank of each bid in each trial, shared where equal; 0 where not admitted (bids, trials).
+
+    Totals are rounded before they are compared, as in the award.
+    """
+    totals = np.round(result.totals, decimals)
+    places = np.zeros(totals.shape, dtype=np.int64)
     for row in range(len(places)):
-        own, tie = result.totals[row], result.tie_values[row]
-        ahead = (result.totals > own) | ((result.totals == own) & (result.tie_values < tie))
+        own, tie = totals[row], result.tie_values[row]
+        ahead = (totals > own) | ((totals == own) & (result.tie_values < tie))
         places[row] = np.where(admitted[row], 1 + np.sum(ahead & admitted, axis=0), 0)
     return places
 

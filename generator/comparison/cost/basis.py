@@ -221,7 +221,7 @@ def use_gaps(use: TenderUse) -> tuple[str, ...]:
     ]
     if use.tariff_per_kwh is None and use.tariff_path_per_kwh is None:
         gaps.append("tariff_per_kwh")
-    if use.carbon_price_per_t is not None and use.location_factor is None:
+    if use.carbon_price_per_t is not None and use.location_based is None:
         gaps.append("location_based")
     return tuple(f"use.{key}" for key in gaps)
 
@@ -238,7 +238,7 @@ def use_numbers(use: TenderUse) -> UseNumbers[Decimal]:
     path = use.tariff_path_per_kwh
     if path is None:
         path = price_path(use.tariff_per_kwh or Decimal(0), rise, years)
-    factor = use.location_factor
+    factor = use.location_based
     carbon = Decimal(0)
     if use.carbon_price_per_t is not None and factor is not None:
         carbon = use.carbon_price_per_t * factor.g_per_kwh / 10**6

@@ -143,12 +143,18 @@ def _check_sample(units: int, tender: TenderTable, findings: GateFindings) -> No
 
 
 def check_offer(lamp: Lamp, lot: TenderLot, quantity: int, findings: GateFindings) -> None:
-    """Check price, quantity and cap of one offer against its lot."""
+    """Check price, currency, quantity and cap of one offer against its lot."""
     if lamp.offer.unit_price is None:
         findings.ask(
             "offer-price",
             "Unit price",
             "No unit price was found in the bid. Please state where in the bid it stands.",
+        )
+    elif not lamp.offer.currency:
+        findings.ask(
+            "offer-currency",
+            "Currency of the price",
+            "The bid states a unit price without its currency. Please state the currency.",
         )
     offered = lamp.offer.quantity
     if lot.quantity is not None and offered is not None and offered < quantity:

@@ -93,7 +93,7 @@ def _methods(group: Sequence[Figure]) -> str:
 
 
 def _shared_remarks(group: Sequence[Figure]) -> tuple[str, ...]:
-    """Remarks of the units, those that differ only in their numbers once."""
+    """Remarks of the units, those that differ only in their numbers as one."""
     kinds: dict[str, list[str]] = {}
     for figure in group:
         for text in dict.fromkeys(figure.remarks):
@@ -103,9 +103,20 @@ def _shared_remarks(group: Sequence[Figure]) -> tuple[str, ...]:
 
 
 def _one_remark(texts: Sequence[str], total: int) -> str:
-    alike = "" if len(set(texts)) == 1 else ", or nearly so"
     count = "" if len(texts) == total else f" ({len(texts)} of {total} units)"
-    return f"{texts[0]}{alike}{count}"
+    return f"{_with_ranges(texts)}{count}"
+
+
+def _with_ranges(texts: Sequence[str]) -> str:
+    """Texts that differ only in their numbers as one, with ranges for what varies."""
+    numbers = zip(*(_NUMBER.findall(text) for text in texts), strict=True)
+    ranges = iter([_range(column) for column in numbers])
+    return _NUMBER.sub(lambda _: next(ranges), texts[0])
+
+
+def _range(numbers: Sequence[str]) -> str:
+    least, most = min(numbers, key=float), max(numbers, key=float)
+    return least if least == most else f"{least} to {most}"
 
 
 def _extremes(given: Sequence[Figure]) -> tuple[str, ...]:

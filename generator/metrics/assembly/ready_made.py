@@ -15,6 +15,8 @@ _COLUMNS = {
     "useful_luminous_flux_lm": "declared_luminous_flux_lm",
     "sdcm": "declared_colour_consistency_sdcm",
     "energy_efficiency_class": "declared_energy_class",
+    "light_emitting_area_mm2": "light_emitting_area_mm2",
+    "length_mm": "length_mm",
 }
 
 

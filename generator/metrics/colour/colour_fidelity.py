@@ -30,6 +30,7 @@ _C = 0.69
 _Z = 1.48 + np.sqrt(_N)
 _CHROMA = (1.64 - 0.29**_N) ** 0.73 * _F_L**0.25 * (50000.0 / 13.0 * _N_BB) ** 0.9
 _FIDELITY_FACTOR = 6.73
+_NEXT_BIN = np.arange(1, HUE_BINS + 1) % HUE_BINS
 _BISECTORS = np.deg2rad(22.5 * np.arange(HUE_BINS) + 11.25)
 
 
@@ -141,7 +142,7 @@ def _fidelity(difference: Array) -> Array:
 
 
 def _polygon_area(a: Array, b: Array) -> Array:
-    next_a, next_b = np.roll(a, -1, axis=1), np.roll(b, -1, axis=1)
+    next_a, next_b = a[:, _NEXT_BIN], b[:, _NEXT_BIN]
     return np.asarray(0.5 * (a * next_b - b * next_a).sum(axis=1))
 
 

@@ -172,10 +172,13 @@ def _fine_band(how: Sampling, spectra: Array) -> tuple[Array, Array]:
 
 
 def _peak_and_valley(grid: Array, spectra: Array) -> tuple[Index, Index]:
-    window = (grid >= _EMITTER_NM[0]) & (grid <= _EMITTER_NM[1])
-    top = np.where(window, spectra, -np.inf).argmax(axis=1)
-    between = (grid > grid[top][:, None]) & (grid <= _VALLEY_TO_NM)
-    valley = np.where(between, spectra, np.inf).argmin(axis=1)
+    """Places of the highest sample of the emitter's band and of the lowest one behind it."""
+    first, behind = np.searchsorted(grid, [_EMITTER_NM[0], _EMITTER_NM[1] + 1])
+    last = int(np.searchsorted(grid, _VALLEY_TO_NM, side="right"))
+    top = first + spectra[:, first:behind].argmax(axis=1)
+    near = spectra[:, first:last]
+    beyond = np.arange(first, last) > top[:, None]
+    valley = first + np.where(beyond, near, np.inf).argmin(axis=1)
     return top, valley
 
 

@@ -5,6 +5,10 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.metrics.electrical.current_conduction import (
+    CurrentConduction,
+    current_conduction,
+)
 from generator.metrics.electrical.mains_frequency import mains_frequency
 from generator.metrics.electrical.mains_quantities import (
     HIGHEST_ORDER,
@@ -44,6 +48,10 @@ METHODS = {
         ),
         "mains_whole_cycles",
     ),
+    **dict.fromkeys(
+        ("current_start_deg", "current_last_peak_deg", "current_end_deg"),
+        "current_conduction_iec_61000_3_2",
+    ),
     "thd_current_percent": "thd_orders_2_to_40_whole_cycles",
     "thd_current_all_percent": "thd_all_orders_whole_cycles",
     **{f"h{order}_percent": "harmonics_whole_cycles" for order in _ORDERS},
@@ -56,6 +64,7 @@ _GAPS = "the mains capture has gaps, or values too large for a number"
 _SLOW = "sampled too slowly: the order lies above half the sampling rate"
 _REVERSED = "the current clamp appears reversed: the active power is negative"
 _NEAR_REACTIVE = "the active power is negative, yet too small to tell from purely reactive power"
+_AGAINST = "the current does not flow with the voltage"
 _NO_CURRENT = f"the current fundamental is below {1000 * LEAST_CURRENT_A:g} mA"
 
 
@@ -93,10 +102,10 @@ def mains_figures(voltage_v: Array, current_a: Array, sampling_rate_hz: float) -
     current = np.where(gaps[:, None], 0.0, current_a)
     frequency = mains_frequency(voltage, sampling_rate_hz)
     lost = np.isnan(frequency)
-    quantities = mains_quantities(
-        voltage, current, sampling_rate_hz, np.where(lost, sampling_rate_hz / 10, frequency)
-    )
-    given = _figures(quantities, np.where(gaps | lost, np.nan, frequency), gaps)
+    stand_in = np.where(lost, sampling_rate_hz / 10, frequency)
+    quantities = mains_quantities(voltage, current, sampling_rate_hz, stand_in)
+    conduction = current_conduction(voltage, current, sampling_rate_hz, stand_in)
+    given = _figures(quantities, conduction, np.where(gaps | lost, np.nan, frequency), gaps)
     return SeriesFigures(
         values={name: given[name][0] for name in METHODS},
         reasons={name: given[name][1] for name in METHODS},
@@ -105,7 +114,9 @@ def mains_figures(voltage_v: Array, current_a: Array, sampling_rate_hz: float) -
     )
 
 
-def _figures(found: MainsQuantities, frequency: Array, gaps: Flags) -> Given:
+def _figures(
+    found: MainsQuantities, conduction: CurrentConduction, frequency: Array, gaps: Flags
+) -> Given:
     absent = ((gaps, _GAPS), (np.isnan(frequency), _NO_MAINS))
     idle = (found.harmonic_current_a[:, 0] < LEAST_CURRENT_A, _NO_CURRENT)
     backwards = (
@@ -136,6 +147,13 @@ def _figures(found: MainsQuantities, frequency: Array, gaps: Flags) -> Given:
         "crest_factor": withheld(found.peak_current_a / effective, *absent, idle),
         "dc_current_percent": withheld(100 * np.abs(found.direct_current_a) / one, *absent, idle),
     }
+    against = (np.isnan(conduction.start_deg), _AGAINST)
+    for name, angle in (
+        ("current_start_deg", conduction.start_deg),
+        ("current_last_peak_deg", conduction.last_peak_deg),
+        ("current_end_deg", conduction.end_deg),
+    ):
+        figures[name] = withheld(angle, *absent, idle, *backwards, slow, against)
     for order in _ORDERS:
         harmonic = found.harmonic_current_a[:, order - 1]
         rules = (*absent, idle, (np.isnan(harmonic), _SLOW))

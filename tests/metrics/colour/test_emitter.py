@@ -63,6 +63,8 @@ def test_parts_add_up_to_the_spectrum(led_spectra):
             "narrow band",
         ),
         (np.where(NM == 436, 1.0, 0.0) + phosphor_band(NM), "width of an LED"),
+        # half-width 29 nm at half height: as broad as a phosphor
+        (phosphor_band(NM, 450, 25) + phosphor_band(NM, 610, 40), "width of an LED"),
         (emitter_line(NM, 450) + phosphor_band(NM, 500, 80), "valley"),
         (np.full(NM.size, np.nan), "cannot be used"),
     ],

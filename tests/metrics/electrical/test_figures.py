@@ -66,6 +66,25 @@ def test_lamp_of_two_orders() -> None:
     assert remarks == ""
 
 
+def test_angles_of_the_current_stand_under_their_names() -> None:
+    # A sine that lags by 0.4 rad: 5 % of its peak 2.87° after its own zero, its peak 90° after it.
+    values, _, _ = one(0.05 * np.sin(ANGLE - 0.4))
+    lag = math.degrees(0.4)
+    assert values["current_start_deg"] == pytest.approx(
+        lag + math.degrees(math.asin(0.05)), abs=0.1
+    )
+    assert values["current_last_peak_deg"] == pytest.approx(lag + 90, abs=0.1)
+    assert values["current_end_deg"] == 180
+
+
+def test_angles_are_withheld_where_the_clamp_is_reversed_or_the_current_too_small() -> None:
+    for current, reason in ((-LAMP, "clamp appears reversed"), (LAMP / 1000, "below 1 mA")):
+        values, reasons, _ = one(current)
+        for name in ("current_start_deg", "current_last_peak_deg", "current_end_deg"):
+            assert math.isnan(values[name])
+            assert reason in reasons[name]
+
+
 def test_reversed_clamp_is_flagged_and_not_turned_round() -> None:
     values, reasons, remarks = one(-LAMP)
     assert "clamp appears reversed" in remarks

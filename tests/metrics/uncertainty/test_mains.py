@@ -155,3 +155,11 @@ def test_a_lamp_without_current_has_no_ratios():
     known = mains_uncertainty(found, stated(1, 0.002, 0.004, skew_us=10.0))
     assert np.isnan(known["thd_current_percent"][0])
     assert np.isnan(known["power_factor"][0])
+
+
+def test_crest_factor_takes_peak_and_effective_value_as_independent():
+    # JCGM 100, equation 12: a quotient of two currents of 0.4 % each, sqrt(2) times 0.4 %
+    found = figures([capture({1: (0.05, 0.3), 3: (0.01, 1.0)})])
+    known = mains_uncertainty(found, stated(1, voltage=0.002, current=0.004))
+    relative = known["crest_factor"][0] / found.values["crest_factor"][0]
+    assert relative == pytest.approx(0.0056569, rel=1e-5)
