@@ -6,7 +6,7 @@ BIN := .venv/bin
 READY := .venv/.ready
 DEMO := content/$(notdir $(patsubst %/campaign.toml,%,$(wildcard content/*/campaign.toml)))
 
-.PHONY: sheets test setup lint types imports tests benchmarks reference lock clean
+.PHONY: sheets test setup lint types imports tests benchmarks reference messages lock clean
 
 sheets: $(READY)
 	@$(BIN)/lampassay issue $(DEMO)
@@ -40,6 +40,10 @@ benchmarks: $(READY)
 # Writes the command reference of README.md anew from the help texts.
 reference: $(READY)
 	$(BIN)/python tests/cli/write_reference.py
+
+# Brings the catalogues of generator/language/catalogues in line with the messages of the program.
+messages: $(READY)
+	$(BIN)/python -m tests.language.write_catalogues
 
 # Writes .make/lock.txt anew from pyproject.toml; needs uv on the path.
 lock:

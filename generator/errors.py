@@ -6,6 +6,8 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import ClassVar, Literal
 
+from generator.language import joined, say
+
 __all__ = ["DataProblems", "LampassayError", "LawBookError", "Problem", "SheetError", "UseError"]
 
 Level = Literal["error", "warning"]
@@ -44,10 +46,13 @@ class Problem:
         """File, row and column in one phrase."""
         parts = [self.file]
         if self.row is not None:
-            parts.append(f"row {self.row}")
+            parts.append(say("row {row}", row=self.row))
         if self.column is not None:
-            parts.append(f"column {self.column}" if self.row is not None else self.column)
-        return ", ".join(parts)
+            named = self.column
+            if self.row is not None:
+                named = say("column {column}", column=self.column)
+            parts.append(named)
+        return joined(", ", parts)
 
     def __str__(self) -> str:
         text = f"{self.level}: {self.place}: {self.message}"

@@ -10,6 +10,8 @@ import difflib
 from dataclasses import dataclass
 from types import MappingProxyType
 
+from generator.language import say
+
 __all__ = [
     "GROUPS",
     "QUANTITIES",
@@ -41,11 +43,11 @@ class Quantity:
     name
         Name used in files and code; ends in the unit where there is one.
     label
-        Name in words, British spelling.
+        Name in words, a message; British spelling.
     symbol
         Symbol of the defining document, plain text.
     unit
-        Unit as printed; empty for a dimensionless figure.
+        Unit as printed, a message where it is a word; empty for a dimensionless figure.
     decimals
         Decimals shown where no uncertainty says otherwise.
     group
@@ -66,35 +68,35 @@ class Quantity:
 def _catalogue() -> dict[str, Quantity]:
     rows: list[tuple[str, str, str, str, int, str, str]] = [
         # photometric
-        ("luminous_flux_lm", "luminous flux", "Φ", "lm", 0, "photometric", "cie_s025"),
+        ("luminous_flux_lm", say("luminous flux"), "Φ", "lm", 0, "photometric", "cie_s025"),
         (
             "useful_luminous_flux_lm",
-            "useful luminous flux",
+            say("useful luminous flux"),
             "Φuse",
             "lm",
             0,
             "photometric",
             "eu_2019_2015",
         ),
-        ("efficacy_lm_per_w", "luminous efficacy", "η", "lm/W", 1, "photometric", "cie_s025"),
+        ("efficacy_lm_per_w", say("luminous efficacy"), "η", "lm/W", 1, "photometric", "cie_s025"),
         # colour
-        ("x", "chromaticity x", "x", "", 4, "colour", "cie_15"),
-        ("y", "chromaticity y", "y", "", 4, "colour", "cie_15"),
-        ("u_prime", "chromaticity u′", "u′", "", 4, "colour", "iso_cie_11664_5"),
-        ("v_prime", "chromaticity v′", "v′", "", 4, "colour", "iso_cie_11664_5"),
-        ("cct_k", "correlated colour temperature", "CCT", "K", 0, "colour", "ohno_2014"),
-        ("duv", "distance from the Planckian locus", "Duv", "", 4, "colour", "ohno_2014"),
-        ("sdcm", "colour consistency", "SDCM", "steps", 1, "colour", "iec_60081"),
-        ("peak_wavelength_nm", "peak wavelength", "λp", "nm", 0, "colour", "cie_eilv"),
-        ("centroid_wavelength_nm", "centroid wavelength", "λc", "nm", 1, "colour", "cie_eilv"),
-        ("dominant_wavelength_nm", "dominant wavelength", "λd", "nm", 1, "colour", "cie_15"),
-        ("excitation_purity", "excitation purity", "pe", "", 3, "colour", "cie_15"),
+        ("x", say("chromaticity x"), "x", "", 4, "colour", "cie_15"),
+        ("y", say("chromaticity y"), "y", "", 4, "colour", "cie_15"),
+        ("u_prime", say("chromaticity u′"), "u′", "", 4, "colour", "iso_cie_11664_5"),
+        ("v_prime", say("chromaticity v′"), "v′", "", 4, "colour", "iso_cie_11664_5"),
+        ("cct_k", say("correlated colour temperature"), "CCT", "K", 0, "colour", "ohno_2014"),
+        ("duv", say("distance from the Planckian locus"), "Duv", "", 4, "colour", "ohno_2014"),
+        ("sdcm", say("colour consistency"), "SDCM", say("steps"), 1, "colour", "iec_60081"),
+        ("peak_wavelength_nm", say("peak wavelength"), "λp", "nm", 0, "colour", "cie_eilv"),
+        ("centroid_wavelength_nm", say("centroid wavelength"), "λc", "nm", 1, "colour", "cie_eilv"),
+        ("dominant_wavelength_nm", say("dominant wavelength"), "λd", "nm", 1, "colour", "cie_15"),
+        ("excitation_purity", say("excitation purity"), "pe", "", 3, "colour", "cie_15"),
         # rendering
-        ("ra", "general colour rendering index", "Ra", "", 1, "rendering", "cie_13_3"),
+        ("ra", say("general colour rendering index"), "Ra", "", 1, "rendering", "cie_13_3"),
         *(
             (
                 f"r{i}",
-                f"special colour rendering index R{i}",
+                say("special colour rendering index R{number}", number=i),
                 f"R{i}",
                 "",
                 0,
@@ -103,12 +105,12 @@ def _catalogue() -> dict[str, Quantity]:
             )
             for i in range(1, 16)
         ),
-        ("rf", "colour fidelity index", "Rf", "", 1, "rendering", "ies_tm_30_18"),
-        ("rg", "colour gamut index", "Rg", "", 1, "rendering", "ies_tm_30_18"),
+        ("rf", say("colour fidelity index"), "Rf", "", 1, "rendering", "ies_tm_30_18"),
+        ("rg", say("colour gamut index"), "Rg", "", 1, "rendering", "ies_tm_30_18"),
         *(
             (
                 f"rcs_h{j}",
-                f"local chroma shift, hue bin {j}",
+                say("local chroma shift, hue bin {number}", number=j),
                 f"Rcs,h{j}",
                 "%",
                 1,
@@ -120,7 +122,7 @@ def _catalogue() -> dict[str, Quantity]:
         *(
             (
                 f"rhs_h{j}",
-                f"local hue shift, hue bin {j}",
+                say("local hue shift, hue bin {number}", number=j),
                 f"Rhs,h{j}",
                 "rad",
                 3,
@@ -132,7 +134,7 @@ def _catalogue() -> dict[str, Quantity]:
         *(
             (
                 f"rf_h{j}",
-                f"local colour fidelity, hue bin {j}",
+                say("local colour fidelity, hue bin {number}", number=j),
                 f"Rf,h{j}",
                 "",
                 0,
@@ -142,20 +144,20 @@ def _catalogue() -> dict[str, Quantity]:
             for j in range(1, 17)
         ),
         # radiometric
-        ("radiant_flux_w", "radiant flux", "Φe", "W", 3, "radiometric", "cie_s025"),
+        ("radiant_flux_w", say("radiant flux"), "Φe", "W", 3, "radiometric", "cie_s025"),
         (
             "ler_lm_per_w",
-            "luminous efficacy of radiation",
+            say("luminous efficacy of radiation"),
             "K",
             "lm/W",
             1,
             "radiometric",
             "cie_eilv",
         ),
-        ("radiant_efficiency", "radiant efficiency", "ηe", "", 3, "radiometric", "cie_eilv"),
+        ("radiant_efficiency", say("radiant efficiency"), "ηe", "", 3, "radiometric", "cie_eilv"),
         (
             "scotopic_photopic_ratio",
-            "scotopic to photopic ratio",
+            say("scotopic to photopic ratio"),
             "S/P",
             "",
             2,
@@ -164,7 +166,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "melanopic_der",
-            "melanopic daylight efficacy ratio",
+            say("melanopic daylight efficacy ratio"),
             "melDER",
             "",
             3,
@@ -173,7 +175,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "kb_v_w_per_lm",
-            "blue-light-hazard efficacy of luminous radiation",
+            say("blue-light-hazard efficacy of luminous radiation"),
             "K_B,v",
             "W/lm",
             6,
@@ -182,7 +184,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "blue_light_threshold_lx",
-            "illuminance at the blue-light risk group 1/2 border",
+            say("illuminance at the blue-light risk group 1/2 border"),
             "Ethr",
             "lx",
             0,
@@ -191,7 +193,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "emitter_peak_nm",
-            "blue emitter peak wavelength",
+            say("blue emitter peak wavelength"),
             "λem",
             "nm",
             1,
@@ -200,7 +202,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "emitter_photon_energy_ev",
-            "blue emitter photon energy",
+            say("blue emitter photon energy"),
             "Eem",
             "eV",
             3,
@@ -209,7 +211,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "emitter_fraction",
-            "share of radiant flux from the blue emitter",
+            say("share of radiant flux from the blue emitter"),
             "fem",
             "",
             3,
@@ -219,7 +221,7 @@ def _catalogue() -> dict[str, Quantity]:
         # modulation
         (
             "flicker_frequency_hz",
-            "frequency of the light modulation",
+            say("frequency of the light modulation"),
             "f",
             "Hz",
             1,
@@ -228,20 +230,28 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "percent_flicker",
-            "percent flicker (modulation depth)",
+            say("percent flicker (modulation depth)"),
             "PF",
             "%",
             1,
             "modulation",
             "cie_eilv",
         ),
-        ("flicker_index", "flicker index", "FI", "", 3, "modulation", "iec_60050_845"),
-        ("svm", "stroboscopic visibility measure", "SVM", "", 2, "modulation", "iec_tr_63158"),
-        ("pst_lm", "short-term flicker of light", "PstLM", "", 2, "modulation", "iec_tr_61547_1"),
+        ("flicker_index", say("flicker index"), "FI", "", 3, "modulation", "iec_60050_845"),
+        ("svm", say("stroboscopic visibility measure"), "SVM", "", 2, "modulation", "iec_tr_63158"),
+        (
+            "pst_lm",
+            say("short-term flicker of light"),
+            "PstLM",
+            "",
+            2,
+            "modulation",
+            "iec_tr_61547_1",
+        ),
         *(
             (
                 f"pam_{hz}hz_percent",
-                f"percent amplitude modulation below {hz} Hz",
+                say("percent amplitude modulation below {frequency} Hz", frequency=hz),
                 f"AM{hz}",
                 "%",
                 1,
@@ -252,7 +262,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "low_risk_modulation_percent",
-            "modulation at the low-risk line",
+            say("modulation at the low-risk line"),
             "Mlow",
             "%",
             1,
@@ -260,15 +270,15 @@ def _catalogue() -> dict[str, Quantity]:
             "ieee_1789",
         ),
         # electrical
-        ("voltage_v", "RMS voltage", "U", "V", 1, "electrical", "iec_60050_131"),
-        ("current_a", "RMS current", "I", "A", 4, "electrical", "iec_60050_131"),
-        ("frequency_hz", "mains frequency", "fm", "Hz", 2, "electrical", "iec_60050_131"),
-        ("power_w", "active power", "P", "W", 2, "electrical", "iec_60050_131"),
-        ("apparent_power_va", "apparent power", "S", "VA", 2, "electrical", "iec_60050_131"),
-        ("power_factor", "power factor", "λ", "", 3, "electrical", "iec_60050_131"),
+        ("voltage_v", say("RMS voltage"), "U", "V", 1, "electrical", "iec_60050_131"),
+        ("current_a", say("RMS current"), "I", "A", 4, "electrical", "iec_60050_131"),
+        ("frequency_hz", say("mains frequency"), "fm", "Hz", 2, "electrical", "iec_60050_131"),
+        ("power_w", say("active power"), "P", "W", 2, "electrical", "iec_60050_131"),
+        ("apparent_power_va", say("apparent power"), "S", "VA", 2, "electrical", "iec_60050_131"),
+        ("power_factor", say("power factor"), "λ", "", 3, "electrical", "iec_60050_131"),
         (
             "displacement_factor",
-            "displacement factor",
+            say("displacement factor"),
             "cos φ1",
             "",
             3,
@@ -277,7 +287,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "thd_current_percent",
-            "current THD, orders 2 to 40",
+            say("current THD, orders 2 to 40"),
             "THDi",
             "%",
             1,
@@ -286,17 +296,25 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "thd_current_all_percent",
-            "current THD, all orders",
+            say("current THD, all orders"),
             "THDi,all",
             "%",
             1,
             "electrical",
             "iec_60050_551",
         ),
-        ("crest_factor", "crest factor of the current", "CF", "", 2, "electrical", "iec_60050_103"),
+        (
+            "crest_factor",
+            say("crest factor of the current"),
+            "CF",
+            "",
+            2,
+            "electrical",
+            "iec_60050_103",
+        ),
         (
             "dc_current_percent",
-            "direct component of the current",
+            say("direct component of the current"),
             "I0",
             "%",
             2,
@@ -305,7 +323,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "current_start_deg",
-            "angle at which the current reaches 5 % of its peak",
+            say("angle at which the current reaches 5 % of its peak"),
             "φstart",
             "°",
             1,
@@ -314,7 +332,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "current_last_peak_deg",
-            "angle of the last peak of the current",
+            say("angle of the last peak of the current"),
             "φpeak",
             "°",
             1,
@@ -323,28 +341,36 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "current_end_deg",
-            "angle at which the current falls below 5 % of its peak",
+            say("angle at which the current falls below 5 % of its peak"),
             "φend",
             "°",
             1,
             "electrical",
             "iec_61000_3_2",
         ),
-        ("standby_power_w", "standby power", "Psb", "W", 2, "electrical", "iec_62301"),
+        ("standby_power_w", say("standby power"), "Psb", "W", 2, "electrical", "iec_62301"),
         (
             "networked_standby_power_w",
-            "networked standby power",
+            say("networked standby power"),
             "Pnet",
             "W",
             2,
             "electrical",
             "iec_62301",
         ),
-        ("ambient_temperature_c", "ambient temperature", "ta", "°C", 1, "electrical", "cie_s025"),
+        (
+            "ambient_temperature_c",
+            say("ambient temperature"),
+            "ta",
+            "°C",
+            1,
+            "electrical",
+            "cie_s025",
+        ),
         *(
             (
                 f"h{n}_percent",
-                f"harmonic {n} of the current",
+                say("harmonic {order} of the current", order=n),
                 f"h{n}",
                 "%",
                 1,
@@ -356,7 +382,7 @@ def _catalogue() -> dict[str, Quantity]:
         *(
             (
                 f"h{n}_ma_per_w",
-                f"harmonic {n} of the current per watt",
+                say("harmonic {order} of the current per watt", order=n),
                 f"h{n}",
                 "mA/W",
                 2,
@@ -366,10 +392,10 @@ def _catalogue() -> dict[str, Quantity]:
             for n in range(2, 41)
         ),
         # distribution
-        ("beam_angle_deg", "beam angle", "α", "°", 0, "distribution", "eu_2019_2020"),
+        ("beam_angle_deg", say("beam angle"), "α", "°", 0, "distribution", "eu_2019_2020"),
         (
             "peak_intensity_cd",
-            "peak luminous intensity",
+            say("peak luminous intensity"),
             "Imax",
             "cd",
             0,
@@ -378,7 +404,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "flux_90deg_lm",
-            "luminous flux in a 90° cone",
+            say("luminous flux in a 90° cone"),
             "Φ90",
             "lm",
             0,
@@ -387,7 +413,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "flux_120deg_lm",
-            "luminous flux in a 120° cone",
+            say("luminous flux in a 120° cone"),
             "Φ120",
             "lm",
             0,
@@ -396,7 +422,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "flux_120deg_fraction",
-            "share of the flux in a 120° cone",
+            say("share of the flux in a 120° cone"),
             "Φ120/Φ",
             "",
             3,
@@ -405,7 +431,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "luminance_cd_per_mm2",
-            "average luminance towards the peak intensity",
+            say("average luminance towards the peak intensity"),
             "L",
             "cd/mm²",
             1,
@@ -414,51 +440,67 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "light_emitting_area_mm2",
-            "projected light-emitting area",
+            say("projected light-emitting area"),
             "A",
             "mm²",
             1,
             "distribution",
             "eu_2019_2015",
         ),
-        ("length_mm", "overall length", "l", "mm", 0, "distribution", "us_10_cfr_430"),
+        ("length_mm", say("overall length"), "l", "mm", 0, "distribution", "us_10_cfr_430"),
         # ageing
         (
             "lumen_maintenance_factor",
-            "lumen maintenance factor",
+            say("lumen maintenance factor"),
             "XLMF",
             "",
             3,
             "ageing",
             "eu_2019_2020",
         ),
-        ("survival_factor", "survival factor", "SF", "", 2, "ageing", "eu_2019_2020"),
+        ("survival_factor", say("survival factor"), "SF", "", 2, "ageing", "eu_2019_2020"),
         (
             "l70_projected_h",
-            "projected time to 70 % of the initial flux",
+            say("projected time to 70 % of the initial flux"),
             "L70",
             "h",
             0,
             "ageing",
             "ies_tm_21",
         ),
-        ("l70b50_h", "declared lifetime", "L70B50", "h", 0, "ageing", "eu_2019_2020"),
-        ("chromaticity_shift", "chromaticity shift in u′v′", "Δu′v′", "", 4, "ageing", "ies_tm_21"),
+        ("l70b50_h", say("declared lifetime"), "L70B50", "h", 0, "ageing", "eu_2019_2020"),
+        (
+            "chromaticity_shift",
+            say("chromaticity shift in u′v′"),
+            "Δu′v′",
+            "",
+            4,
+            "ageing",
+            "ies_tm_21",
+        ),
         # energy
-        ("energy_efficiency_class", "energy efficiency class", "", "", 0, "energy", "eu_2019_2015"),
+        (
+            "energy_efficiency_class",
+            say("energy efficiency class"),
+            "",
+            "",
+            0,
+            "energy",
+            "eu_2019_2015",
+        ),
         (
             "total_mains_efficacy_lm_per_w",
-            "total mains efficacy",
+            say("total mains efficacy"),
             "ηTM",
             "lm/W",
             1,
             "energy",
             "eu_2019_2015",
         ),
-        ("max_power_w", "maximum allowed power", "Pon,max", "W", 2, "energy", "eu_2019_2020"),
+        ("max_power_w", say("maximum allowed power"), "Pon,max", "W", 2, "energy", "eu_2019_2020"),
         (
             "energy_kwh_per_1000h",
-            "energy use per 1000 h",
+            say("energy use per 1000 h"),
             "E",
             "kWh/1000 h",
             0,
@@ -467,7 +509,7 @@ def _catalogue() -> dict[str, Quantity]:
         ),
         (
             "equivalent_power_w",
-            "power of the lamp it claims to replace",
+            say("power of the lamp it claims to replace"),
             "Peq",
             "W",
             0,

@@ -49,7 +49,7 @@ def _spectrum(wavelength_nm: np.ndarray) -> np.ndarray:
     return 0.0157 * (blue + np.exp(-0.5 * ((wavelength_nm - 595) / 55) ** 2))
 
 
-@pytest.fixture
+@pytest.fixture(scope="session")
 def write_small_campaign() -> Callable[[Path], Path]:
     """Gives a function that writes the small campaign into a folder."""
 

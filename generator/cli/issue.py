@@ -3,7 +3,9 @@
 from __future__ import annotations
 
 import os
+from contextlib import suppress
 from datetime import datetime
+from functools import partial
 from pathlib import Path
 from typing import TYPE_CHECKING
 
@@ -59,6 +61,11 @@ PASSPHRASE = "LAMPASSAY_PASSPHRASE"  # noqa: S105 - the name of a variable, not 
     type=click.Path(dir_okay=False, exists=True, path_type=Path),
     help=f"PKCS#12 file to sign with; its passphrase is asked for, or taken from {PASSPHRASE}.",
 )
+@click.option(
+    "--watch",
+    is_flag=True,
+    help="Issue again whenever a file of the campaign changes, until Ctrl-C.",
+)
 def command(
     campaign: Path,
     target: Path | None,
@@ -70,6 +77,7 @@ def command(
     *,
     no_pdf: bool,
     public: bool,
+    watch: bool,
 ) -> None:
     """Check a campaign folder, compute its figures, judge them, and write the sheets.
 
@@ -78,9 +86,15 @@ def command(
     log_to_stderr()
     if salt and not public:
         raise click.UsageError("--salt belongs to --public")
+    if sign and watch:
+        raise click.UsageError(
+            "--sign does not go with --watch: nobody has seen what would be signed; "
+            "sign with a last `issue` when the data are settled"
+        )
     from generator import pipeline
 
-    issued = pipeline.issue(
+    once = partial(
+        pipeline.issue,
         campaign,
         target=target,
         on=on.date() if on else None,
@@ -91,7 +105,15 @@ def command(
         salt=salt,
         signer=_signer(sign) if sign else None,
     )
-    click.echo(str(issued.index))
+    if not watch:
+        click.echo(str(once().index))
+        return
+    from generator.pipeline.watching import campaign_watch, issue_on_change
+
+    folder = campaign_watch(campaign, target, archive, public=public)
+    with suppress(KeyboardInterrupt):
+        for issued in issue_on_change(folder, once):
+            click.echo(str(issued.index))
 
 
 def _signer(file: Path) -> Signer:

@@ -7,15 +7,16 @@ from decimal import Decimal
 
 from generator.comparison.cost.basis import LampBasis, cost_inputs, use_numbers
 from generator.comparison.cost.formula import energy_per_year_kwh
+from generator.language import say
 from generator.records.tender import Emissions, EnergyUse
 from generator.records.tender_settings import TenderUse
 
 __all__ = ["energy_use", "yearly_energy_kwh"]
 
 NOTES = (
-    "Rebound (longer use or more light once it is cheaper) is not counted.",
-    "Less heat from lamps may raise heating and lower cooling; that is not counted.",
-    "One emission factor is taken for the bid and for the baseline lamp.",
+    say("Rebound (longer use or more light once it is cheaper) is not counted."),
+    say("Less heat from lamps may raise heating and lower cooling; that is not counted."),
+    say("One emission factor is taken for the bid and for the baseline lamp."),
 )
 
 

@@ -6,19 +6,34 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 from decimal import ROUND_CEILING, Decimal
 
-from generator.comparison.cost.basis import LampBasis, lamps_for_light, use_numbers
+from generator.comparison.cost.basis import (
+    ACTIVE_POWER,
+    STANDBY_POWER,
+    LampBasis,
+    lamps_for_light,
+    use_numbers,
+)
 from generator.comparison.cost.formula import HOURS_OF_A_YEAR, maintained_share
 from generator.comparison.energy import yearly_energy_kwh
+from generator.language import say
 from generator.records.tender import RelampingPlan, RelampingYear, RoomPlan
 from generator.records.tender_settings import Room, TenderLot, TenderUse
 
 __all__ = ["Winner", "relamping_plan"]
 
 _NOTES = (
-    "Undiscounted; lamps are bought and fitted at the start of the year given for the room.",
-    "Energy is saved from that year on; the price of each year is that of the cost study.",
-    "Spend holds purchase, fitting and replacements at the end of life of the new lamps.",
-    "Replacements that the existing lamps would have needed are not counted as saved.",
+    say("Undiscounted; lamps are bought and fitted at the start of the year given for the room."),
+    say("Energy is saved from that year on; the price of each year is that of the cost study."),
+    say("Spend holds purchase, fitting and replacements at the end of life of the new lamps."),
+    say("Replacements that the existing lamps would have needed are not counted as saved."),
+)
+_PROVISIONAL_LOT = say(
+    "The first place of lot {lot} is provisional: no lamp of it may be ordered before the open "
+    "questions are answered."
+)
+_PROVISIONAL = say(
+    "The first place of the lot is provisional: no lamp of it may be ordered before the open "
+    "questions are answered."
 )
 
 
@@ -81,11 +96,7 @@ def relamping_plan(
 def _provisional(planned: Sequence[RoomPlan], winners: Mapping[str, Winner]) -> Iterator[str]:
     for lot in sorted({item.lot for item in planned if item.new_lamp}):
         if winners[lot].provisional:
-            name = f"lot {lot}" if lot else "the lot"
-            yield (
-                f"The first place of {name} is provisional: no lamp of it may be ordered before "
-                "the open questions are answered."
-            )
+            yield (_PROVISIONAL_LOT.format(lot=lot) if lot else _PROVISIONAL)
 
 
 def _room(room: Room, winner: Winner, before: LampBasis, use: TenderUse) -> RoomPlan:
@@ -101,12 +112,12 @@ def _room(room: Room, winner: Winner, before: LampBasis, use: TenderUse) -> Room
     )
     after = winner.basis
     if plan.existing_kwh is None:
-        return replace(plan, reason="the power of the existing lamp is not known")
+        return replace(plan, reason=say("the power of the existing lamp is not known"))
     if after is None or after.numbers is None:
-        return replace(plan, reason=winner.reason or "the costs of the winner are not known")
+        return replace(plan, reason=winner.reason or say("the costs of the winner are not known"))
     quantity = _quantity(room, winner.lot, after, use)
     if quantity is None:
-        return replace(plan, reason="the luminous flux of the winner is not known")
+        return replace(plan, reason=say("the luminous flux of the winner is not known"))
     return replace(
         plan,
         new_lamp=after.lamp_id,
@@ -121,11 +132,11 @@ def _kwh(basis: LampBasis, use: TenderUse, lamps: int) -> Decimal | None:
     if basis.numbers is not None:
         return sum(yearly_energy_kwh(basis, use, lamps), Decimal(0))
     known = {item.name: item.value for item in basis.assumptions}
-    if "active power" not in known:
+    if ACTIVE_POWER not in known:
         return None
     hours = use.hours_per_year or Decimal(0)
     off = max(HOURS_OF_A_YEAR - hours, Decimal(0)) * use.standby_share_percent / 100
-    watt_hours = known["active power"] * hours + known.get("standby power", Decimal(0)) * off
+    watt_hours = known[ACTIVE_POWER] * hours + known.get(STANDBY_POWER, Decimal(0)) * off
     return lamps * watt_hours / 1000
 
 

@@ -37,6 +37,7 @@ from generator.comparison.energy import energy_use
 from generator.comparison.relamping import Winner, relamping_plan
 from generator.comparison.tender_checks import tender_problems
 from generator.errors import DataProblems
+from generator.language import joined, say
 from generator.quantities import QUANTITIES
 from generator.records.figure import Figure, FigureSet, Grade
 from generator.records.finding import Finding
@@ -57,7 +58,7 @@ from generator.records.verdict import Verdict
 
 __all__ = ["compare_tender"]
 
-_BASELINE_NOTE = (
+_BASELINE_NOTE = say(
     "The lamp in use today is costed like a bid, as if bought and fitted anew at the start; "
     "the saving and the break-even year hold that price too."
 )
@@ -202,8 +203,9 @@ def _lot(name: str, lot: TenderLot, inputs: _Inputs) -> LotResult:
         if baseline is not None:
             notes = (*notes, _BASELINE_NOTE)
         else:
-            missing = ", ".join(before.missing)
-            notes = (*notes, f"No cost of the baseline lamp: {missing} not known.")
+            missing = joined(", ", before.missing)
+            without = say("No cost of the baseline lamp: {missing} not known.", missing=missing)
+            notes = (*notes, without)
     bases = {
         bid.lamp_id: lamp_basis(inputs.lamps[bid.lamp_id], inputs.figures, inputs.settings.use)
         for bid in bids
@@ -233,8 +235,10 @@ def _quantity(lot: TenderLot, bids: Sequence[Bid], inputs: _Inputs) -> tuple[int
     offered = {inputs.lamps[bid.lamp_id].offer.quantity for bid in bids}
     (common, *others) = offered or {None}
     if not others and common:
-        return common, ("The lot states no quantity; all bids offer the same one, which is taken.",)
-    return 1, ("The lot states no quantity; costs are for one lamp.",)
+        return common, (
+            say("The lot states no quantity; all bids offer the same one, which is taken."),
+        )
+    return 1, (say("The lot states no quantity; costs are for one lamp."),)
 
 
 def _bid(
@@ -275,15 +279,15 @@ def _bid(
         energy=energy_use(basis, use, lamps, inputs.baseline_of(lot), quantity),
         break_even=None if cost is None or baseline is None else break_even(cost, baseline),
         sensitivity=tornado(basis, use, lamps),
-        withheld=() if basis.flux_lm else ("cost per light: luminous flux is not known",),
+        withheld=() if basis.flux_lm else (say("cost per light: luminous flux is not known"),),
     )
 
 
 def _withheld(basis: LampBasis, lamps: int | None, gaps: Sequence[str]) -> tuple[str, ...]:
-    reasons = [f"costs: {key} is not given" for key in gaps]
-    reasons += [f"costs: {name} is not known" for name in basis.missing]
+    reasons: list[str] = [say("costs: {key} is not given", key=key) for key in gaps]
+    reasons += [say("costs: {input} is not known", input=name) for name in basis.missing]
     if lamps is None and not reasons:
-        reasons.append("costs: luminous flux is not known, the lot is compared at equal light")
+        reasons.append(say("costs: luminous flux is not known, the lot is compared at equal light"))
     return tuple(reasons)
 
 
@@ -394,7 +398,9 @@ def _plan(
 def _winner(lot: TenderLot, result: LotResult, inputs: _Inputs) -> Winner:
     best = result.award.winners if result.award is not None else ()
     if result.award is None or len(best) != 1:
-        return Winner(lot, None, "no bid won the lot" if not best else "first place is shared")
+        return Winner(
+            lot, None, say("no bid won the lot") if not best else say("first place is shared")
+        )
     basis = lamp_basis(inputs.lamps[best[0]], inputs.figures, inputs.settings.use)
     return Winner(lot, basis, provisional=result.award.scores[0].provisional)
 
@@ -407,16 +413,16 @@ def _existing_titles(inputs: _Inputs) -> dict[str, str]:
     for name in (*sorted(settings.baseline_lamps), *(room.existing_lamp for room in settings.room)):
         lamp = inputs.lamps.get(name)
         if lamp is not None:
-            titles[name] = "The lamp in use today" if hidden else lamp.model or name
+            titles[name] = say("The lamp in use today") if hidden else lamp.model or name
     return titles
 
 
 def _notes(inputs: _Inputs) -> tuple[str, ...]:
     use, notes = inputs.settings.use, []
     if inputs.gaps:
-        notes.append(f"No costs: {', '.join(inputs.gaps)} not given.")
+        notes.append(say("No costs: {keys} not given.", keys=", ".join(inputs.gaps)))
     if use.carbon_price_per_t is None:
-        notes.append("Emissions are not priced, since the tender does not say so.")
+        notes.append(say("Emissions are not priced, since the tender does not say so."))
     if inputs.settings.room and inputs.gaps:
-        notes.append("No relamping plan without costs.")
+        notes.append(say("No relamping plan without costs."))
     return tuple(notes)

@@ -7,6 +7,7 @@ from dataclasses import dataclass
 from fractions import Fraction
 
 from generator.conformity.evidence import Evidence, LampRecord
+from generator.language import joined
 from generator.quantities import QUANTITIES
 from generator.records.clause import Condition
 from generator.records.clause_words import subject_text
@@ -77,7 +78,7 @@ def applicability(conditions: Iterable[Condition], record: LampRecord) -> Applic
     Applicability
         A condition that fails decides, also where another cannot be told.
     """
-    unknown = []
+    unknown: list[str] = []
     for condition in conditions:
         value = property_of(record, condition.subject)
         if value is None:
@@ -85,7 +86,7 @@ def applicability(conditions: Iterable[Condition], record: LampRecord) -> Applic
         elif not _holds(condition, value):
             return Applicability(False, condition.text)
     if unknown:
-        return Applicability(None, ", ".join(dict.fromkeys(unknown)))
+        return Applicability(None, joined(", ", dict.fromkeys(unknown)))
     return Applicability(True)
 
 

@@ -12,6 +12,8 @@ from dataclasses import dataclass
 from fractions import Fraction
 
 from generator.conformity.exact_number import number_text
+from generator.language import say
+from generator.records.clause_words import with_unit
 from generator.records.settings import Decision
 from generator.records.verdict import VerdictWord
 
@@ -137,12 +139,14 @@ def rule_text(decision: Decision) -> str:
     """The rule in words, as it stands beside a verdict."""
     if decision.rule == "guarded acceptance":
         factor = number_text(Fraction(decision.guard_band_factor))
-        band = "U" if decision.guard_band_factor == 1 else f"{factor} U"
-        return f"guarded acceptance, guard band w = {band} (ILAC-G8, 4.2.3)"
+        band = "U" if decision.guard_band_factor == 1 else with_unit(factor, "U")
+        return say("guarded acceptance, guard band w = {band} (ILAC-G8, 4.2.3)", band=band)
     if decision.rule == "conformance probability":
         level = number_text(Fraction(decision.probability) * 100)
-        return f"conformance probability of at least {level} % (JCGM 106, clause 7)"
-    return "simple acceptance (ILAC-G8, 4.2.1)"
+        return say(
+            "conformance probability of at least {level} % (JCGM 106, clause 7)", level=level
+        )
+    return say("simple acceptance (ILAC-G8, 4.2.1)")
 
 
 def decide(
@@ -173,10 +177,10 @@ def decide(
         known = conformance_probability(value, expanded_uncertainty, limits)
     if decision.rule == "simple acceptance":
         word = VerdictWord.PASS if limits.meets(value) else VerdictWord.FAIL
-        return Outcome(word, margin, known, "The value itself is compared.")
+        return Outcome(word, margin, known, say("The value itself is compared."))
     if expanded_uncertainty is None or known is None:
-        step = "The uncertainty is not known, so the decision rule cannot be applied."
-        return Outcome(VerdictWord.INCONCLUSIVE, margin, None, step)
+        unknown = say("The uncertainty is not known, so the decision rule cannot be applied.")
+        return Outcome(VerdictWord.INCONCLUSIVE, margin, None, unknown)
     if decision.rule == "guarded acceptance":
         word, step = _guarded(value, expanded_uncertainty, limits, decision)
     else:
@@ -188,7 +192,7 @@ def _guarded(
     value: Fraction, expanded_uncertainty: Fraction, limits: Limits, decision: Decision
 ) -> tuple[VerdictWord, str]:
     band = Fraction(decision.guard_band_factor) * expanded_uncertainty
-    shown = f"Guard band w = {number_text(Fraction(f'{float(band):.4g}'))}"
+    shown = number_text(Fraction(f"{float(band):.4g}"))
     accepted = acceptance_interval(limits, band)
     crossed = (
         accepted.lower is not None
@@ -196,21 +200,39 @@ def _guarded(
         and accepted.lower > accepted.upper
     )
     if not crossed and accepted.meets(value):
-        return VerdictWord.PASS, f"{shown}: the value lies within the guarded limits."
+        step = say("Guard band w = {band}: the value lies within the guarded limits.", band=shown)
+        return VerdictWord.PASS, step
     if not acceptance_interval(limits, -band).meets(value):
-        return VerdictWord.FAIL, f"{shown}: the value lies beyond the limit by more than w."
-    side = "conditional pass" if limits.meets(value) else "conditional fail"
-    return (
-        VerdictWord.INCONCLUSIVE,
-        f"{shown}: the value lies within w of the limit ({side} in ILAC-G8, 4.2.3).",
+        step = say(
+            "Guard band w = {band}: the value lies beyond the limit by more than w.", band=shown
+        )
+        return VerdictWord.FAIL, step
+    meets = limits.meets(value)
+    return VerdictWord.INCONCLUSIVE, (_CONDITIONAL_PASS if meets else _CONDITIONAL_FAIL).format(
+        band=shown
     )
+
+
+_CONDITIONAL_PASS = say(
+    "Guard band w = {band}: the value lies within w of the limit (conditional pass in ILAC-G8, "
+    "4.2.3)."
+)
+_CONDITIONAL_FAIL = say(
+    "Guard band w = {band}: the value lies within w of the limit (conditional fail in ILAC-G8, "
+    "4.2.3)."
+)
 
 
 def _by_probability(probability: float, decision: Decision) -> tuple[VerdictWord, str]:
     level = float(decision.probability)
-    enough = f"as probable as the level of {level:g} asks"
     if probability >= level:
-        return VerdictWord.PASS, f"Conformity is {enough}."
+        step = say("Conformity is as probable as the level of {level:g} asks.", level=level)
+        return VerdictWord.PASS, step
     if 1.0 - probability >= level:
-        return VerdictWord.FAIL, f"Nonconformity is {enough}."
-    return VerdictWord.INCONCLUSIVE, f"Neither conformity nor nonconformity is {enough}."
+        step = say("Nonconformity is as probable as the level of {level:g} asks.", level=level)
+        return VerdictWord.FAIL, step
+    step = say(
+        "Neither conformity nor nonconformity is as probable as the level of {level:g} asks.",
+        level=level,
+    )
+    return VerdictWord.INCONCLUSIVE, step

@@ -12,6 +12,7 @@ from generator.conformity.decision_rule import Limits
 from generator.conformity.evidence import Evidence
 from generator.conformity.exact_number import decimal_of, number_text
 from generator.conformity.limits import Limit, Question, no_limit
+from generator.language import say
 from generator.records.clause import DatedValue
 from generator.records.verdict import Basis
 
@@ -19,6 +20,14 @@ __all__ = ["curve_efficacy", "efficacy_curve"]
 
 _LENGTH_BOUND = "length_below_in"
 _LONG_CURVE = "long_curve"
+_SHORTER = say(
+    "The lamp counts as shorter than {bound:f} in: its length is {length} mm, and {bound:f} in are "
+    "{bound_mm} mm."
+)
+_LONGER = say(
+    "The lamp counts as {bound:f} in or longer: its length is {length} mm, and {bound:f} in are "
+    "{bound_mm} mm."
+)
 
 
 def curve_efficacy(flux_lm: Fraction, table: DatedValue) -> Fraction:
@@ -67,14 +76,19 @@ def efficacy_curve(question: Question) -> Limit:
     """
     flux = question.evidence.reading("useful_luminous_flux_lm")
     if flux.value is None:
-        return no_limit(f"the limit depends on the luminous flux, which is {flux.reason}")
+        reason = say(
+            "the limit depends on the luminous flux, which is {reason}", reason=flux.reason
+        )
+        return no_limit(reason)
     curve, said = _curve_by_length(question)
     if curve is None:
         return no_limit(said)
     number = curve_efficacy(flux.value, curve)
-    step = (
-        f"Limit at {number_text(flux.value)} lm: {number_text(number)} lm/W "
-        f"({question.clause.source.text})."
+    step = say(
+        "Limit at {flux} lm: {limit} lm/W ({source}).",
+        flux=number_text(flux.value),
+        limit=number_text(number),
+        source=question.clause.source.text,
     )
     notes = (said,) if said else ()
     return Limit(Limits(lower=number), shown=decimal_of(number), steps=(step,), notes=notes)
@@ -88,12 +102,15 @@ def _curve_by_length(question: Question) -> tuple[DatedValue | None, str]:
     bound = curve.number(_LENGTH_BOUND)
     length = Evidence(question.evidence.record, Basis.DECLARED).reading("length_mm").value
     if length is None:
-        return curve, f"The length is not given; the lamp is taken as shorter than {bound} in."
+        return curve, say(
+            "The length is not given; the lamp is taken as shorter than {bound:f} in.", bound=bound
+        )
     bound_mm = Fraction(bound) * Fraction(curve.number("mm_per_in"))
-    compared = f"{number_text(length)} mm, and {bound} in are {number_text(bound_mm)} mm"
+    lengths = {"length": number_text(length), "bound": bound, "bound_mm": number_text(bound_mm)}
     if length < bound_mm:
-        return curve, f"The lamp counts as shorter than {bound} in: its length is {compared}."
+        return curve, _SHORTER.format(**lengths)
     if _LONG_CURVE in question.clause.constants:
-        said = f"The lamp counts as {bound} in or longer: its length is {compared}."
-        return question.constants(_LONG_CURVE), said
-    return None, f"there is no curve for such a lamp of {bound} in or more in the law book"
+        return question.constants(_LONG_CURVE), _LONGER.format(**lengths)
+    return None, say(
+        "there is no curve for such a lamp of {bound:f} in or more in the law book", bound=bound
+    )

@@ -13,7 +13,9 @@ from generator.conformity.evidence import Evidence, Reading, missing
 from generator.conformity.exact_number import number_text
 from generator.conformity.limits import Limit, Question, no_limit
 from generator.errors import LawBookError
+from generator.language import say, say_as
 from generator.records.clause import DatedValue, LawBook
+from generator.records.clause_words import all_of
 from generator.records.lamp import Lamp
 from generator.records.verdict import Basis
 
@@ -25,11 +27,25 @@ __all__ = [
     "energy_class_of",
     "energy_class_reading",
     "mains_factor",
+    "not_stated",
     "total_mains_efficacy",
 ]
 
 ENERGY_CLASS_CLAUSE = "eu-2019-2015-energy-efficiency-class"
 """The clause that names the leaves of factor and class bounds."""
+
+NOT_IN_FORCE = say("the energy label rules are not in force on {day}")
+NOT_STATED = say("not stated for the lamp: {properties}")
+
+_PROPERTIES = {
+    "directional": say_as("property", "directional"),
+    "mains": say_as("property", "mains"),
+}
+
+
+def not_stated(lamp: Lamp) -> str:
+    """Name what both formulas need to know of a lamp and what is not stated; may be empty."""
+    return all_of(said for name, said in _PROPERTIES.items() if getattr(lamp, name) is None)
 
 
 def class_constants(law: LawBook, day: date) -> tuple[DatedValue, DatedValue] | None:
@@ -63,9 +79,9 @@ def mains_factor(lamp: Lamp, table: DatedValue) -> Fraction | str:
     -----
     Source: eu_2019_2015, Annex II Table 2.
     """
-    unknown = [name for name in ("directional", "mains") if getattr(lamp, name) is None]
+    unknown = not_stated(lamp)
     if unknown:
-        return " and ".join(unknown)
+        return unknown
     light = "directional" if lamp.directional else "non_directional"
     supply = "mains" if lamp.mains else "non_mains"
     return Fraction(table.number(f"{light}_{supply}"))
@@ -94,16 +110,16 @@ def total_mains_efficacy(evidence: Evidence, law: LawBook, day: date) -> Reading
     """
     constants = class_constants(law, day)
     if constants is None:
-        return missing(f"the energy label rules are not in force on {day}")
+        return missing(NOT_IN_FORCE.format(day=day))
     factor = mains_factor(evidence.lamp, constants[0])
     if isinstance(factor, str):
-        return missing(f"not stated for the lamp: {factor}")
-    with_factor = f"Factor of the total mains efficacy: {number_text(factor)}."
+        return missing(NOT_STATED.format(properties=factor))
+    with_factor = say("Factor of the total mains efficacy: {factor}.", factor=number_text(factor))
     if evidence.basis is Basis.DETERMINED:
         found = evidence.quotient_of_units("useful_luminous_flux_lm", "power_w", factor)
         if found.value is None:
             return found
-        result = f"Total mains efficacy: {number_text(found.value)} lm/W."
+        result = say("Total mains efficacy: {efficacy} lm/W.", efficacy=number_text(found.value))
         return Reading(
             found.value,
             found.expanded_uncertainty,
@@ -113,14 +129,16 @@ def total_mains_efficacy(evidence: Evidence, law: LawBook, day: date) -> Reading
         )
     flux, power = evidence.reading("useful_luminous_flux_lm"), evidence.reading("power_w")
     if flux.value is None or not power.value:
-        names = [
-            name for name, item in (("luminous flux", flux), ("power", power)) if not item.value
-        ]
-        return missing("not declared: " + " and ".join(names))
+        named = ((say("luminous flux"), flux), (say("power"), power))
+        names = all_of(name for name, item in named if not item.value)
+        return missing(say("not declared: {quantities}", quantities=names))
     value = flux.value / power.value * factor
-    formula = (
-        f"Total mains efficacy: {number_text(flux.value)} lm / {number_text(power.value)} W × "
-        f"{number_text(factor)} = {number_text(value)} lm/W."
+    formula = say(
+        "Total mains efficacy: {flux} lm / {power} W × {factor} = {efficacy} lm/W.",
+        flux=number_text(flux.value),
+        power=number_text(power.value),
+        factor=number_text(factor),
+        efficacy=number_text(value),
     )
     return Reading(value, steps=(with_factor, formula))
 
@@ -164,7 +182,7 @@ def energy_class_reading(evidence: Evidence, law: LawBook, day: date) -> Reading
         efficacy.units_count,
         efficacy.grade,
         shown=letter,
-        steps=(*efficacy.steps, f"That is class {letter}."),
+        steps=(*efficacy.steps, say("That is class {letter}.", letter=letter)),
     )
 
 
@@ -189,17 +207,27 @@ def class_limit(letter: str, comparison: str, law: LawBook, day: date, source: s
     """
     constants = class_constants(law, day)
     if constants is None:
-        return no_limit(f"the energy label rules are not in force on {day}")
+        return no_limit(NOT_IN_FORCE.format(day=day))
     bounds = constants[1]
     if letter not in bounds.entries:
-        return no_limit(f"{letter} is not a class; expected one of {', '.join(bounds.entries)}")
+        letters = ", ".join(bounds.entries)
+        return no_limit(
+            say(
+                "{letter} is not a class; expected one of {letters}", letter=letter, letters=letters
+            )
+        )
     begin = Fraction(bounds.number(letter))
     if comparison == "at least":
-        step = f"Limit: class {letter} or better, which begins at {number_text(begin)} lm/W"
-        return Limit(Limits(lower=begin), shown=letter, steps=(f"{step} ({source}).",))
+        step = say(
+            "Limit: class {letter} or better, which begins at {efficacy} lm/W ({source}).",
+            letter=letter,
+            efficacy=number_text(begin),
+            source=source,
+        )
+        return Limit(Limits(lower=begin), shown=letter, steps=(step,))
     better = [Fraction(bounds.number(name)) for name in bounds.entries]
     above = [number for number in better if number > begin]
-    step = f"Limit: class {letter} or a lower one ({source})."
+    step = say("Limit: class {letter} or a lower one ({source}).", letter=letter, source=source)
     if not above:
         return Limit(Limits(lower=Fraction(0)), shown=letter, steps=(step,))
     return Limit(Limits(upper=min(above), strict=True), shown=letter, steps=(step,))
@@ -225,11 +253,13 @@ def declared_class(question: Question) -> Limit:
     """
     letter = question.evidence.lamp.declared_energy_class
     if letter is None:
-        return no_limit("no energy efficiency class is declared")
+        return no_limit(say("no energy efficiency class is declared"))
     source = question.clause.source.text
     limit = class_limit(letter, "at least", question.law, question.day, source)
     reading = energy_class_reading(question.evidence, question.law, question.day)
     if reading.shown and reading.shown < letter:
-        note = f"The figures give class {reading.shown}, a better one than is declared."
+        note = say(
+            "The figures give class {letter}, a better one than is declared.", letter=reading.shown
+        )
         return Limit(limit.limits, shown=limit.shown, steps=limit.steps, notes=(note,))
     return limit

@@ -12,6 +12,7 @@ from generator.conformity.decision_rule import Limits
 from generator.conformity.evidence import Evidence
 from generator.conformity.exact_number import decimal_of, number_text, rounded
 from generator.conformity.limits import Limit, Question, no_limit
+from generator.language import say
 from generator.records.clause import DatedValue
 from generator.records.verdict import Basis
 
@@ -69,15 +70,20 @@ def equivalent_power(question: Question) -> Limit:
     """
     flux = question.evidence.reading("useful_luminous_flux_lm")
     if flux.value is None:
-        return no_limit(f"the claim depends on the luminous flux, which is {flux.reason}")
+        return no_limit(
+            say("the claim depends on the luminous flux, which is {reason}", reason=flux.reason)
+        )
     table = question.constants("table")
     power = equivalent_power_of(flux.value, table)
     if power is None:
-        return no_limit(f"the act has no rule for {number_text(flux.value)} lm")
+        return no_limit(say("the act has no rule for {flux} lm", flux=number_text(flux.value)))
     whole = rounded(power, Fraction(table.number("step_w")))
-    step = (
-        f"{number_text(flux.value)} lm stand for {number_text(power)} W, rounded "
-        f"{number_text(whole)} W ({question.clause.source.text})."
+    step = say(
+        "{flux} lm stand for {power} W, rounded {whole} W ({source}).",
+        flux=number_text(flux.value),
+        power=number_text(power),
+        whole=number_text(whole),
+        source=question.clause.source.text,
     )
     return Limit(Limits(upper=whole), shown=decimal_of(whole), steps=(step,))
 
@@ -136,22 +142,31 @@ def reflector_flux(question: Question) -> Limit:
     declared = Evidence(question.evidence.record, Basis.DECLARED)
     claim = declared.reading("equivalent_power_w").value
     if claim is None:
-        return no_limit("no lamp is claimed to be replaced")
+        return no_limit(say("no lamp is claimed to be replaced"))
     kind = declared.lamp.reflector
     table = question.constants("flux")
     if kind not in table.entries:
-        return no_limit("the claim depends on the type of reflector, which is not stated")
+        return no_limit(say("the claim depends on the type of reflector, which is not stated"))
     row = next((row for row in table.rows(kind) if Fraction(row[0]) == claim), None)
     if row is None:
-        return no_limit(f"the act has no reference flux for {kind} at {number_text(claim)} W")
+        return no_limit(
+            say(
+                "the act has no reference flux for {kind} at {power} W",
+                kind=kind,
+                power=number_text(claim),
+            )
+        )
     maintenance = declared.reading("lumen_maintenance_factor").value
     angle = declared.reading("beam_angle_deg").value
     if maintenance is None or angle is None:
-        return no_limit("the claim depends on lumen maintenance and beam angle; not declared")
+        return no_limit(say("the claim depends on lumen maintenance and beam angle; not declared"))
     reference, factors = Fraction(row[1]), question.constants("factors")
     needed = reflector_flux_needed(reference, maintenance, angle, factors)
-    step = (
-        f"{kind} at {number_text(claim)} W asks for {number_text(needed)} lm in 90° "
-        f"({question.clause.source.text})."
+    step = say(
+        "{kind} at {power} W asks for {flux} lm in 90° ({source}).",
+        kind=kind,
+        power=number_text(claim),
+        flux=number_text(needed),
+        source=question.clause.source.text,
     )
     return Limit(Limits(lower=needed), shown=decimal_of(needed), steps=(step,))

@@ -14,8 +14,10 @@ from generator.conformity.exact_number import (
     square_root,
     uncertainty_text,
 )
+from generator.language import joined, say, say_counted
 from generator.quantities import QUANTITIES
-from generator.records.figure import Figure, FigureSet, Grade
+from generator.records.clause_words import number_of, with_unit
+from generator.records.figure import GRADE_WORDS, Figure, FigureSet, Grade
 from generator.records.lamp import Lamp
 from generator.records.verdict import Basis
 
@@ -24,6 +26,11 @@ __all__ = ["Evidence", "LampRecord", "Reading", "missing", "relative_root_sum"]
 
 COUNTED = frozenset({"survival_factor"})
 """Quantities that are counted, so that no uncertainty of measurement stands in the way."""
+
+_LOWEST = say("The lowest unit of {count} is {unit}.")
+_HIGHEST = say("The highest unit of {count} is {unit}.")
+_UNCERTAIN = say("Determined value {value} ({grade}, {units}, U = {uncertainty}).")
+_NOT_CERTAIN = say("Determined value {value} ({grade}, {units}, uncertainty not known).")
 
 
 @dataclass(frozen=True, slots=True)
@@ -148,23 +155,24 @@ class Evidence:
         value = figure.number if figure is not None else self.lamp.declared.get(name)
         if value is not None:
             unit = QUANTITIES[name].unit if name in QUANTITIES else ""
-            return Reading(
-                Fraction(value), steps=(f"Declared value {value} {unit}".rstrip() + ".",)
-            )
+            stated = with_unit(number_of(value), unit)
+            return Reading(Fraction(value), steps=(say("Declared value {value}.", value=stated),))
         if name == "efficacy_lm_per_w":
             return self._declared_efficacy()
-        return missing("not declared")
+        return missing(say("not declared"))
 
     def _declared_efficacy(self) -> Reading:
         if self.lamp.directional:
             return missing(
-                "the declared flux of a directional lamp is its useful flux, not all of it"
+                say("the declared flux of a directional lamp is its useful flux, not all of it")
             )
         flux, power = self.reading("luminous_flux_lm"), self.reading("power_w")
         if flux.value is None or not power.value:
-            return missing("luminous flux and power are not both declared")
+            return missing(say("luminous flux and power are not both declared"))
         value = flux.value / power.value
-        step = f"Declared flux over declared power: {decimal_of(value)} lm/W."
+        step = say(
+            "Declared flux over declared power: {efficacy:f} lm/W.", efficacy=decimal_of(value)
+        )
         return Reading(value, steps=(*flux.steps, *power.steps, step))
 
     def _determined(self, name: str) -> Reading:
@@ -173,7 +181,9 @@ class Evidence:
             return _reading_of(figure)
         if name == "efficacy_lm_per_w":
             return self.quotient_of_units("luminous_flux_lm", "power_w", Fraction(1))
-        return missing(figure.reason if figure is not None and figure.reason else "not measured")
+        return missing(
+            figure.reason if figure is not None and figure.reason else say("not measured")
+        )
 
     def unit_readings(self, quantity: str) -> dict[str, Reading]:
         """The measured values of the units that have one."""
@@ -211,7 +221,11 @@ class Evidence:
             return missing(self._which_is_missing(upper, lower))
         inputs = self._determined(self.catalogue_name(upper)), self._determined(lower)
         used = [reading for unit in both for reading in (above[unit], below[unit])]
-        step = f"Mean of the quotients of {len(both)} unit{'s' if len(both) > 1 else ''}."
+        step = say_counted(
+            "Mean of the quotients of {count} unit.",
+            "Mean of the quotients of {count} units.",
+            len(both),
+        )
         return Reading(
             value,
             relative_root_sum(value, *inputs),
@@ -223,8 +237,9 @@ class Evidence:
     def _which_is_missing(self, *quantities: str) -> str:
         names = [self.catalogue_name(name) for name in quantities if not self.unit_readings(name)]
         if not names:
-            return "no unit has both values"
-        return "not measured: " + ", ".join(QUANTITIES[name].label for name in names)
+            return say("no unit has both values")
+        labels = joined(", ", (QUANTITIES[name].label for name in names))
+        return say("not measured: {quantities}", quantities=labels)
 
     def _extreme(self, name: str, statistic: str) -> Reading:
         units = self.unit_readings(name)
@@ -237,15 +252,16 @@ class Evidence:
                 if unit in power and power[unit].value
             }
         if not units:
-            return missing("not measured")
-        pick = min if statistic == "lowest unit" else max
+            return missing(say("not measured"))
+        lowest = statistic == "lowest unit"
+        pick = min if lowest else max
         unit_id, chosen = pick(units.items(), key=lambda pair: pair[1].value or Fraction(0))
         return Reading(
             chosen.value,
             chosen.expanded_uncertainty,
             len(units),
             chosen.grade,
-            steps=(f"The {statistic} of {len(units)} is {unit_id}.",),
+            steps=((_LOWEST if lowest else _HIGHEST).format(count=len(units), unit=unit_id),),
         )
 
 
@@ -262,30 +278,39 @@ def worst_grade(grades: Iterable[Grade]) -> Grade:
 
 def _count_of(figure: Figure, number: Decimal) -> Reading:
     """A share of units that were counted: there is nothing uncertain about it."""
-    step = f"Determined value {number_text(Fraction(number))} ({figure.grade}, a count of units)."
+    step = say(
+        "Determined value {value} ({grade}, a count of units).",
+        value=number_text(Fraction(number)),
+        grade=GRADE_WORDS[figure.grade],
+    )
     return Reading(Fraction(number), Fraction(0), figure.units_count, figure.grade, steps=(step,))
 
 
 def _reading_of(figure: Figure) -> Reading:
     number = figure.number
     if number is None:
-        return missing(figure.reason or "not measured")
+        return missing(figure.reason or say("not measured"))
     uncertainty = figure.expanded_uncertainty
     if figure.quantity in COUNTED:
         return _count_of(figure, number)
     count = figure.units_count
-    units = f"mean of {count} units" if count > 1 else "one unit"
-    unit = QUANTITIES[figure.quantity].unit
-    known = ", uncertainty not known"
-    if uncertainty is not None:
-        known = f", U = {uncertainty_text(Fraction(uncertainty))} {unit}".rstrip()
     return Reading(
         Fraction(number),
         None if uncertainty is None else Fraction(uncertainty),
         count,
         figure.grade,
-        steps=(
-            f"Determined value {number_text(Fraction(number))} {unit}".rstrip()
-            + f" ({figure.grade}, {units}{known}).",
-        ),
+        steps=(_determined_step(figure, number),),
     )
+
+
+def _determined_step(figure: Figure, number: Decimal) -> str:
+    unit = QUANTITIES[figure.quantity].unit
+    said = {
+        "value": with_unit(number_text(Fraction(number)), unit),
+        "grade": GRADE_WORDS[figure.grade],
+        "units": say_counted("one unit", "mean of {count} units", max(1, figure.units_count)),
+    }
+    if figure.expanded_uncertainty is None:
+        return _NOT_CERTAIN.format(**said)
+    uncertainty = with_unit(uncertainty_text(Fraction(figure.expanded_uncertainty)), unit)
+    return _UNCERTAIN.format(**said, uncertainty=uncertainty)

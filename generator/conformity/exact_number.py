@@ -6,6 +6,8 @@ from collections.abc import Iterable
 from decimal import ROUND_CEILING, ROUND_HALF_EVEN, Decimal, localcontext
 from fractions import Fraction
 
+from generator.language import numeral
+
 __all__ = ["decimal_of", "mean_of", "number_text", "rounded", "square_root", "uncertainty_text"]
 
 _DIGITS = 12
@@ -55,21 +57,21 @@ def number_text(number: Fraction) -> str:
     Returns
     -------
     str
-        With a minus sign where it is negative, without an exponent.
+        A numeral, with a minus sign where it is negative, without an exponent.
     """
     number_shown = decimal_of(number)
     if len(number_shown.as_tuple().digits) > _LONG_FOR_PEOPLE:
         with localcontext() as context:
             context.prec = _DIGITS_FOR_PEOPLE
             number_shown = (+number_shown).normalize()
-    return format(number_shown, "f").replace("-", "−")
+    return numeral(format(number_shown, "f").replace("-", "\u2212"))
 
 
 def uncertainty_text(number: Fraction) -> str:
     """Write an expanded uncertainty for people: to two significant digits."""
     with localcontext() as context:
         context.prec = 2
-        return format((+decimal_of(number)).normalize(), "f")
+        return numeral(format((+decimal_of(number)).normalize(), "f"))
 
 
 def mean_of(numbers: Iterable[Fraction]) -> Fraction | None:

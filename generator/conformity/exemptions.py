@@ -7,6 +7,7 @@ from datetime import date
 
 from generator.conformity.applicability import applicability
 from generator.conformity.evidence import LampRecord
+from generator.language import joined, say
 from generator.records.clause import Clause, Exemption, LawBook
 
 __all__ = ["claimable_note", "claimed_exemption"]
@@ -38,17 +39,23 @@ def claimed_exemption(
         Why the clause is lifted, and why a claim is not followed; empty where there is none.
     """
     claims = record.lamp.claimed_exemptions
-    refused = ""
+    refused: str = ""
     for item in _covering(law, clause, day):
         if item.id not in claims:
             continue
         fit = applicability(item.when, record)
         if fit.holds is not False:
-            evidence = f" {item.note}" if item.note else ""
-            return f"exemption claimed: {item.title} ({item.source.text}).{evidence}", ""
-        refused = (
-            f"The exemption {item.id} is claimed but cannot be followed: it holds only where "
-            f"{fit.why}."
+            claimed = say(
+                "exemption claimed: {exemption} ({source}).",
+                exemption=item.title,
+                source=item.source.text,
+            )
+            return joined(" ", (claimed, item.note)) if item.note else claimed, ""
+        refused = say(
+            "The exemption {exemption} is claimed but cannot be followed: it holds only where "
+            "{condition}.",
+            exemption=item.id,
+            condition=fit.why,
         )
     return "", refused
 
@@ -68,10 +75,13 @@ def claimable_note(law: LawBook, clause: Clause, record: LampRecord, day: date) 
         may be claimed by any lamp are not listed with every clause.
     """
     texts = [
-        f"{item.title} ({item.source.text})"
+        say("{exemption} ({source})", exemption=item.title, source=item.source.text)
         for item in _covering(law, clause, day)
         if (item.lifts or item.when) and applicability(item.when, record).holds
     ]
     if not texts:
         return ""
-    return f"It would be lifted if the supplier claimed and showed: {'; '.join(texts)}."
+    return say(
+        "It would be lifted if the supplier claimed and showed: {exemptions}.",
+        exemptions=joined("; ", texts),
+    )

@@ -5,6 +5,7 @@ Source: iec_61000_3_2, class C. Tables come from the law book, by edition and po
 
 from __future__ import annotations
 
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 from fractions import Fraction
 
@@ -12,14 +13,32 @@ from generator.conformity.evidence import Evidence
 from generator.conformity.exact_number import decimal_of
 from generator.conformity.limits import Question, quantity_text
 from generator.conformity.ruling import Ruling, not_measured
+from generator.language import joined, say
 from generator.quantities import QUANTITIES
 from generator.records.clause import DatedValue
+from generator.records.clause_words import compared_text
 from generator.records.verdict import VerdictWord
 
-__all__ = ["TableResult", "harmonic_currents", "judged_table", "table_limits"]
+__all__ = [
+    "TableResult",
+    "deciding_role",
+    "harmonic_currents",
+    "judged_table",
+    "lower_limits",
+    "option_letter",
+    "share_of_limit",
+    "table_limits",
+]
 
 NEEDS_WAVEFORM = "option_b"
 """The option whose angles of the current cannot be told from harmonics alone."""
+
+_MOST_NAMED = 3
+_FOUND = {
+    True: say("every limit met"),
+    False: say("not met"),
+    None: say("figures missing"),
+}
 
 _PER_ORDER = "odd_ma_per_w_times_order"
 _AT_LEAST = "_at_least"
@@ -55,7 +74,7 @@ class TableResult:
         """How much of the limit is used up; above one where it is not kept."""
         if self.value is None or not self.limit:
             return Fraction(0)
-        return _share(self.value, self.limit, self.comparison)
+        return share_of_limit(self.value, self.limit, self.comparison)
 
     @property
     def margin(self) -> Fraction | None:
@@ -66,7 +85,8 @@ class TableResult:
         return away if self.comparison == "at most" else -away
 
 
-def _share(value: Fraction, limit: Fraction, comparison: str) -> Fraction:
+def share_of_limit(value: Fraction, limit: Fraction, comparison: str) -> Fraction:
+    """How much of a limit, not nought, a value uses up; above one where it is not kept."""
     # As a difference, for a lower limit may be met by a value of any size.
     away = value - limit if comparison == "at most" else limit - value
     return 1 + away / limit
@@ -97,7 +117,8 @@ def table_limits(table: DatedValue) -> dict[str, Fraction]:
     return limits
 
 
-def _lower_limits(table: DatedValue) -> dict[str, Fraction]:
+def lower_limits(table: DatedValue) -> dict[str, Fraction]:
+    """Catalogue quantity -> lower limit of a table."""
     return {
         name.removesuffix(_AT_LEAST): Fraction(table.number(name))
         for name in table.entries
@@ -122,7 +143,7 @@ def judged_table(evidence: Evidence, table: DatedValue) -> TableResult:
         With the figure that decides.
     """
     limits = [(name, limit, "at most") for name, limit in table_limits(table).items()]
-    limits += [(name, limit, "at least") for name, limit in _lower_limits(table).items()]
+    limits += [(name, limit, "at least") for name, limit in lower_limits(table).items()]
     readings = {name: evidence.reading(name).value for name, _, _ in limits}
     absent = tuple(name for name, value in readings.items() if value is None)
     known = [
@@ -161,33 +182,69 @@ def harmonic_currents(question: Question) -> Ruling:
         for role in question.clause.constants
     }
     steps = tuple(_table_step(role, result) for role, result in results.items())
-    whole = {role: item for role, item in results.items() if role != NEEDS_WAVEFORM}
+    role = deciding_role(results)
+    if role is None:
+        whole = (item for role, item in results.items() if role != NEEDS_WAVEFORM)
+        absent = sorted({name for item in whole for name in item.absent})
+        return not_measured(_absent_text(absent)).with_steps_before(steps)
+    if results[role].met:
+        return _ruled(VerdictWord.PASS, results[role], _met_note(role, len(results)), steps)
+    if _waveform_is_missing(results):
+        note = joined(
+            " ",
+            (
+                say("Options A and C do not hold."),
+                say("Option B is not decidable without the waveform of the current."),
+            ),
+        )
+        return _ruled(VerdictWord.INCONCLUSIVE, results[role], note, steps)
+    return _ruled(VerdictWord.FAIL, results[role], "", steps)
+
+
+def deciding_role(results: Mapping[str, TableResult]) -> str | None:
+    """Say which of several tables decides.
+
+    Parameters
+    ----------
+    results
+        Role of a table -> its result.
+
+    Returns
+    -------
+    str or None
+        The first that is met, else the one nearest to being met, leaving out the one that needs
+        the waveform where that was not captured; ``None`` where figures are missing.
+    """
     met = next((role for role, item in results.items() if item.met), None)
     if met is not None:
-        return _ruled(VerdictWord.PASS, results[met], _met_note(met, len(results)), steps)
+        return met
+    whole = {role: item for role, item in results.items() if role != NEEDS_WAVEFORM}
     if any(item.met is None for item in whole.values()):
-        absent = sorted({name for item in whole.values() for name in item.absent})
-        shown = ", ".join(absent[:3]) + (" and others" if len(absent) > 3 else "")
-        return not_measured(f"not measured: {shown}").with_steps_before(steps)
+        return None
+    left = whole if _waveform_is_missing(results) else results
+    return min(left, key=lambda role: left[role].share)
+
+
+def _waveform_is_missing(results: Mapping[str, TableResult]) -> bool:
     left = results.get(NEEDS_WAVEFORM)
-    if left is not None and left.met is None:
-        nearest = min(whole.values(), key=lambda item: item.share)
-        note = (
-            "Options A and C do not hold. Option B is not decidable without the waveform of the "
-            "current."
-        )
-        return _ruled(VerdictWord.INCONCLUSIVE, nearest, note, steps)
-    nearest = min(results.values(), key=lambda item: item.share)
-    return _ruled(VerdictWord.FAIL, nearest, "", steps)
+    return left is not None and left.met is None
 
 
 def _met_note(role: str, count: int) -> str:
-    return f"Met by {_words(role)}." if count > 1 else ""
+    return say("Met by option {letter}.", letter=option_letter(role)) if count > 1 else ""
 
 
-def _words(role: str) -> str:
+def option_letter(role: str) -> str:
+    """Letter of an option; empty for the role of a table that stands alone."""
     stem, _, letter = role.rpartition("_")
-    return f"{stem} {letter.upper()}" if stem else role
+    return letter.upper() if stem else ""
+
+
+def _absent_text(names: Sequence[str]) -> str:
+    listed = ", ".join(names[:_MOST_NAMED])
+    if len(names) > _MOST_NAMED:
+        return say("not measured: {quantities} and others", quantities=listed)
+    return say("not measured: {quantities}", quantities=listed)
 
 
 def _ruled(word: VerdictWord, result: TableResult, note: str, steps: tuple[str, ...]) -> Ruling:
@@ -206,14 +263,17 @@ def _ruled(word: VerdictWord, result: TableResult, note: str, steps: tuple[str, 
 
 
 def _table_step(role: str, result: TableResult) -> str:
-    words = _words(role)
-    name = f"{words[0].upper()}{words[1:]}"
+    letter = option_letter(role)
+    name = say("Option {letter}", letter=letter) if letter else say("Table")
     if result.value is None or result.limit is None:
-        return f"{name}: not measured."
+        return say("{table}: not measured.", table=name)
     figure = QUANTITIES[result.quantity]
-    word = {True: "every limit met", False: "not met", None: "figures missing"}[result.met]
-    limit = f"{result.comparison} {quantity_text(result.limit, figure.unit)}"
-    return (
-        f"{name}: nearest to its limit is the {figure.label} with "
-        f"{quantity_text(result.value, figure.unit)} against {limit}: {word}."
+    limit = compared_text(result.comparison, quantity_text(result.limit, figure.unit))
+    return say(
+        "{table}: nearest to its limit is the {quantity} with {value} against {limit}: {found}.",
+        table=name,
+        quantity=figure.label,
+        value=quantity_text(result.value, figure.unit),
+        limit=limit,
+        found=_FOUND[result.met],
     )

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import dataclass, field, replace
 from datetime import date
 
@@ -16,17 +16,24 @@ from generator.conformity.ruling import (
     Ruling,
     not_applicable,
     not_measured,
-    sentence,
     unsettled,
     weighed,
 )
 from generator.conformity.scope import in_scope
+from generator.language import Passage, joined, say, sentence
 from generator.quantities import QUANTITIES
 from generator.records.campaign import Campaign
 from generator.records.clause import BUYER, Clause, DatedValue, LawBook
+from generator.records.clause_words import all_of
 from generator.records.figure import Figure, FigureSet
 from generator.records.settings import Decision
-from generator.records.verdict import Basis, Judgement, Verdict, VerdictWord
+from generator.records.verdict import (
+    VERDICT_WORDS,
+    Basis,
+    Judgement,
+    Verdict,
+    VerdictWord,
+)
 
 __all__ = ["DECLARABLE", "judge"]
 
@@ -58,6 +65,10 @@ DECLARABLE = frozenset(
     }
 )
 """Quantities that a supplier declares, or that follow from what he declares."""
+
+_LAW_OF_PLACING = say("Law of {day}, the date of placing on the market")
+_LAW_OF_ASSESSMENT = say("Law of {day}, the date of the assessment")
+_UNDATED = say("No date of placing on the market; law of {day}.")
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -140,18 +151,20 @@ def _excluded(case: _Case, clause: Clause) -> str:
     if outside:
         return outside
     if clause.claim and Evidence(case.record, Basis.DECLARED).reading(clause.claim).value is None:
-        return "the supplier makes no such claim"
+        return say("the supplier makes no such claim")
     return claimed_exemption(case.law, clause, case.record, case.day)[0]
 
 
 def _ruling(case: _Case, clause: Clause, chosen: Chosen, evidence: Evidence) -> Ruling:
     record, law, day = case.record, case.law, case.day
     fit = applicability(clause.applies, record)
-    elsewhere = f"the clause applies where {fit.why}" if fit.holds is False else ""
+    elsewhere = ""
+    if fit.holds is False:
+        elsewhere = say("the clause applies where {condition}", condition=fit.why)
     reason = _excluded(case, clause) or elsewhere or chosen.why
     if reason:
         return not_applicable(reason)
-    unknown = ", ".join(text for text in (fit.why, chosen.unknown) if text)
+    unknown = joined(", ", (text for text in (fit.why, chosen.unknown) if text))
     if unknown or chosen.value is None:
         return _without_property(case, clause, evidence, unknown)
     question = Question(clause, chosen.value, evidence, law, day)
@@ -170,18 +183,22 @@ def _outside_scope(case: _Case, scope_id: str) -> str:
         return ""
     window = case.law.constant(scope.constants["window"], case.day)
     if in_scope(case.record, window) is False:
-        return f"every unit is outside the scope of {scope.source.text}"
+        return say("every unit is outside the scope of {source}", source=scope.source.text)
     return ""
 
 
 def _without_property(case: _Case, clause: Clause, evidence: Evidence, unknown: str) -> Ruling:
     reading = reading_for(clause, clause.quantity, evidence, case.law, case.day)
-    reason = f"whether or how the clause applies is open, for it is not known: {unknown}"
+    reason = say(
+        "whether or how the clause applies is open, for it is not known: {properties}",
+        properties=unknown,
+    )
     if clause.kind == "verification":
-        nothing = not_measured("not declared, so there is nothing to verify")
+        nothing = not_measured(say("not declared, so there is nothing to verify"))
         return replace(nothing, value=shown(reading))
     if reading.value is None:
-        return not_measured(f"{sentence(reading.reason)} {sentence(reason)}")
+        both = joined(" ", (sentence(reading.reason), sentence(reason)))
+        return replace(not_measured(reason), notes=(both,))
     return replace(unsettled(reason), value=shown(reading), steps=reading.steps)
 
 
@@ -189,8 +206,34 @@ def _in_force(value: DatedValue | None) -> str:
     """Which value of the clause counts, and since when."""
     if value is None or value.start is None:
         return ""
-    where = " and ".join(item.text for item in value.when)
-    return f"value in force from {value.start}{f', where {where}' if where else ''}"
+    where = all_of(item.text for item in value.when)
+    if where:
+        return say(
+            "value in force from {day}, where {conditions}", day=value.start, conditions=where
+        )
+    return say("value in force from {day}", day=value.start)
+
+
+def _law_of(case: _Case, value: DatedValue | None) -> str:
+    """The day whose law counts and why, and the value of the clause that counts."""
+    placed = case.record.lamp.placed_on_market == case.day
+    law = (_LAW_OF_PLACING if placed else _LAW_OF_ASSESSMENT).format(day=case.day)
+    since = _in_force(value)
+    return sentence(say("{law}; {value}", law=law, value=since) if since else law)
+
+
+def _sentences(notes: Iterable[str]) -> Iterator[str]:
+    """Every sentence of some notes."""
+    for note in notes:
+        parts = note.parts if isinstance(note, Passage) and note.separator == " " else (note,)
+        yield from (sentence(part) for part in parts)
+
+
+def _why_not(ruling: Ruling) -> str:
+    """Why a clause does not apply, with what else is to be known of that."""
+    if not ruling.reason or len(ruling.notes) < 2:
+        return ruling.reason
+    return joined(". ", (ruling.reason, joined(" ", _sentences(ruling.notes[1:]))))
 
 
 def _verdict(
@@ -199,13 +242,9 @@ def _verdict(
     dated = case.record.lamp.placed_on_market is not None or clause.status == BUYER
     source = (value.source if value is not None else None) or clause.source
     status = (value.status if value is not None else None) or clause.status
-    since = _in_force(value)
     if ruling.word is not VerdictWord.NOT_APPLICABLE:
-        undated = f"No date of placing on the market; law of {case.day}."
-        ruling = ruling.with_notes([clause.note, "" if dated else undated])
-    placed = case.record.lamp.placed_on_market == case.day
-    of_what = "placing on the market" if placed else "the assessment"
-    first = f"Law of {case.day}, the date of {of_what}"
+        undated = "" if dated else _UNDATED.format(day=case.day)
+        ruling = ruling.with_notes([clause.note, undated])
     return Verdict(
         lamp_id=case.record.lamp.lamp_id,
         clause=clause.id,
@@ -224,11 +263,15 @@ def _verdict(
         status=status,
         probability=ruling.probability,
         rule=ruling.rule,
-        note=" ".join(sentence(item) for item in ruling.notes),
+        note=joined(" ", _sentences(ruling.notes)),
         steps=(
-            sentence(f"{first}; {since}" if since else first),
+            _law_of(case, value),
             *ruling.steps,
             *(sentence(item) for item in ruling.notes),
-            f"Verdict: {ruling.word}.",
+            say("Verdict: {verdict}.", verdict=VERDICT_WORDS[ruling.word]),
         ),
+        act=source.act,
+        place=source.place,
+        amending_act=source.amending_act,
+        reason=_why_not(ruling),
     )

@@ -26,12 +26,14 @@ from generator.conformity.law_figures import law_reading
 from generator.conformity.limits import Limit, Question, no_limit, plain_limit, quantity_text
 from generator.conformity.lumen_maintenance import lumen_maintenance_minimum
 from generator.conformity.maximum_power import maximum_power
-from generator.conformity.ruling import Ruling, not_applicable, not_measured, sentence
+from generator.conformity.ruling import Ruling, not_applicable, not_measured
 from generator.conformity.scope import light_source_scope
 from generator.conformity.verification_tolerance import verification_limit
 from generator.errors import LawBookError
+from generator.language import joined, numeral, say, say_counted
 from generator.quantities import QUANTITIES
 from generator.records.clause import Clause, LawBook
+from generator.records.clause_words import with_unit
 from generator.records.settings import Decision
 from generator.records.verdict import Basis, VerdictWord
 
@@ -57,7 +59,7 @@ RULING_FORMULAS: Mapping[str, Callable[[Question], Ruling]] = MappingProxyType(
 PUBLISHED_STEPS = "eu-2019-2015-published-decimals"
 """The leaf with the steps in which product information is given."""
 
-OF_THE_ACT = "the act itself: the determined value is compared with the tolerance"
+OF_THE_ACT = say("the act itself: the determined value is compared with the tolerance")
 """The rule of a verification, which no other may replace."""
 
 ENERGY_CLASS = "energy_efficiency_class"
@@ -98,7 +100,7 @@ def ruling_on(question: Question, decision: Decision) -> Ruling:
     if clause.formula in RULING_FORMULAS and not question.value.no_limit:
         ruling = RULING_FORMULAS[clause.formula](question)
         rule = rule_text(SIMPLE)
-        return replace(ruling, rule=rule, steps=(*ruling.steps, f"Decision rule: {rule}."))
+        return replace(ruling, rule=rule, steps=(*ruling.steps, _rule_step(rule)))
     rulings = [_compared(question, name, decision) for name in clause.quantities]
     order = (
         VerdictWord.FAIL,
@@ -117,7 +119,9 @@ def _compared(question: Question, quantity: str, decision: Decision) -> Ruling:
     limit = _limit(question, quantity)
     if limit.limits is None:
         verified = question.clause.kind == "verification"
-        reason = limit.reason if verified else f"no limit can be given: {limit.reason}"
+        reason = limit.reason
+        if not verified:
+            reason = say("no limit can be given: {reason}", reason=reason)
         ruling = not_measured(reason)
         return replace(ruling, value=shown(reading), quantity=quantity)
     if reading.value is None:
@@ -128,7 +132,7 @@ def _compared(question: Question, quantity: str, decision: Decision) -> Ruling:
 
 def _unlimited(reading: Reading) -> Ruling:
     if reading.value is None:
-        return not_applicable("the act sets no limit here")
+        return not_applicable(say("the act sets no limit here"))
     return Ruling(VerdictWord.PASS, value=shown(reading), steps=reading.steps)
 
 
@@ -143,7 +147,7 @@ def _limit(question: Question, quantity: str) -> Limit:
         return formula(question)
     if clause.quantity == "energy_efficiency_class":
         if not isinstance(value.value, str):
-            return no_limit("the clause has no class to compare with")
+            return no_limit(say("the clause has no class to compare with"))
         source = clause.source.text
         return class_limit(value.value, clause.comparison, question.law, question.day, source)
     return plain_limit(question)
@@ -192,21 +196,31 @@ def _decided(
 
 def _applied(rule: str, outcome: Outcome, fixed: bool) -> tuple[str, tuple[str, ...]]:
     """The rule as it was applied, and the note that says why a verdict is left open."""
-    named = sentence(f"Decision rule: {rule}")
+    named = _rule_step(rule)
     if outcome.word is VerdictWord.INCONCLUSIVE:
         return named, (outcome.step,)
-    return named if fixed else f"{named} {outcome.step}", ()
+    return named if fixed else joined(" ", (named, outcome.step)), ()
+
+
+def _rule_step(rule: str) -> str:
+    return say("Decision rule: {rule}.", rule=rule)
 
 
 def _compared_step(clause: Clause, value: Fraction, limit: Limit, margin: Fraction) -> str:
     """Value, limit and margin in one sentence; a class is compared as an efficacy."""
     by_class = clause.quantity == ENERGY_CLASS
     unit = QUANTITIES[TOTAL_MAINS_EFFICACY].unit if by_class else clause.unit
-    against = f"class {limit.shown}" if by_class else f"{limit.shown}"
     if isinstance(limit.shown, Decimal):
         against = quantity_text(Fraction(limit.shown), unit)
-    shown_margin = quantity_text(Fraction(f"{float(margin):.4g}"), unit)
-    return f"{quantity_text(value, unit)} against {against}: margin {shown_margin}."
+    else:
+        against = limit.shown or ""
+        against = say("class {letter}", letter=against) if by_class else against
+    return say(
+        "{value} against {limit}: margin {margin}.",
+        value=quantity_text(value, unit),
+        limit=against,
+        margin=quantity_text(Fraction(f"{float(margin):.4g}"), unit),
+    )
 
 
 def _uncertain_limit_step(
@@ -216,27 +230,38 @@ def _uncertain_limit_step(
     own = limit.expanded_uncertainty
     if not own or combined is None:
         return ()
-    parts = [f"{uncertainty_text(item)} {clause.unit}".rstrip() for item in (own, combined)]
-    step = (
-        f"The limit rests on measured figures and has U = {parts[0]} of its own; value and limit "
-        f"together have U = {parts[1]}."
+    step = say(
+        "The limit rests on measured figures and has U = {own} of its own; value and limit "
+        "together have U = {combined}.",
+        own=with_unit(uncertainty_text(own), clause.unit),
+        combined=with_unit(uncertainty_text(combined), clause.unit),
     )
     return (step,)
+
+
+_EXTREMES = {
+    "0.0000": say("below {limit}", limit=numeral("0.0001")),
+    "1.0000": say("above {limit}", limit=numeral("0.9999")),
+}
 
 
 def _probability_step(probability: float | None) -> tuple[str, ...]:
     if probability is None:
         return ()
     shown_as = f"{probability:.4f}"
-    words = {"0.0000": "below 0.0001", "1.0000": "above 0.9999"}.get(shown_as, shown_as)
-    return (f"Probability of conformity: {words}.",)
+    words = _EXTREMES.get(shown_as, numeral(shown_as))
+    return (say("Probability of conformity: {probability}.", probability=words),)
 
 
 def _rounded(clause: Clause, value: Fraction) -> tuple[Fraction, tuple[str, ...]]:
     if clause.rounding is None:
         return value, ()
     result = rounded(value, Fraction(clause.rounding.step), clause.rounding.mode)
-    step = f"Rounded as the act asks, to {clause.rounding.step}: {number_text(result)}."
+    step = say(
+        "Rounded as the act asks, to {step:f}: {value}.",
+        step=clause.rounding.step,
+        value=number_text(result),
+    )
     return result, (step,)
 
 
@@ -259,7 +284,7 @@ def _lowered(
     floor = question.value.may_be_lowered_to
     if floor is None or word is not VerdictWord.FAIL or value < Fraction(floor):
         return word, ()
-    note = f"Corrections that are not known here may lower the limit to {floor}."
+    note = say("Corrections that are not known here may lower the limit to {limit:f}.", limit=floor)
     return VerdictWord.INCONCLUSIVE, (note,)
 
 
@@ -267,9 +292,15 @@ def _tie(limit: Limit, value: Fraction, limits: Limits) -> tuple[str, ...]:
     other = limit.other_reading
     if other is None or other.meets(value) is limits.meets(value):
         return ()
-    word = "pass" if other.meets(value) else "fail"
-    note = "R is a tie and the act has no rule for it: half-up is used; half-down would make"
-    return (f"{note} this a {word}.",)
+    return (_TIE_PASSES if other.meets(value) else _TIE_FAILS,)
+
+
+_TIE_PASSES = say(
+    "R is a tie and the act has no rule for it: half-up is used; half-down would make this a pass."
+)
+_TIE_FAILS = say(
+    "R is a tie and the act has no rule for it: half-up is used; half-down would make this a fail."
+)
 
 
 def _display(question: Question, value: Fraction, limits: Limits) -> tuple[str, ...]:
@@ -284,15 +315,31 @@ def _display(question: Question, value: Fraction, limits: Limits) -> tuple[str, 
     published = rounded(value, Fraction(step))
     if not limits.meets(published):
         return ()
-    note = f"In steps of {step}, as EU product information is printed, the value would read"
-    return (f"{note} {number_text(published)} and seem to meet the limit; it does not.",)
+    note = say(
+        "In steps of {step:f}, as EU product information is printed, the value would read {value} "
+        "and seem to meet the limit; it does not.",
+        step=step,
+        value=number_text(published),
+    )
+    return (note,)
 
 
 def _sample(clause: Clause, reading: Reading, declared: bool) -> tuple[str, ...]:
     count, wanted = reading.units_count, clause.sample_units
     if declared or wanted is None or not count or count == wanted:
         return ()
-    units = f"{count} unit{'s' if count > 1 else ''}"
     if clause.formula == "lumen_maintenance_minimum":
-        return (f"Over {units} that survived; the act begins with {wanted}.",)
-    return (f"From {units}; the act wants {wanted}.",)
+        survived = say_counted(
+            "Over {count} unit that survived; the act begins with {wanted}.",
+            "Over {count} units that survived; the act begins with {wanted}.",
+            count,
+            wanted=wanted,
+        )
+        return (survived,)
+    few = say_counted(
+        "From {count} unit; the act wants {wanted}.",
+        "From {count} units; the act wants {wanted}.",
+        count,
+        wanted=wanted,
+    )
+    return (few,)

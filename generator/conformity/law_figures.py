@@ -10,12 +10,17 @@ from datetime import date
 from decimal import Decimal
 from fractions import Fraction
 
-from generator.conformity.energy_class import energy_class_reading, total_mains_efficacy
+from generator.conformity.energy_class import (
+    NOT_IN_FORCE,
+    energy_class_reading,
+    total_mains_efficacy,
+)
 from generator.conformity.evidence import Evidence, LampRecord, Reading, missing
 from generator.conformity.exact_number import decimal_of, rounded
 from generator.conformity.limits import Question, chosen_value
 from generator.conformity.maximum_power import maximum_power
 from generator.errors import LawBookError
+from generator.language import say
 from generator.records.clause import LawBook
 from generator.records.figure import MEAN, Figure, Grade
 from generator.records.verdict import Basis
@@ -26,10 +31,16 @@ MAXIMUM_POWER_CLAUSE = "eu-2019-2020-maximum-power"
 ENERGY_CONSUMPTION = "eu-2019-2015-energy-consumption"
 
 _METHODS = {
-    "total_mains_efficacy_lm_per_w": "EU 2019/2015 Annex II",
-    "energy_efficiency_class": "EU 2019/2015 Annex II",
-    "max_power_w": "EU 2019/2020 Annex II",
-    "energy_kwh_per_1000h": "EU 2019/2015 Annex V Table 3, rounded up",
+    "total_mains_efficacy_lm_per_w": say("EU 2019/2015 Annex II"),
+    "energy_efficiency_class": say("EU 2019/2015 Annex II"),
+    "max_power_w": say("EU 2019/2020 Annex II"),
+    "energy_kwh_per_1000h": say("EU 2019/2015 Annex V Table 3, rounded up"),
+}
+
+
+_FROM = {
+    Basis.DECLARED: say("from declared values, {method}"),
+    Basis.DETERMINED: say("from determined values, {method}"),
 }
 
 
@@ -55,7 +66,7 @@ def energy_consumption(evidence: Evidence, law: LawBook, day: date) -> Reading:
     try:
         table = law.constant(ENERGY_CONSUMPTION, day)
     except LawBookError:
-        return missing(f"the energy label rules are not in force on {day}")
+        return missing(NOT_IN_FORCE.format(day=day))
     power = evidence.reading("power_w")
     if power.value is None:
         return power
@@ -153,7 +164,7 @@ def _figure(
         quantity=quantity,
         value=value,
         grade=grade,
-        method=f"from {basis} values, {method}",
+        method=_FROM[basis].format(method=method),
         expanded_uncertainty=decimal_of(uncertain) if numeric and uncertain is not None else None,
         units_count=1 if declared else max(1, reading.units_count),
         reason="" if value is not None else reading.reason,

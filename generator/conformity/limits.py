@@ -11,8 +11,10 @@ from generator.conformity.applicability import applicability
 from generator.conformity.decision_rule import Limits
 from generator.conformity.evidence import Evidence, LampRecord
 from generator.conformity.exact_number import decimal_of, number_text
+from generator.language import joined, say
 from generator.quantities import QUANTITIES
 from generator.records.clause import Clause, DatedValue, LawBook
+from generator.records.clause_words import compared_text, with_unit
 
 __all__ = [
     "Chosen",
@@ -24,6 +26,11 @@ __all__ = [
     "plain_limit",
     "quantity_text",
 ]
+
+
+_NOT_YET = say("no value is in force on {day}: first value from {begin}")
+_ENDED = say("no value is in force on {day}: its validity has ended")
+DEPENDS_ON = say("the limit depends on the {quantity}, which is {reason}")
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -129,8 +136,9 @@ def chosen_value(clause: Clause, record: LampRecord, day: date) -> Chosen:
     if not standing:
         starts = [item.start for item in clause.values if item.start is not None]
         later = [start for start in starts if start > day]
-        when = f"first value from {min(later)}" if later else "its validity has ended"
-        return Chosen(None, why=f"no value is in force on {day}: {when}")
+        if not later:
+            return Chosen(None, why=_ENDED.format(day=day))
+        return Chosen(None, why=_NOT_YET.format(day=day, begin=min(later)))
     unknown: list[str] = []
     for item in standing:
         fit = applicability(item.when, record)
@@ -139,13 +147,13 @@ def chosen_value(clause: Clause, record: LampRecord, day: date) -> Chosen:
         if fit.holds is None:
             unknown.append(fit.why)
     if unknown:
-        return Chosen(None, unknown=", ".join(dict.fromkeys(unknown)))
-    return Chosen(None, why="the clause has no value for such a lamp")
+        return Chosen(None, unknown=joined(", ", dict.fromkeys(unknown)))
+    return Chosen(None, why=say("the clause has no value for such a lamp"))
 
 
 def quantity_text(number: Fraction, unit: str) -> str:
     """A number with its unit."""
-    return f"{number_text(number)} {unit}".rstrip()
+    return with_unit(number_text(number), unit)
 
 
 def one_sided(comparison: str, number: Fraction) -> Limits:
@@ -172,39 +180,49 @@ def plain_limit(question: Question) -> Limit:
     source = (value.source or clause.source).text
     if value.lower is not None and value.upper is not None:
         lower, upper = Fraction(value.lower), Fraction(value.upper)
-        shown = f"{number_text(lower)} to {number_text(upper)}"
-        return Limit(
-            Limits(lower, upper), shown=shown, steps=(f"Limit: within {shown} ({source}).",)
-        )
+        shown = say("{low} to {high}", low=number_text(lower), high=number_text(upper))
+        step = _limit_step(compared_text("within", shown), source)
+        return Limit(Limits(lower, upper), shown=shown, steps=(step,))
     if not isinstance(value.value, Decimal):
-        return no_limit("the clause has no number to compare with")
+        return no_limit(say("the clause has no number to compare with"))
     if value.slopes:
         return _sloped(question, Fraction(value.value), source)
     number = Fraction(value.value)
-    step = f"Limit: {clause.comparison} {quantity_text(number, clause.unit)} ({source})."
+    asked = compared_text(clause.comparison, quantity_text(number, clause.unit))
+    step = _limit_step(asked, source)
     return Limit(one_sided(clause.comparison, number), shown=decimal_of(number), steps=(step,))
 
 
+def _limit_step(asked: str, source: str) -> str:
+    return say("Limit: {limit} ({source}).", limit=asked, source=source)
+
+
 def _sloped(question: Question, number: Fraction, source: str) -> Limit:
-    parts = [number_text(number)]
+    parts: list[str] = [number_text(number)]
     uncertain: Fraction | None = Fraction(0)
     for slope in question.value.slopes:
         reading = question.evidence.reading(slope.quantity)
         label = QUANTITIES[slope.quantity].label
         if reading.value is None:
-            return no_limit(f"the limit depends on the {label}, which is {reading.reason}")
+            return no_limit(DEPENDS_ON.format(quantity=label, reason=reading.reason))
         times = Fraction(slope.times)
         number += times * reading.value
-        parts.append(f"{number_text(times)} × {number_text(reading.value)} ({label})")
+        parts.append(
+            say(
+                "{factor} × {value} ({quantity})",
+                factor=number_text(times),
+                value=number_text(reading.value),
+                quantity=label,
+            )
+        )
         if uncertain is not None and reading.expanded_uncertainty is not None:
             uncertain += abs(times) * reading.expanded_uncertainty
         else:
             uncertain = None
     clause = question.clause
-    step = (
-        f"Limit: {clause.comparison} {' + '.join(parts)} = "
-        f"{quantity_text(number, clause.unit)} ({source})."
-    )
+    total = quantity_text(number, clause.unit)
+    sum_text = say("{parts} = {total}", parts=joined(" + ", parts), total=total)
+    step = _limit_step(compared_text(clause.comparison, sum_text), source)
     return Limit(
         one_sided(clause.comparison, number),
         shown=decimal_of(number),

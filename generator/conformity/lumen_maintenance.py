@@ -12,10 +12,20 @@ from generator.conformity.decision_rule import Limits
 from generator.conformity.evidence import Evidence
 from generator.conformity.exact_number import decimal_of, number_text
 from generator.conformity.limits import Limit, Question, no_limit
+from generator.language import say
 from generator.records.clause import DatedValue
 from generator.records.verdict import Basis
 
 __all__ = ["lumen_maintenance_curve", "lumen_maintenance_minimum"]
+
+
+_NOT_CAPPED = say(
+    "Limit: {fraction:f} to the power of ({hours:f} h / {lifetime} h) = {limit} ({source})."
+)
+_CAPPED = say(
+    "Limit: {fraction:f} to the power of ({hours:f} h / {lifetime} h) = {limit}, capped at {cap} "
+    "({source})."
+)
 
 
 def lumen_maintenance_curve(lifetime_h: Fraction, table: DatedValue) -> Fraction:
@@ -63,14 +73,16 @@ def lumen_maintenance_minimum(question: Question) -> Limit:
     """
     lifetime = Evidence(question.evidence.record, Basis.DECLARED).reading("l70b50_h").value
     if not lifetime:
-        return no_limit("the limit depends on the lifetime L70B50, which is not declared")
+        return no_limit(say("the limit depends on the lifetime L70B50, which is not declared"))
     table = question.constants("curve")
     curve, cap = lumen_maintenance_curve(lifetime, table), Fraction(table.number("cap"))
     number = min(curve, cap)
-    capped = f", capped at {number_text(cap)}" if curve > cap else ""
-    step = (
-        f"Limit: {table.number('flux_fraction')} to the power of ({table.number('test_hours_h')} h"
-        f" / {number_text(lifetime)} h) = {number_text(curve)}{capped} "
-        f"({question.clause.source.text})."
+    step = (_CAPPED if curve > cap else _NOT_CAPPED).format(
+        fraction=table.number("flux_fraction"),
+        hours=table.number("test_hours_h"),
+        lifetime=number_text(lifetime),
+        limit=number_text(curve),
+        cap=number_text(cap),
+        source=question.clause.source.text,
     )
     return Limit(Limits(lower=number), shown=decimal_of(number), steps=(step,))

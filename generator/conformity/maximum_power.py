@@ -10,8 +10,10 @@ from dataclasses import dataclass
 from fractions import Fraction
 
 from generator.conformity.decision_rule import Limits
+from generator.conformity.energy_class import NOT_STATED, not_stated
 from generator.conformity.exact_number import decimal_of, number_text, rounded
-from generator.conformity.limits import Limit, Question, no_limit
+from generator.conformity.limits import DEPENDS_ON, Limit, Question, no_limit
+from generator.language import joined, say
 from generator.records.clause import DatedValue
 from generator.records.lamp import Lamp
 
@@ -60,21 +62,24 @@ def correction_factor(lamp: Lamp, table: DatedValue) -> CorrectionFactor:
     supply = "mains" if lamp.mains else "non_mains"
     broad = lamp.high_luminance or not lamp.directional
     basic = Fraction(table.number(f"{'non_directional' if broad else 'directional'}_{supply}"))
-    parts = [number_text(basic)]
-    total, notes = basic, []
+    parts: list[str] = [number_text(basic)]
+    notes: list[str] = []
+    total = basic
     if lamp.directional and lamp.anti_glare_shield:
         total += Fraction(table.number("anti_glare_shield"))
-        parts.append(f"{table.number('anti_glare_shield')} (anti-glare shield)")
+        parts.append(say("{bonus:f} (anti-glare shield)", bonus=table.number("anti_glare_shield")))
     if lamp.colour_tuneable:
         total += Fraction(table.number("colour_tuneable"))
-        parts.append(f"{table.number('colour_tuneable')} (colour-tuneable)")
+        parts.append(say("{bonus:f} (colour-tuneable)", bonus=table.number("colour_tuneable")))
     if lamp.high_luminance:
         bonus, note = _luminance_bonus(lamp, table)
         total += bonus
-        parts.append(f"{number_text(bonus)} (high luminance)")
+        parts.append(say("{bonus} (high luminance)", bonus=number_text(bonus)))
         notes += note
-    sum_of_parts = f"{' + '.join(parts)} = " if len(parts) > 1 else ""
-    step = f"Correction factor C = {sum_of_parts}{number_text(total)}."
+    sum_text: str = number_text(total)
+    if len(parts) > 1:
+        sum_text = joined(" = ", (joined(" + ", parts), sum_text))
+    step = say("Correction factor C = {value}.", value=sum_text)
     return CorrectionFactor(total, step, tuple(notes))
 
 
@@ -87,7 +92,10 @@ def _luminance_bonus(lamp: Lamp, table: DatedValue) -> tuple[Fraction, list[str]
     )
     if declared is not None:
         return bonus, []
-    note = f"No luminance is declared; the bonus is that of {least} cd/mm², the least possible."
+    note = say(
+        "No luminance is declared; the bonus is that of {luminance:f} cd/mm², the least possible.",
+        luminance=least,
+    )
     return bonus, [note]
 
 
@@ -166,14 +174,14 @@ def maximum_power(question: Question) -> Limit:
     Source: eu_2019_2020, Annex II point 1(a).
     """
     lamp = question.evidence.lamp
-    unknown = [name for name in ("directional", "mains") if getattr(lamp, name) is None]
+    unknown = not_stated(lamp)
     if unknown:
-        return no_limit(f"not stated for the lamp: {' and '.join(unknown)}")
+        return no_limit(NOT_STATED.format(properties=unknown))
     flux = question.evidence.reading("useful_luminous_flux_lm")
     ra = question.evidence.reading("ra")
     if flux.value is None or ra.value is None:
-        name, item = ("luminous flux", flux) if flux.value is None else ("CRI", ra)
-        return no_limit(f"the limit depends on the {name}, which is {item.reason}")
+        name, item = (say("luminous flux"), flux) if flux.value is None else (say("CRI"), ra)
+        return no_limit(DEPENDS_ON.format(quantity=name, reason=item.reason))
     correction = correction_factor(lamp, question.constants("correction"))
     offset, efficacy = offset_and_efficacy(lamp, question.constants("efficacy"))
     beam = "directional" if lamp.directional else "non_directional"
@@ -182,12 +190,23 @@ def maximum_power(question: Question) -> Limit:
     rendering = rendering_factor(ra.value, table)
     unrendered = correction.value * (offset + flux.value / (factor * efficacy))
     power = unrendered * rendering
-    formula = (
-        f"Maximum power: {number_text(correction.value)} × ({number_text(offset)} W + "
-        f"{number_text(flux.value)} lm / ({number_text(factor)} × {number_text(efficacy)} lm/W)) "
-        f"× {number_text(rendering)} = {number_text(power)} W ({question.clause.source.text})."
+    formula = say(
+        "Maximum power: {correction} × ({offset} W + {flux} lm / ({factor} × {efficacy} lm/W)) × "
+        "{rendering} = {power} W ({source}).",
+        correction=number_text(correction.value),
+        offset=number_text(offset),
+        flux=number_text(flux.value),
+        factor=number_text(factor),
+        efficacy=number_text(efficacy),
+        rendering=number_text(rendering),
+        power=number_text(power),
+        source=question.clause.source.text,
     )
-    rendered = f"R = {number_text(rendering)} for a CRI of {number_text(ra.value)}."
+    rendered = say(
+        "R = {rendering} for a CRI of {ra}.",
+        rendering=number_text(rendering),
+        ra=number_text(ra.value),
+    )
     other, tie_note = _other_tie(ra.value, table, rendering, unrendered)
     uncertain = None
     if flux.expanded_uncertainty is not None:
@@ -204,7 +223,7 @@ def maximum_power(question: Question) -> Limit:
 
 def _not_stated(lamp: Lamp) -> tuple[str, ...]:
     if lamp.connected is None:
-        return ("Whether the lamp is connected is not stated; it is taken as not connected.",)
+        return (say("Whether the lamp is connected is not stated; it is taken as not connected."),)
     return ()
 
 
@@ -214,9 +233,11 @@ def _other_tie(
     down = rendering_factor(ra, table, "half down")
     if down == rendering:
         return None, ()
-    step = (
-        f"R is a tie at this CRI and the act has no rule for it: half-up gives "
-        f"{number_text(rendering)}, half-down {number_text(down)}, which would allow "
-        f"{number_text(unrendered * down)} W."
+    step = say(
+        "R is a tie at this CRI and the act has no rule for it: half-up gives {up}, half-down "
+        "{down}, which would allow {power} W.",
+        up=number_text(rendering),
+        down=number_text(down),
+        power=number_text(unrendered * down),
     )
     return Limits(upper=unrendered * down), (step,)

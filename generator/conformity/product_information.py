@@ -16,6 +16,7 @@ from fractions import Fraction
 from generator.conformity.exact_number import decimal_of, rounded
 from generator.conformity.judged_value import PUBLISHED_STEPS
 from generator.errors import LawBookError
+from generator.language import numeral, say, say_as
 from generator.quantities import quantity
 from generator.records.clause import DatedValue, LawBook
 from generator.records.figure import FigureSet, Grade
@@ -24,7 +25,8 @@ from generator.records.product_field import ProductField
 
 __all__ = ["product_information"]
 
-_NOT_STATED = "not stated in the campaign"
+_YES, _NO = say("yes"), say("no")
+_NOT_STATED = say("not stated in the campaign")
 
 
 @dataclass(frozen=True, slots=True)
@@ -38,30 +40,30 @@ class _Number:
 
 
 _NUMBERS = (
-    _Number("cct_k", "correlated colour temperature"),
-    _Number("power_w", "on-mode power", "lower"),
-    _Number("standby_power_w", "standby power", "lower"),
-    _Number("networked_standby_power_w", "networked standby power", "lower", "connected"),
-    _Number("ra", "colour rendering index", "higher"),
-    _Number("equivalent_power_w", "equivalent power", "higher", "claim"),
-    _Number("x", "chromaticity coordinate x"),
-    _Number("y", "chromaticity coordinate y"),
-    _Number("peak_intensity_cd", "peak luminous intensity", "higher", "directional"),
-    _Number("beam_angle_deg", "beam angle", "", "directional"),
-    _Number("r9", "R9 colour rendering index", "higher"),
-    _Number("survival_factor", "survival factor", "higher"),
-    _Number("lumen_maintenance_factor", "lumen maintenance factor", "higher"),
-    _Number("displacement_factor", "displacement factor", "higher", "mains"),
-    _Number("sdcm", "colour consistency in MacAdam ellipses", "lower", "mains"),
-    _Number("pst_lm", "flicker metric (Pst LM)", "lower", "mains"),
-    _Number("svm", "stroboscopic effect metric (SVM)", "lower", "mains"),
+    _Number("cct_k", say("correlated colour temperature")),
+    _Number("power_w", say("on-mode power"), "lower"),
+    _Number("standby_power_w", say("standby power"), "lower"),
+    _Number("networked_standby_power_w", say("networked standby power"), "lower", "connected"),
+    _Number("ra", say("colour rendering index"), "higher"),
+    _Number("equivalent_power_w", say("equivalent power"), "higher", "claim"),
+    _Number("x", say("chromaticity coordinate x")),
+    _Number("y", say("chromaticity coordinate y")),
+    _Number("peak_intensity_cd", say("peak luminous intensity"), "higher", "directional"),
+    _Number("beam_angle_deg", say("beam angle"), "", "directional"),
+    _Number("r9", say("R9 colour rendering index"), "higher"),
+    _Number("survival_factor", say("survival factor"), "higher"),
+    _Number("lumen_maintenance_factor", say("lumen maintenance factor"), "higher"),
+    _Number("displacement_factor", say("displacement factor"), "higher", "mains"),
+    _Number("sdcm", say("colour consistency in MacAdam ellipses"), "lower", "mains"),
+    _Number("pst_lm", say("flicker metric (Pst LM)"), "lower", "mains"),
+    _Number("svm", say("stroboscopic effect metric (SVM)"), "lower", "mains"),
 )
 
 _ONLY = {
-    "connected": "asked of connected light sources alone",
-    "claim": "no equivalence is claimed",
-    "directional": "asked of directional light sources alone",
-    "mains": "asked of mains light sources alone",
+    "connected": say("asked of connected light sources alone"),
+    "claim": say("no equivalence is claimed"),
+    "directional": say("asked of directional light sources alone"),
+    "mains": say("asked of mains light sources alone"),
 }
 
 
@@ -107,58 +109,60 @@ def _text(lamp: Lamp, name: str, text: str, reason: str = _NOT_STATED) -> Produc
 
 
 def _identity(lamp: Lamp) -> Iterator[ProductField]:
-    yield _text(lamp, "supplier's name", lamp.bidder)
-    yield _text(lamp, "model identifier", lamp.model)
+    yield _text(lamp, say("supplier's name"), lamp.bidder)
+    yield _text(lamp, say("model identifier"), lamp.model)
 
 
 def _kind(lamp: Lamp) -> Iterator[ProductField]:
-    yield _text(lamp, "lighting technology", lamp.technology)
-    yield _text(lamp, "directional", _choice(lamp.directional, "DLS", "NDLS"))
-    yield _text(lamp, "cap type", lamp.cap)
-    yield _text(lamp, "mains", _choice(lamp.mains, "MLS", "NMLS"))
-    yield _text(lamp, "connected light source (CLS)", _choice(lamp.connected))
-    yield _text(lamp, "colour-tuneable light source", _choice(lamp.colour_tuneable))
-    yield _text(lamp, "envelope", "")
-    yield _text(lamp, "high luminance light source", _choice(lamp.high_luminance))
-    yield _text(lamp, "anti-glare shield", _choice(lamp.anti_glare_shield))
-    yield _text(lamp, "dimmable", _choice(lamp.dimmable))
-    yield _text(lamp, "height, width and depth", "")
+    yield _text(lamp, say("lighting technology"), lamp.technology)
+    yield _text(lamp, say_as("property", "directional"), _choice(lamp.directional, "DLS", "NDLS"))
+    yield _text(lamp, say("cap type"), lamp.cap)
+    yield _text(lamp, say_as("property", "mains"), _choice(lamp.mains, "MLS", "NMLS"))
+    yield _text(lamp, say("connected light source (CLS)"), _choice(lamp.connected))
+    yield _text(lamp, say("colour-tuneable light source"), _choice(lamp.colour_tuneable))
+    yield _text(lamp, say("envelope"), "")
+    yield _text(lamp, say("high luminance light source"), _choice(lamp.high_luminance))
+    yield _text(lamp, say("anti-glare shield"), _choice(lamp.anti_glare_shield))
+    yield _text(lamp, say("dimmable"), _choice(lamp.dimmable))
+    yield _text(lamp, say("height, width and depth"), "")
 
 
-def _choice(answer: bool | None, yes: str = "yes", no: str = "no") -> str:
+def _choice(answer: bool | None, yes: str = _YES, no: str = _NO) -> str:
     return "" if answer is None else (yes if answer else no)
 
 
 def _energy(lamp: Lamp, figures: FigureSet) -> ProductField:
-    name = "energy consumption in on-mode"
+    name = say("energy consumption in on-mode")
     figure = figures.graded(lamp.lamp_id, "energy_kwh_per_1000h", Grade.DECLARED)
     if figure is None or figure.number is None:
-        return _text(lamp, name, "", figure.reason if figure else "no power is declared")
+        return _text(lamp, name, "", figure.reason if figure else say("no power is declared"))
     return ProductField(
         lamp.lamp_id,
         name,
-        format(figure.number, "f"),
+        numeral(format(figure.number, "f")),
         quantity("energy_kwh_per_1000h").unit,
-        "rounded up to the next integer",
+        say("rounded up to the next integer"),
         lamp.declared.get("power_w"),
     )
 
 
 def _energy_class(lamp: Lamp, figures: FigureSet) -> ProductField:
-    name = "energy efficiency class"
+    name = say("energy efficiency class")
     declared = lamp.declared_energy_class
     figure = figures.graded(lamp.lamp_id, "energy_efficiency_class", Grade.DECLARED)
     found = figure.value if figure is not None else None
     if declared is None:
-        return _text(lamp, name, "", "no class is declared")
+        return _text(lamp, name, "", say("no class is declared"))
     better = isinstance(found, str) and declared < found
-    warning = f"the declared flux and power give class {found}" if better else ""
+    warning = ""
+    if better:
+        warning = say("the declared flux and power give class {letter}", letter=found)
     return ProductField(lamp.lamp_id, name, declared, declared=declared, warning=warning)
 
 
 def _flux(lamp: Lamp, steps: DatedValue) -> ProductField:
     key = "useful_luminous_flux_lm" if lamp.directional else "luminous_flux_lm"
-    field = _Number(key, "useful luminous flux", "higher")
+    field = _Number(key, say("useful luminous flux"), "higher")
     return _published(lamp, lamp.declared.get(key), steps, field)
 
 
@@ -176,7 +180,7 @@ def _number(lamp: Lamp, figures: FigureSet, steps: DatedValue, field: _Number) -
                 shown.name,
                 shown.text,
                 shown.unit,
-                f"{shown.rounding}; measured, for none is declared",
+                say("{rounding}; measured, for none is declared", rounding=shown.rounding),
             )
     return _published(lamp, declared, steps, field)
 
@@ -197,17 +201,17 @@ def _published(
 ) -> ProductField:
     unit = quantity(field.quantity).unit
     if declared is None:
-        return _text(lamp, field.name, "", "not declared")
+        return _text(lamp, field.name, "", say("not declared"))
     step = steps.number(field.quantity)
     value = rounded(Fraction(declared), Fraction(step))
     decimals = max(0, -int(step.normalize().as_tuple().exponent))
-    text = f"{decimal_of(value):.{decimals}f}"
+    text = numeral(f"{decimal_of(value):.{decimals}f}")
     return ProductField(
         lamp.lamp_id,
         field.name,
         text,
         unit,
-        f"to the nearest {format(step.normalize(), 'f')}",
+        say("to the nearest {step:f}", step=step.normalize()),
         declared,
         warning=_flattered(value, declared, field.better, text),
     )
@@ -219,5 +223,8 @@ def _flattered(value: Fraction, declared: Decimal, better: str, text: str) -> st
     flattering = value > exact if better == "higher" else value < exact
     if not better or not flattering:
         return ""
-    plain = format(declared.normalize(), "f")
-    return f"{plain} would be shown as {text}, which is better than declared"
+    return say(
+        "{declared} would be shown as {shown}, which is better than declared",
+        declared=numeral(format(declared.normalize(), "f")),
+        shown=text,
+    )

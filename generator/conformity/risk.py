@@ -13,6 +13,7 @@ from itertools import groupby
 from statistics import NormalDist, fmean, stdev
 
 from generator.conformity.decision_rule import COVERAGE_FACTOR, SIMPLE, rule_text
+from generator.language import say
 from generator.records.risk import CampaignRisk
 from generator.records.settings import Decision
 from generator.records.verdict import Basis, Verdict
@@ -133,11 +134,11 @@ def _risk_of(group: list[Verdict], decision: Decision) -> CampaignRisk:
     error = math.sqrt(fmean(item * item for item in errors))
     mean = fmean(margins)
     variance = stdev(margins) ** 2 - error**2 if len(group) >= LEAST_LAMPS else 0.0
-    reason = ""
+    reason: str = ""
     if len(group) < LEAST_LAMPS:
-        reason = f"fewer than {LEAST_LAMPS} lamps with known uncertainty"
+        reason = say("fewer than {count} lamps with known uncertainty", count=LEAST_LAMPS)
     elif variance <= 0.0:
-        reason = "the lamps differ by no more than the uncertainty explains"
+        reason = say("the lamps differ by no more than the uncertainty explains")
     found = None
     if not reason:
         band = _guard_band(error, used)

@@ -6,9 +6,10 @@ from collections.abc import Iterable
 from dataclasses import dataclass, replace
 from decimal import Decimal
 
+from generator.language import say, sentence
 from generator.records.verdict import VerdictWord
 
-__all__ = ["Ruling", "not_applicable", "not_measured", "sentence", "unsettled", "weighed"]
+__all__ = ["Ruling", "not_applicable", "not_measured", "unsettled", "weighed"]
 
 
 @dataclass(frozen=True, slots=True)
@@ -25,6 +26,8 @@ class Ruling:
         Where they differ from the clause, of several quantities the deciding one; else empty.
     notes, steps
         Sentences.
+    reason
+        Why the clause does not apply; empty where it does.
     """
 
     word: VerdictWord
@@ -39,6 +42,7 @@ class Ruling:
     comparison: str = ""
     notes: tuple[str, ...] = ()
     steps: tuple[str, ...] = ()
+    reason: str = ""
 
     def with_notes(self, notes: Iterable[str]) -> Ruling:
         """The same ruling with further notes; empty ones are left out."""
@@ -50,17 +54,10 @@ class Ruling:
         return replace(self, steps=(*steps, *self.steps))
 
 
-def sentence(text: str) -> str:
-    """Give a phrase a capital and a full stop."""
-    text = text.strip()
-    if not text:
-        return ""
-    return f"{text[0].upper()}{text[1:]}{'' if text.endswith('.') else '.'}"
-
-
 def not_applicable(reason: str) -> Ruling:
     """The clause does not apply, and why."""
-    return Ruling(VerdictWord.NOT_APPLICABLE, notes=(sentence(f"Not applicable: {reason}"),))
+    note = sentence(say("Not applicable: {reason}", reason=reason))
+    return Ruling(VerdictWord.NOT_APPLICABLE, reason=reason, notes=(note,))
 
 
 def not_measured(reason: str, limit: Decimal | str | None = None) -> Ruling:
@@ -74,9 +71,21 @@ def unsettled(reason: str) -> Ruling:
 
 
 _WEIGHTS = {
-    "quoted": "The limit is quoted from another publication; the act itself was not read.",
-    "computed": "The limit is computed from stated inputs; it was not read in the act.",
-    "cross-checked": "The limit is cross-checked; it was not read in the act.",
+    "quoted": say("The limit is quoted from another publication; the act itself was not read."),
+    "computed": say("The limit is computed from stated inputs; it was not read in the act."),
+    "cross-checked": say("The limit is cross-checked; it was not read in the act."),
+}
+
+_INDICATIVE = {
+    VerdictWord.PASS: say(
+        "Indicative only: the limit is not confirmed in any source; the value would meet it."
+    ),
+    VerdictWord.FAIL: say(
+        "Indicative only: the limit is not confirmed in any source; the value would not meet it."
+    ),
+    VerdictWord.INCONCLUSIVE: say(
+        "Indicative only: the limit is not confirmed in any source; the value would leave it open."
+    ),
 }
 
 
@@ -96,13 +105,9 @@ def weighed(ruling: Ruling, status: str) -> Ruling:
     Ruling
         With its note.
     """
-    if ruling.word not in {VerdictWord.PASS, VerdictWord.FAIL, VerdictWord.INCONCLUSIVE}:
+    if ruling.word not in _INDICATIVE:
         return ruling
     if status != "unconfirmed":
         return ruling.with_notes([_WEIGHTS.get(status, "")])
-    would = {
-        VerdictWord.PASS: "the value would meet it",
-        VerdictWord.FAIL: "the value would not meet it",
-    }.get(ruling.word, "the value would leave it open")
-    note = f"Indicative only: the limit is not confirmed in any source; {would}."
-    return replace(ruling, word=VerdictWord.INCONCLUSIVE, notes=(note, *ruling.notes))
+    notes = (_INDICATIVE[ruling.word], *ruling.notes)
+    return replace(ruling, word=VerdictWord.INCONCLUSIVE, notes=notes)

@@ -6,21 +6,30 @@ makes the model a light source (Annexes IX and IV).
 
 from __future__ import annotations
 
+from dataclasses import replace
 from fractions import Fraction
 
 from generator.conformity.evidence import Evidence, LampRecord
 from generator.conformity.exact_number import decimal_of, number_text
 from generator.conformity.limits import Question
 from generator.conformity.ruling import Ruling, not_measured
+from generator.language import joined, say, say_counted, sentence
 from generator.quantities import QUANTITIES
 from generator.records.clause import DatedValue
+from generator.records.clause_words import number_of, with_unit
 from generator.records.verdict import Basis, VerdictWord
 
 __all__ = ["in_scope", "light_source_scope", "unit_in_scope", "window_bounds"]
 
 _NEEDED = ("x", "y", "luminous_flux_lm", "ra")
 _AREA = "light_emitting_area_mm2"
-_NO_AREA = "The flux density is not checked: the light-emitting area is not given."
+_NO_AREA = say("The flux density is not checked: the light-emitting area is not given.")
+_OUTSIDE = say("Every unit is outside the definition, so the act does not cover the lamp")
+_FOUND = {
+    True: say("in scope"),
+    False: say("outside"),
+    None: say("not all figures known"),
+}
 
 
 def window_bounds(x: Fraction, window: DatedValue) -> tuple[Fraction, Fraction]:
@@ -152,19 +161,26 @@ def light_source_scope(question: Question) -> Ruling:
         window.number("luminous_flux_at_least_lm"),
         window.number("luminous_flux_at_most_lm"),
     )
-    shown = f"{least} to {most}"
+    shown = say("{low} to {high}", low=number_of(least), high=number_of(most))
     steps = tuple(_unit_step(unit, units[unit], item, window) for unit, item in found.items())
     open_density = () if any(_AREA in figures for figures in units.values()) else (_NO_AREA,)
     if any(found.values()):
         inside = sum(item is True for item in found.values())
-        sample = f"{len(found)} unit{'s' if len(found) > 1 else ''}"
-        note = f"{inside} of {sample} shown to be in scope; one is enough."
+        note = say_counted(
+            "{inside} of {count} unit shown to be in scope; one is enough.",
+            "{inside} of {count} units shown to be in scope; one is enough.",
+            len(found),
+            inside=inside,
+        )
         return _scoped(VerdictWord.PASS, flux.value, shown, (note, *open_density), steps)
     if found and all(item is False for item in found.values()):
-        note = "Every unit is outside the definition, so the act does not cover the lamp."
-        return _scoped(VerdictWord.NOT_APPLICABLE, flux.value, shown, (note,), steps)
-    ruling = not_measured("chromaticity, luminous flux and CRI are not all measured on one unit")
-    note = "The clauses of the act are judged as if the lamp were in scope."
+        notes = (sentence(_OUTSIDE),)
+        outside = _scoped(VerdictWord.NOT_APPLICABLE, flux.value, shown, notes, steps)
+        return replace(outside, reason=_OUTSIDE)
+    ruling = not_measured(
+        say("chromaticity, luminous flux and CRI are not all measured on one unit")
+    )
+    note = say("The clauses of the act are judged as if the lamp were in scope.")
     return ruling.with_notes([note]).with_steps_before(steps)
 
 
@@ -182,17 +198,33 @@ def _scoped(
 def _unit_step(
     unit_id: str, figures: dict[str, Fraction], found: bool | None, window: DatedValue
 ) -> str:
-    parts = []
-    for name, value in figures.items():
-        figure = QUANTITIES[name]
-        shown = number_text(Fraction(f"{float(value):.6g}"))
-        parts.append(f"{figure.label} {shown} {figure.unit}".rstrip())
-        if name == "y" and "x" in figures:
-            lower, upper = (f"{float(end):.6f}" for end in window_bounds(figures["x"], window))
-            parts[-1] += f" (window {lower} to {upper})"
-        if name == _AREA and "luminous_flux_lm" in figures:
-            density = f"{float(figures['luminous_flux_lm'] / value):.6g}"
-            most = window.number("flux_density_below_lm_per_mm2")
-            parts[-1] += f" (flux density {density} lm/mm², to be below {most} lm/mm²)"
-    word = {True: "in scope", False: "outside", None: "not all figures known"}[found]
-    return f"Unit {unit_id}: {', '.join(parts) or 'nothing measured'}: {word}."
+    parts = [_figure_text(name, figures, window) for name in figures]
+    return say(
+        "Unit {unit}: {figures}: {found}.",
+        unit=unit_id,
+        figures=joined(", ", parts) if parts else say("nothing measured"),
+        found=_FOUND[found],
+    )
+
+
+def _figure_text(name: str, figures: dict[str, Fraction], window: DatedValue) -> str:
+    """One figure of a unit, with what it is compared with."""
+    figure = QUANTITIES[name]
+    shown = number_text(Fraction(f"{float(figures[name]):.6g}"))
+    text = joined(" ", (figure.label, with_unit(shown, figure.unit)))
+    if name == "y" and "x" in figures:
+        lower, upper = window_bounds(figures["x"], window)
+        return say(
+            "{figure} (window {lower:.6f} to {upper:.6f})",
+            figure=text,
+            lower=float(lower),
+            upper=float(upper),
+        )
+    if name == _AREA and "luminous_flux_lm" in figures:
+        return say(
+            "{figure} (flux density {density:.6g} lm/mm², to be below {limit:f} lm/mm²)",
+            figure=text,
+            density=float(figures["luminous_flux_lm"] / figures[name]),
+            limit=window.number("flux_density_below_lm_per_mm2"),
+        )
+    return text

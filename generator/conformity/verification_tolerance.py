@@ -13,7 +13,9 @@ from generator.conformity.energy_class import total_mains_efficacy
 from generator.conformity.evidence import Evidence, Reading
 from generator.conformity.exact_number import decimal_of, number_text
 from generator.conformity.limits import Limit, Question, no_limit, quantity_text
+from generator.language import say
 from generator.records.clause import Tolerance
+from generator.records.clause_words import compared_text, with_unit
 from generator.records.verdict import Basis
 
 __all__ = ["tolerated", "verification_limit"]
@@ -79,15 +81,17 @@ def verification_limit(question: Question, quantity: str) -> Limit:
     declared = _declared(question, quantity)
     tolerance = question.value.tolerance
     if declared.value is None or tolerance is None:
-        return no_limit(f"{declared.reason}, so there is nothing to verify")
+        return no_limit(say("{reason}, so there is nothing to verify", reason=declared.reason))
     limits = tolerated(declared.value, tolerance)
     unit = question.clause.unit
     ends = [number_text(end) for end in (limits.lower, limits.upper) if end is not None]
-    shown = " to ".join(ends)
-    step = (
-        f"Declared {quantity_text(declared.value, unit)}, tolerance {tolerance.text(unit)}: "
-        f"{question.clause.comparison} {shown} {unit}".rstrip()
-        + f" ({question.clause.source.text})."
+    shown = say("{low} to {high}", low=ends[0], high=ends[1]) if len(ends) > 1 else ends[0]
+    step = say(
+        "Declared {declared}, tolerance {tolerance}: {limit} ({source}).",
+        declared=quantity_text(declared.value, unit),
+        tolerance=tolerance.text(unit),
+        limit=compared_text(question.clause.comparison, with_unit(shown, unit)),
+        source=question.clause.source.text,
     )
     only = limits.lower if limits.upper is None else limits.upper
     if len(ends) == 1 and only is not None:

@@ -69,6 +69,7 @@ from generator.crosschecks.photometric import (
 )
 from generator.crosschecks.same_curves import same_light, same_mains, same_spectra
 from generator.crosschecks.wording import listed
+from generator.language import joined, say
 from generator.records.campaign import Campaign
 from generator.records.figure import FigureSet
 from generator.records.finding import Finding
@@ -130,7 +131,8 @@ def _one_per_check(findings: Iterable[Finding]) -> Iterator[Finding]:
         others = [item.unit_id for item in items if item.unit_id not in ("", worst.unit_id)]
         if others:
             names = listed(list(dict.fromkeys(others)))
-            worst = replace(worst, compared=f"{worst.compared} Found also for {names}.")
+            also = say("Found also for {names}.", names=names)
+            worst = replace(worst, compared=joined(" ", (worst.compared, also)))
         yield worst
 
 

@@ -8,7 +8,8 @@ from decimal import Decimal
 from generator.crosschecks.evidence import LampEvidence, computed_against_reported
 from generator.crosschecks.significance import Reading, compared, half_digit
 from generator.crosschecks.tolerances import tolerance
-from generator.crosschecks.wording import CheckText, number, worded
+from generator.crosschecks.wording import CheckText, number, sourced, worded
+from generator.language import say
 from generator.quantities import quantity
 from generator.records.figure import MEAN
 from generator.records.finding import Finding
@@ -27,43 +28,56 @@ _MCCAMY_SPREAD_K = Decimal(25)
 _REPORT_TEXTS = {
     name: CheckText(
         f"{word}-spectrum-against-report",
-        f"{label} from the spectrum and as reported differ",
-        "A spectrum of another unit or operating point, another observer or edition of the "
-        "method, or a spectrum of coarse step or short range would explain it.",
+        title,
+        say(
+            "A spectrum of another unit or operating point, another observer or edition of the "
+            "method, or a spectrum of coarse step or short range would explain it."
+        ),
         (name,),
-        f"{quantity(name).source}, definition",
+        sourced(quantity(name).source, say("definition")),
     )
-    for name, word, label in (
-        ("x", "x", "Chromaticity x"),
-        ("y", "y", "Chromaticity y"),
-        (_CCT, "cct", "Colour temperature"),
-        ("duv", "duv", "Distance from the Planckian locus"),
-        ("ra", "ra", "Colour rendering index Ra"),
-        ("r9", "r9", "Colour rendering index R9"),
+    for name, word, title in (
+        ("x", "x", say("Chromaticity x from the spectrum and as reported differ")),
+        ("y", "y", say("Chromaticity y from the spectrum and as reported differ")),
+        (_CCT, "cct", say("Colour temperature from the spectrum and as reported differ")),
+        (
+            "duv",
+            "duv",
+            say("Distance from the Planckian locus from the spectrum and as reported differ"),
+        ),
+        ("ra", "ra", say("Colour rendering index Ra from the spectrum and as reported differ")),
+        ("r9", "r9", say("Colour rendering index R9 from the spectrum and as reported differ")),
     )
 }
 _CHROMATICITY = CheckText(
     "cct-against-chromaticity",
-    "Reported colour temperature and chromaticity do not fit",
-    "A nominal colour temperature written in place of the measured one, or values taken from two "
-    "units or two instruments, would explain it.",
+    say("Reported colour temperature and chromaticity do not fit"),
+    say(
+        "A nominal colour temperature written in place of the measured one, or values taken from "
+        "two units or two instruments, would explain it."
+    ),
     (_CCT, "x", "y"),
-    "mccamy_1992, approximation of the colour temperature from x and y",
+    sourced("mccamy_1992", say("approximation of the colour temperature from x and y")),
 )
 _DECLARED = CheckText(
     "cct-declared-against-measured",
-    "Declared and measured colour temperature differ",
-    "Units of another colour variant of the model, a lamp left at another colour setting, or a "
-    "slip in the declared value would explain it.",
+    say("Declared and measured colour temperature differ"),
+    say(
+        "Units of another colour variant of the model, a lamp left at another colour setting, or a "
+        "slip in the declared value would explain it."
+    ),
     (_CCT,),
-    "ansi_c78_377, nominal CCT and tolerance",
+    sourced("ansi_c78_377", say("nominal CCT and tolerance")),
 )
+
+
+_FROM_SPECTRUM = say("computed from the spectrum as {computed}")
 
 
 def colour_against_report(evidence: LampEvidence) -> Iterator[Finding]:
     """Colour values computed from the spectrum against the reported ones."""
     for name, text in _REPORT_TEXTS.items():
-        yield from computed_against_reported(evidence, text, name, "the spectrum")
+        yield from computed_against_reported(evidence, text, name, _FROM_SPECTRUM)
 
 
 def cct_mccamy_1992(x: Decimal, y: Decimal) -> Decimal | None:
@@ -116,9 +130,15 @@ def cct_against_chromaticity(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"colour temperature reported as {worded(_CCT, cct.value)}, reported chromaticity "
-                f"x {number(x.value)}, y {number(y.value)} is that of about "
-                f"{worded(_CCT, expected)}; {outcome.words('K')}",
+                say(
+                    "colour temperature reported as {reported}, reported chromaticity x {x}, "
+                    "y {y} is that of about {expected}; {outcome}",
+                    reported=worded(_CCT, cct.value),
+                    x=number(x.value),
+                    y=number(y.value),
+                    expected=worded(_CCT, expected),
+                    outcome=outcome.words("K"),
+                ),
                 outcome.deviation,
                 "K",
             )
@@ -136,8 +156,12 @@ def declared_cct_against_measured(evidence: LampEvidence) -> Iterator[Finding]:
             evidence.lamp.lamp_id,
             MEAN,
             outcome.severity,
-            f"colour temperature declared as {worded(_CCT, declared)}, measured as "
-            f"{worded(_CCT, mean.value)}; {outcome.words('K')}",
+            say(
+                "colour temperature declared as {declared}, measured as {measured}; {outcome}",
+                declared=worded(_CCT, declared),
+                measured=worded(_CCT, mean.value),
+                outcome=outcome.words("K"),
+            ),
             outcome.deviation,
             "K",
         )

@@ -11,7 +11,8 @@ from numpy.typing import NDArray
 from generator.crosschecks.evidence import LampEvidence
 from generator.crosschecks.significance import Reading
 from generator.crosschecks.tolerances import NO_SOURCE, UNCONFIRMED, Tolerance, tolerance
-from generator.crosschecks.wording import CheckText, listed, number, with_unit, worded
+from generator.crosschecks.wording import CheckText, listed, number, sourced, with_unit, worded
+from generator.language import joined, say
 from generator.quantities import quantity
 from generator.records.figure import exact
 from generator.records.finding import Finding, Severity
@@ -25,41 +26,63 @@ __all__ = [
 ]
 
 _BLOCKS = 10
-_S025 = f"cie_s025, tolerance intervals of the test conditions ({UNCONFIRMED})"
+_S025 = sourced(
+    "cie_s025",
+    say("tolerance intervals of the test conditions ({status})", status=UNCONFIRMED),
+)
 
 _AMBIENT = CheckText(
     "ambient-outside-tolerance",
-    "Ambient temperature outside the tolerance of the measuring standard",
-    "A measurement without a controlled room, or one made for another ambient on purpose. LED "
-    "lamps give less light when warmer; the results may have been corrected, which the report "
-    "would say.",
+    say("Ambient temperature outside the tolerance of the measuring standard"),
+    say(
+        "A measurement without a controlled room, or one made for another ambient on purpose. LED "
+        "lamps give less light when warmer; the results may have been corrected, which the report "
+        "would say."
+    ),
     ("ambient_temperature_c",),
     _S025,
 )
 _SUPPLY_TEXTS = {
     name: CheckText(
         f"{word}-outside-tolerance",
-        f"Supply {word} outside the tolerance of the measuring standard",
-        "Measured on the public mains instead of a regulated source, at another rated value, or "
-        "with the drop along the leads not compensated.",
+        title,
+        say(
+            "Measured on the public mains instead of a regulated source, at another rated value, "
+            "or with the drop along the leads not compensated."
+        ),
         (name,),
         _S025,
     )
-    for name, word in (("voltage_v", "voltage"), ("frequency_hz", "frequency"))
+    for name, word, title in (
+        (
+            "voltage_v",
+            "voltage",
+            say("Supply voltage outside the tolerance of the measuring standard"),
+        ),
+        (
+            "frequency_hz",
+            "frequency",
+            say("Supply frequency outside the tolerance of the measuring standard"),
+        ),
+    )
 }
 _STABILITY = CheckText(
     "light-not-stable",
-    "Light still drifting during the long record",
-    "A record started before the lamp was warm, a supply that wandered, or a light level set by "
-    "a sensor or control would explain it.",
+    say("Light still drifting during the long record"),
+    say(
+        "A record started before the lamp was warm, a supply that wandered, or a light level set "
+        "by a sensor or control would explain it."
+    ),
     ("pst_lm", "luminous_flux_lm"),
-    f"cie_s025, stabilisation ({UNCONFIRMED})",
+    sourced("cie_s025", say("stabilisation ({status})", status=UNCONFIRMED)),
 )
 _ZERO = CheckText(
     "uncertainty-of-zero",
-    "Expanded uncertainty given as zero",
-    "No measurement has none. A column filled with zeros in place of empty cells would explain "
-    "it; the checks take the uncertainty as unknown.",
+    say("Expanded uncertainty given as zero"),
+    say(
+        "No measurement has none. A column filled with zeros in place of empty cells would explain "
+        "it; the checks take the uncertainty as unknown."
+    ),
     (),
     NO_SOURCE,
 )
@@ -80,17 +103,26 @@ def _outside(
     expanded = item.expanded or Decimal(0)
     if excess + expanded <= 0:
         return
-    tail = ""
+    words = say(
+        "{quantity} {value}, set value {target}; difference {difference}, "
+        "allowed ± {allowed} ({status})",
+        quantity=quantity(name).label,
+        value=worded(name, item.value),
+        target=worded(name, target),
+        difference=with_unit(number(deviation, 3, signed=True), unit),
+        allowed=with_unit(number(limit.allowance(target), 3), unit),
+        status=limit.status,
+    )
     if excess <= 0:
-        tail = (
-            f"; inside, but not by the expanded uncertainty of {with_unit(number(expanded), unit)}"
+        words = say(
+            "{text}; inside, but not by the expanded uncertainty of {expanded}",
+            text=words,
+            expanded=with_unit(number(expanded), unit),
         )
     yield text.finding(
         *place,
         Severity.DOUBT if excess > 0 else Severity.REMARK,
-        f"{quantity(name).label} {worded(name, item.value)}, set value {worded(name, target)}; "
-        f"difference {with_unit(number(deviation, 3, signed=True), unit)}, allowed "
-        f"± {with_unit(number(limit.allowance(target), 3), unit)} ({limit.status}){tail}",
+        words,
         deviation,
         unit,
     )
@@ -147,12 +179,27 @@ def light_not_stable(evidence: LampEvidence) -> Iterator[Finding]:
                     evidence.lamp.lamp_id,
                     unit_id,
                     Severity.DOUBT,
-                    f"light over {duration_s:.0f} s, means of {_BLOCKS} equal parts: highest less "
-                    f"lowest is {number(exact(drift), 3)} % of the lowest, allowed "
-                    f"{limit.words} ({limit.status}; {limit.reason})",
+                    say(
+                        "light over {duration:.0f} s, means of {parts} equal parts: highest less "
+                        "lowest is {drift} % of the lowest, allowed {allowed} ({status}; {reason})",
+                        duration=duration_s,
+                        parts=_BLOCKS,
+                        drift=number(exact(drift), 3),
+                        allowed=limit.words,
+                        status=limit.status,
+                        reason=limit.reason,
+                    ),
                     exact(drift),
                     "%",
                 )
+
+
+def _zero(name: str, reported: Decimal | None) -> str:
+    """A column that says zero, beside the value it belongs to where there is one."""
+    zero = joined(" = ", (f"u_{name}", with_unit("0", quantity(name).unit)))
+    if reported is None:
+        return zero
+    return say("{zero} beside {value}", zero=zero, value=worded(name, reported))
 
 
 def uncertainty_of_zero(evidence: LampEvidence) -> Iterator[Finding]:
@@ -163,9 +210,5 @@ def uncertainty_of_zero(evidence: LampEvidence) -> Iterator[Finding]:
             text = CheckText(
                 _ZERO.check, _ZERO.title, _ZERO.explanation, tuple(names), _ZERO.source
             )
-            values = [
-                f"u_{name} = {with_unit('0', quantity(name).unit)}"
-                + (f" beside {worded(name, unit.reported[name])}" if name in unit.reported else "")
-                for name in names
-            ]
+            values = [_zero(name, unit.reported.get(name)) for name in names]
             yield text.finding(evidence.lamp.lamp_id, unit.unit_id, Severity.DOUBT, listed(values))

@@ -8,6 +8,7 @@ from decimal import Decimal
 from generator.crosschecks.evidence import LampEvidence
 from generator.crosschecks.tolerances import NO_SOURCE, tolerance
 from generator.crosschecks.wording import CheckText, listed, named, worded
+from generator.language import joined, say, say_counted
 from generator.quantities import quantity
 from generator.records.campaign import Campaign
 from generator.records.figure import MEAN
@@ -31,33 +32,41 @@ Values = frozenset[tuple[str, Decimal]]
 
 _BETWEEN_UNITS = CheckText(
     "units-identical",
-    "Units with identical values",
-    "A row copied from one unit to another, or means entered in place of the values of each unit, "
-    "would explain it; separate measurements differ in the last digits.",
+    say("Units with identical values"),
+    say(
+        "A row copied from one unit to another, or means entered in place of the values of each "
+        "unit, would explain it; separate measurements differ in the last digits."
+    ),
     (),
     NO_SOURCE,
 )
 _BETWEEN_LAMPS = CheckText(
     "units-identical-between-lamps",
-    "Identical values under another lamp of the bidder",
-    "Two names for one model, one report used for a family of models, or a row copied from one "
-    "lamp to the other would explain it.",
+    say("Identical values under another lamp of the bidder"),
+    say(
+        "Two names for one model, one report used for a family of models, or a row copied from one "
+        "lamp to the other would explain it."
+    ),
     (),
     NO_SOURCE,
 )
 _BETWEEN_BIDDERS = CheckText(
     "units-identical-between-bidders",
-    "Identical values under another bidder",
-    "One maker's lamp and report offered by two bidders, or copied data, would explain it; "
-    "separate measurements differ in the last digits.",
+    say("Identical values under another bidder"),
+    say(
+        "One maker's lamp and report offered by two bidders, or copied data, would explain it; "
+        "separate measurements differ in the last digits."
+    ),
     (),
     NO_SOURCE,
 )
 _NO_SPREAD = CheckText(
     "units-without-spread",
-    "No spread between units in several quantities",
-    "One unit measured and its values entered for all, means or declared values entered in place "
-    "of the values of each unit, or coarse rounding would explain it.",
+    say("No spread between units in several quantities"),
+    say(
+        "One unit measured and its values entered for all, means or declared values entered in "
+        "place of the values of each unit, or coarse rounding would explain it."
+    ),
     (),
     NO_SOURCE,
 )
@@ -84,9 +93,13 @@ def _with_quantities(text: CheckText, names: tuple[str, ...]) -> CheckText:
     return CheckText(text.check, text.title, text.explanation, names, text.source)
 
 
+def _stated(name: str, value: Decimal) -> str:
+    return joined(" ", (quantity(name).label, worded(name, value)))
+
+
 def _sample(values: Values) -> str:
     pairs = sorted(values)
-    return listed([f"{quantity(name).label} {worded(name, value)}" for name, value in pairs])
+    return listed([_stated(name, value) for name, value in pairs])
 
 
 def _identical(
@@ -99,8 +112,15 @@ def _identical(
         lamp.lamp_id,
         unit.unit_id,
         severity,
-        f"all {len(values)} reported values ({digits} digits) are the same as those of "
-        f"{listed(others)}: {_sample(values)}",
+        say_counted(
+            "the reported value ({digits} digits) is the same as that of {others}: {values}",
+            "all {count} reported values ({digits} digits) are the same as those of {others}: "
+            "{values}",
+            len(values),
+            digits=digits,
+            others=listed(others),
+            values=_sample(values),
+        ),
         Decimal(0),
     )
 
@@ -139,16 +159,18 @@ def _identical_with(
     lamps: dict[str, Lamp], lamp: Lamp, unit: Unit, units: list[Unit]
 ) -> Iterator[Finding]:
     """Findings of one lamp in one group of identical units."""
-    same_lamp, same_bidder, other_bidder = [], [], []
+    same_lamp: list[str] = []
+    same_bidder: list[str] = []
+    other_bidder: list[str] = []
     for other in units:
         place = named(other.lamp_id, other.unit_id)
         owner = lamps[other.lamp_id]
         if other.lamp_id == lamp.lamp_id:
-            same_lamp += [] if other is unit else [f"unit {other.unit_id}"]
+            same_lamp += [] if other is unit else [say("unit {unit}", unit=other.unit_id)]
         elif owner.bidder == lamp.bidder:
             same_bidder.append(place)
         else:
-            other_bidder.append(f"{place} ({owner.bidder})")
+            other_bidder.append(joined("", (place, f" ({owner.bidder})")))
     if other_bidder:
         yield _identical(_BETWEEN_BIDDERS, lamp, unit, other_bidder, Severity.CONTRADICTION)
     if same_lamp:
@@ -185,12 +207,17 @@ def no_spread_between_units(evidence: LampEvidence) -> Iterator[Finding]:
     independent = {_DEPENDENT.get(name, name) for name in names}
     if len(independent) < tolerance("identical_quantities").value:
         return
-    values = [f"{quantity(name).label} {worded(name, units[0].reported[name])}" for name in names]
+    values = [_stated(name, units[0].reported[name]) for name in names]
     yield _with_quantities(_NO_SPREAD, names).finding(
         evidence.lamp.lamp_id,
         MEAN,
         Severity.DOUBT,
-        f"the same value for all {len(units)} units in {len(names)} quantities, a spread of 0: "
-        f"{listed(values)}",
+        say(
+            "the same value for all {units} units in {quantities} quantities, a spread of 0: "
+            "{values}",
+            units=len(units),
+            quantities=len(names),
+            values=listed(values),
+        ),
         Decimal(0),
     )

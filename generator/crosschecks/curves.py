@@ -12,6 +12,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say
 from generator.records.campaign import Campaign
 
 __all__ = [
@@ -103,14 +104,21 @@ def spectrum_table(campaign: Campaign) -> CurveTable | None:
                 (spectra.lamp_id, unit, row)
                 for unit, row in zip(spectra.unit_ids, _unit_norm(rows), strict=True)
             ]
-    return _table(campaign, found, f"{_GRID_NM.size} wavelengths from 400 nm to 700 nm")
+    return _table(
+        campaign, found, say("{points} wavelengths from 400 nm to 700 nm", points=_GRID_NM.size)
+    )
 
 
 def _tables(
     campaign: Campaign, groups: dict[tuple[float, int, bool], list[Row]]
 ) -> Iterator[CurveTable]:
     for (rate_hz, samples, _), found in groups.items():
-        points = f"{min(_SAMPLES, samples)} of {samples} samples at {rate_hz:g} Hz"
+        points = say(
+            "{points} of {samples} samples at {rate:g} Hz",
+            points=min(_SAMPLES, samples),
+            samples=samples,
+            rate=rate_hz,
+        )
         table = _table(campaign, found, points)
         if table is not None:
             yield table

@@ -8,6 +8,7 @@ from decimal import Decimal
 from generator.crosschecks.evidence import LampEvidence
 from generator.crosschecks.tolerances import NO_SOURCE, tolerance
 from generator.crosschecks.wording import CheckText, listed
+from generator.language import say
 from generator.records.campaign import Campaign
 from generator.records.figure import MEAN
 from generator.records.finding import Finding, Severity
@@ -17,25 +18,31 @@ __all__ = ["report_after_assessment", "report_older_than_model", "reports_shared
 
 _OLDER = CheckText(
     "report-older-than-model",
-    "Report older than the model",
-    "A test of samples before the start of sale, which is usual within a year; a test of an "
-    "earlier model that this one is said to be equivalent to; or a slip in one of the dates.",
+    say("Report older than the model"),
+    say(
+        "A test of samples before the start of sale, which is usual within a year; a test of an "
+        "earlier model that this one is said to be equivalent to; or a slip in one of the dates."
+    ),
     (),
     NO_SOURCE,
 )
 _AFTER = CheckText(
     "report-after-assessment",
-    "Report dated after the assessment",
-    "A slip in one of the dates, a day and month exchanged, or an assessment date left from an "
-    "earlier issue would explain it.",
+    say("Report dated after the assessment"),
+    say(
+        "A slip in one of the dates, a day and month exchanged, or an assessment date left from an "
+        "earlier issue would explain it."
+    ),
     (),
     NO_SOURCE,
 )
 _SHARED = CheckText(
     "report-number-between-bidders",
-    "One report number under two bidders",
-    "Two bidders offering lamps of one maker, two laboratories that number alike, or a report "
-    "attached to the wrong bid would explain it.",
+    say("One report number under two bidders"),
+    say(
+        "Two bidders offering lamps of one maker, two laboratories that number alike, or a report "
+        "attached to the wrong bid would explain it."
+    ),
     (),
     NO_SOURCE,
 )
@@ -53,10 +60,17 @@ def report_older_than_model(evidence: LampEvidence) -> Iterator[Finding]:
         lamp.lamp_id,
         MEAN,
         Severity.REMARK if days <= usual.value else Severity.DOUBT,
-        f"report of {report.isoformat()}, placed on the market on {market.isoformat()}: the report "
-        f"is {days} days older, up to {usual.words} are usual ({usual.reason})",
+        say(
+            "report of {report}, placed on the market on {market}: the report is {days} days "
+            "older, up to {usual} are usual ({reason})",
+            report=report.isoformat(),
+            market=market.isoformat(),
+            days=days,
+            usual=usual.words,
+            reason=usual.reason,
+        ),
         Decimal(-days),
-        "days",
+        say("days"),
     )
 
 
@@ -70,10 +84,14 @@ def report_after_assessment(evidence: LampEvidence) -> Iterator[Finding]:
         evidence.lamp.lamp_id,
         MEAN,
         Severity.CONTRADICTION,
-        f"report of {report.isoformat()}, assessment of {assessed.isoformat()}: the report is "
-        f"{days} days younger",
+        say(
+            "report of {report}, assessment of {assessed}: the report is {days} days younger",
+            report=report.isoformat(),
+            assessed=assessed.isoformat(),
+            days=days,
+        ),
         Decimal(days),
-        "days",
+        say("days"),
     )
 
 
@@ -98,10 +116,18 @@ def reports_shared(campaign: Campaign) -> Iterator[Finding]:
         for lamp in lamps:
             others = [other for other in lamps if other.bidder != lamp.bidder]
             if others:
-                names = listed([f"{other.lamp_id} of {other.bidder}" for other in others])
+                names = [
+                    say("{lamp} of {bidder}", lamp=other.lamp_id, bidder=other.bidder)
+                    for other in others
+                ]
                 yield _SHARED.finding(
                     lamp.lamp_id,
                     MEAN,
                     Severity.DOUBT,
-                    f"report {lamp.offer.report_no} of {lamp.bidder} also stands under {names}",
+                    say(
+                        "report {report} of {bidder} also stands under {lamps}",
+                        report=lamp.offer.report_no,
+                        bidder=lamp.bidder,
+                        lamps=listed(names),
+                    ),
                 )

@@ -8,7 +8,8 @@ from decimal import Decimal
 from generator.crosschecks.evidence import LampEvidence
 from generator.crosschecks.significance import Reading, half_digit
 from generator.crosschecks.tolerances import tolerance
-from generator.crosschecks.wording import CheckText, number, with_unit, worded
+from generator.crosschecks.wording import CheckText, number, sourced, with_unit, worded
+from generator.language import say, say_counted
 from generator.quantities import quantity
 from generator.records.figure import MEAN, Grade
 from generator.records.finding import Finding, Severity
@@ -33,21 +34,28 @@ _HIGHER_IS_BETTER = {
 _BETTER_TEXTS = {
     name: CheckText(
         f"{name.replace('_', '-')}-declared-better-than-every-unit",
-        f"Declared {quantity(name).label} better than that of every unit",
-        "A declaration that rests on other samples, an earlier batch or a calculation, or a "
-        "tolerance for market surveillance used to set the declared value.",
+        say("Declared {quantity} better than that of every unit", quantity=quantity(name).label),
+        say(
+            "A declaration that rests on other samples, an earlier batch or a calculation, or a "
+            "tolerance for market surveillance used to set the declared value."
+        ),
         (name,),
-        "eu_2019_2020, Annex IV (declared values not more favourable than the test results)",
+        sourced(
+            "eu_2019_2020",
+            say("Annex IV (declared values not more favourable than the test results)"),
+        ),
     )
     for name in _HIGHER_IS_BETTER
 }
 _CLASS_TEXT = CheckText(
     "class-declared-against-determined",
-    "Declared energy class is not the class of the values",
-    "A class of an earlier label scale, of another model of the family, or of values that were "
-    "declared elsewhere would explain it.",
+    say("Declared energy class is not the class of the values"),
+    say(
+        "A class of an earlier label scale, of another model of the family, or of values that were "
+        "declared elsewhere would explain it."
+    ),
     (_CLASS,),
-    "eu_2019_2015, Annex II",
+    sourced("eu_2019_2015", say("Annex II")),
 )
 
 
@@ -75,18 +83,29 @@ def declared_better_than_every_unit(evidence: LampEvidence) -> Iterator[Finding]
             unit = quantity(name).unit
             deviation = declared - nearest.value
             known = (
-                f"expanded uncertainty {with_unit(number(nearest.expanded, 3), unit)}"
+                say(
+                    "expanded uncertainty {expanded}",
+                    expanded=with_unit(number(nearest.expanded, 3), unit),
+                )
                 if nearest.expanded is not None
-                else "expanded uncertainty not given"
+                else say("expanded uncertainty not given")
             )
             yield _BETTER_TEXTS[name].finding(
                 evidence.lamp.lamp_id,
                 MEAN,
                 severity,
-                f"{quantity(name).label} declared as {worded(name, declared)}, best of "
-                f"{len(found)} measured {'unit' if len(found) == 1 else 'units'} "
-                f"{worded(name, nearest.value)} ({known}); difference "
-                f"{with_unit(number(deviation, 3, signed=True), unit)}",
+                say_counted(
+                    "{quantity} declared as {declared}, best of {count} measured unit {best} "
+                    "({uncertainty}); difference {difference}",
+                    "{quantity} declared as {declared}, best of {count} measured units {best} "
+                    "({uncertainty}); difference {difference}",
+                    len(found),
+                    quantity=quantity(name).label,
+                    declared=worded(name, declared),
+                    best=worded(name, nearest.value),
+                    uncertainty=known,
+                    difference=with_unit(number(deviation, 3, signed=True), unit),
+                ),
                 deviation,
                 unit,
             )
@@ -101,13 +120,21 @@ def class_against_determined(evidence: LampEvidence) -> Iterator[Finding]:
     letter = declared.strip().upper()
     steps = ord(figure.value[0]) - ord(letter[0]) if letter else 0
     if steps:
-        side = "better" if steps > 0 else "worse"
         yield _CLASS_TEXT.finding(
             evidence.lamp.lamp_id,
             MEAN,
             Severity.CONTRADICTION if steps > 0 else Severity.REMARK,
-            f"energy efficiency class declared as {letter}, class of the values {figure.value}; "
-            f"{abs(steps)} {'class' if abs(steps) == 1 else 'classes'} {side}",
+            say(
+                "energy efficiency class declared as {declared}, class of the values "
+                "{determined}; {distance}",
+                declared=letter,
+                determined=figure.value,
+                distance=(
+                    say_counted("{count} class better", "{count} classes better", steps)
+                    if steps > 0
+                    else say_counted("{count} class worse", "{count} classes worse", -steps)
+                ),
+            ),
             Decimal(steps),
-            "classes",
+            say("classes"),
         )

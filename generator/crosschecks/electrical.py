@@ -13,7 +13,8 @@ from generator.crosschecks.significance import (
     reading,
 )
 from generator.crosschecks.tolerances import tolerance
-from generator.crosschecks.wording import CheckText, number, worded
+from generator.crosschecks.wording import CheckText, number, sourced, worded
+from generator.language import Message, say
 from generator.quantities import quantity
 from generator.records.figure import MEAN, Grade
 from generator.records.finding import Finding, Severity
@@ -33,36 +34,44 @@ _THD = "thd_current_percent"
 
 _RATIO = CheckText(
     "power-factor-against-power-voltage-current",
-    "Power factor is not power over voltage times current",
-    "A displacement factor written in the column of the power factor, a peak or average current "
-    "in place of the RMS value, or values taken at different moments would explain it.",
+    say("Power factor is not power over voltage times current"),
+    say(
+        "A displacement factor written in the column of the power factor, a peak or average "
+        "current in place of the RMS value, or values taken at different moments would explain it."
+    ),
     (_PF, "power_w", "voltage_v", "current_a"),
-    "iec_60050_131, power factor",
+    sourced("iec_60050_131", say("power factor")),
 )
 _DISTORTION = CheckText(
     "power-factor-against-displacement-and-distortion",
-    "Power factor, displacement factor and distortion do not fit",
-    "A distorted supply voltage, a distortion referred to the total current instead of the "
-    "fundamental, or the two factors exchanged would explain it.",
+    say("Power factor, displacement factor and distortion do not fit"),
+    say(
+        "A distorted supply voltage, a distortion referred to the total current instead of the "
+        "fundamental, or the two factors exchanged would explain it."
+    ),
     (_PF, _DF, _THD),
-    "iec_60050_131, power factor with a sinusoidal voltage",
+    sourced("iec_60050_131", say("power factor with a sinusoidal voltage")),
 )
 _ABOVE_DISPLACEMENT = CheckText(
     "power-factor-above-displacement-factor",
-    "Power factor above the displacement factor",
-    "With a sinusoidal voltage the power factor is the displacement factor reduced by the "
-    "distortion. The two columns exchanged, or a distorted supply voltage, would explain it.",
+    say("Power factor above the displacement factor"),
+    say(
+        "With a sinusoidal voltage the power factor is the displacement factor reduced by the "
+        "distortion. The two columns exchanged, or a distorted supply voltage, would explain it."
+    ),
     (_PF, _DF),
-    "iec_60050_131, power factor with a sinusoidal voltage",
+    sourced("iec_60050_131", say("power factor with a sinusoidal voltage")),
 )
 _MAINS_TEXTS = {
     name: CheckText(
         f"{word}-mains-against-report",
-        f"Mains capture and report differ in {quantity(name).label}",
-        "A capture of another unit or operating point, a probe factor not applied, a capture that "
-        "is not a whole number of periods, or a time offset between its channels.",
+        say("Mains capture and report differ in {quantity}", quantity=quantity(name).label),
+        say(
+            "A capture of another unit or operating point, a probe factor not applied, a capture "
+            "that is not a whole number of periods, or a time offset between its channels."
+        ),
         (name,),
-        f"{quantity(name).source}, definition",
+        sourced(quantity(name).source, say("definition")),
     )
     for name, word in (
         ("power_w", "power"),
@@ -76,11 +85,20 @@ _MAINS_TEXTS = {
 }
 _STANDBY = CheckText(
     "standby-above-on-power",
-    "Standby power not below the power in use",
-    "The columns exchanged, standby power written in milliwatts, or the power taken at a dimmed "
-    "level would explain it.",
+    say("Standby power not below the power in use"),
+    say(
+        "The columns exchanged, standby power written in milliwatts, or the power taken at a "
+        "dimmed level would explain it."
+    ),
     ("standby_power_w", "networked_standby_power_w", "power_w"),
-    "eu_2019_2020, definitions of standby and on-mode power",
+    sourced("eu_2019_2020", say("definitions of standby and on-mode power")),
+)
+_FROM_CAPTURE = say("computed from the mains capture as {computed}")
+_STANDBY_MEASURED = say(
+    "measured {quantity} {standby}, measured power in use {power}; {difference} W above it"
+)
+_STANDBY_DECLARED = say(
+    "declared {quantity} {standby}, declared power in use {power}; {difference} W above it"
 )
 
 
@@ -98,10 +116,16 @@ def power_factor_against_ratio(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"power factor reported as {worded(_PF, factor.value)}, "
-                f"{worded('power_w', power.value)} / ({worded('voltage_v', voltage.value)} × "
-                f"{worded('current_a', current.value)}) is {worded(_PF, ratio.value)}; "
-                f"{outcome.words('')}",
+                say(
+                    "power factor reported as {factor}, {power} / ({voltage} × {current}) is "
+                    "{ratio}; {outcome}",
+                    factor=worded(_PF, factor.value),
+                    power=worded("power_w", power.value),
+                    voltage=worded("voltage_v", voltage.value),
+                    current=worded("current_a", current.value),
+                    ratio=worded(_PF, ratio.value),
+                    outcome=outcome.words(""),
+                ),
                 outcome.deviation,
             )
 
@@ -134,9 +158,15 @@ def power_factor_against_displacement_and_distortion(evidence: LampEvidence) -> 
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"power factor reported as {worded(_PF, factor.value)}, displacement factor "
-                f"{worded(_DF, displacement.value)} and current THD {worded(_THD, thd.value)} "
-                f"give {worded(_PF, expected.value)}; {outcome.words('')}",
+                say(
+                    "power factor reported as {factor}, displacement factor {displacement} and "
+                    "current THD {distortion} give {expected}; {outcome}",
+                    factor=worded(_PF, factor.value),
+                    displacement=worded(_DF, displacement.value),
+                    distortion=worded(_THD, thd.value),
+                    expected=worded(_PF, expected.value),
+                    outcome=outcome.words(""),
+                ),
                 outcome.deviation,
             )
 
@@ -154,8 +184,13 @@ def power_factor_above_displacement(evidence: LampEvidence) -> Iterator[Finding]
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"power factor reported as {worded(_PF, factor.value)}, displacement factor as "
-                f"{worded(_DF, displacement.value)}; {outcome.words('')}",
+                say(
+                    "power factor reported as {factor}, displacement factor as {displacement}; "
+                    "{outcome}",
+                    factor=worded(_PF, factor.value),
+                    displacement=worded(_DF, displacement.value),
+                    outcome=outcome.words(""),
+                ),
                 outcome.deviation,
             )
 
@@ -163,11 +198,11 @@ def power_factor_above_displacement(evidence: LampEvidence) -> Iterator[Finding]
 def mains_against_report(evidence: LampEvidence) -> Iterator[Finding]:
     """Electrical values of the mains captures against the reported ones."""
     for name, text in _MAINS_TEXTS.items():
-        yield from computed_against_reported(evidence, text, name, "the mains capture")
+        yield from computed_against_reported(evidence, text, name, _FROM_CAPTURE)
 
 
 def _standby(
-    lamp_id: str, unit_id: str, grade: str, name: str, standby: Reading, power: Reading
+    lamp_id: str, unit_id: str, words: Message, name: str, standby: Reading, power: Reading
 ) -> Iterator[Finding]:
     if standby.value >= power.value > 0:
         deviation = standby.value - power.value
@@ -175,8 +210,12 @@ def _standby(
             lamp_id,
             unit_id,
             Severity.CONTRADICTION,
-            f"{grade} {quantity(name).label} {worded(name, standby.value)}, {grade} power in use "
-            f"{worded('power_w', power.value)}; {number(deviation, 3)} W above it",
+            words.format(
+                quantity=quantity(name).label,
+                standby=worded(name, standby.value),
+                power=worded("power_w", power.value),
+                difference=number(deviation, 3),
+            ),
             deviation,
             "W",
         )
@@ -189,9 +228,10 @@ def standby_above_on_power(evidence: LampEvidence) -> Iterator[Finding]:
         for unit in evidence.units:
             standby, power = evidence.measured(unit, name), evidence.measured(unit, "power_w")
             if standby is not None and power is not None:
-                yield from _standby(lamp.lamp_id, unit.unit_id, "measured", name, standby, power)
+                place = (lamp.lamp_id, unit.unit_id)
+                yield from _standby(*place, _STANDBY_MEASURED, name, standby, power)
         declared, use = lamp.declared.get(name), lamp.declared.get("power_w")
         if declared is not None and use is not None:
             yield from _standby(
-                lamp.lamp_id, MEAN, "declared", name, Reading(declared), Reading(use)
+                lamp.lamp_id, MEAN, _STANDBY_DECLARED, name, Reading(declared), Reading(use)
             )

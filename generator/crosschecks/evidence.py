@@ -10,6 +10,7 @@ from decimal import Decimal
 from generator.crosschecks.significance import Reading, compared, reading
 from generator.crosschecks.tolerances import tolerance
 from generator.crosschecks.wording import CheckText, worded
+from generator.language import Message, say
 from generator.quantities import quantity
 from generator.records.campaign import Campaign
 from generator.records.figure import MEAN, Figure, FigureSet, Grade
@@ -122,7 +123,12 @@ def gathered(campaign: Campaign, figures: FigureSet) -> tuple[LampEvidence, ...]
 
 
 def computed_against_reported(
-    evidence: LampEvidence, text: CheckText, name: str, origin: str, *, zonal: bool | None = None
+    evidence: LampEvidence,
+    text: CheckText,
+    name: str,
+    origin: Message,
+    *,
+    zonal: bool | None = None,
 ) -> Iterator[Finding]:
     """Hold the computed value of one quantity against the reported one, unit by unit.
 
@@ -135,7 +141,7 @@ def computed_against_reported(
     name
         The quantity.
     origin
-        What the value was computed from, in words.
+        What the value was computed from, in words with a place ``{computed}`` for it.
     zonal
         Whether the value sought is that of zonal integration; ``None`` for either.
 
@@ -156,9 +162,13 @@ def computed_against_reported(
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"{quantity(name).label} reported as {worded(name, reported.value)}, "
-                f"computed from {origin} as {worded(name, computed.value)}; "
-                f"{outcome.words(unit_of_quantity)}",
+                say(
+                    "{quantity} reported as {reported}, {origin}; {outcome}",
+                    quantity=quantity(name).label,
+                    reported=worded(name, reported.value),
+                    origin=origin.format(computed=worded(name, computed.value)),
+                    outcome=outcome.words(unit_of_quantity),
+                ),
                 outcome.deviation,
                 unit_of_quantity,
             )

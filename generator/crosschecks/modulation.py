@@ -8,7 +8,8 @@ from decimal import Decimal
 from generator.crosschecks.evidence import LampEvidence, computed_against_reported
 from generator.crosschecks.significance import half_digit, reading
 from generator.crosschecks.tolerances import NO_SOURCE, tolerance
-from generator.crosschecks.wording import CheckText, number, worded
+from generator.crosschecks.wording import CheckText, number, sourced, worded
+from generator.language import say
 from generator.quantities import quantity
 from generator.records.figure import Grade
 from generator.records.finding import Finding, Severity
@@ -27,38 +28,55 @@ _MAINS_HZ = (Decimal(50), Decimal(60))
 _MODULATION_TEXTS = {
     name: CheckText(
         f"{name.replace('_', '-')}-light-against-report",
-        f"{quantity(name).label[0].upper()}{quantity(name).label[1:]} of the light record and of "
-        "the report differ",
-        "Another bandwidth, length or sampling rate of the record, an offset of the light sensor, "
-        "a dimmer or another supply voltage, or another edition of the method.",
+        title,
+        say(
+            "Another bandwidth, length or sampling rate of the record, an offset of the light "
+            "sensor, a dimmer or another supply voltage, or another edition of the method."
+        ),
         (name,),
-        f"{quantity(name).source}, definition",
+        sourced(quantity(name).source, say("definition")),
     )
-    for name in (_PERCENT_FLICKER, "flicker_index", "svm", "pst_lm")
+    for name, title in (
+        (
+            _PERCENT_FLICKER,
+            say("Percent flicker (modulation depth) of the light record and of the report differ"),
+        ),
+        ("flicker_index", say("Flicker index of the light record and of the report differ")),
+        (
+            "svm",
+            say("Stroboscopic visibility measure of the light record and of the report differ"),
+        ),
+        ("pst_lm", say("Short-term flicker of light of the light record and of the report differ")),
+    )
 }
 _MAINS_MULTIPLE = CheckText(
     "flicker-frequency-against-mains",
-    "Light modulation is not at twice the mains frequency",
-    "Modulation above it comes from a dimmer or control gear that switches by itself; modulation "
-    "at the mains frequency from half-waves that differ. Otherwise a record on another mains "
-    "frequency or a time column in another unit would explain it.",
+    say("Light modulation is not at twice the mains frequency"),
+    say(
+        "Modulation above it comes from a dimmer or control gear that switches by itself; "
+        "modulation at the mains frequency from half-waves that differ. Otherwise a record on "
+        "another mains frequency or a time column in another unit would explain it."
+    ),
     (_FREQUENCY, "frequency_hz"),
     NO_SOURCE,
 )
 _INDEX_BOUND = CheckText(
     "flicker-index-above-bound",
-    "Flicker index too high for the percent flicker",
-    "For a given percent flicker the flicker index is highest for light that switches between "
-    "two levels. Values of two records, or one of the two in another unit, would explain it.",
+    say("Flicker index too high for the percent flicker"),
+    say(
+        "For a given percent flicker the flicker index is highest for light that switches between "
+        "two levels. Values of two records, or one of the two in another unit, would explain it."
+    ),
     ("flicker_index", _PERCENT_FLICKER),
-    "iec_60050_845, definitions of both; the bound follows from them",
+    sourced("iec_60050_845", say("definitions of both; the bound follows from them")),
 )
+_FROM_RECORD = say("computed from the light record as {computed}")
 
 
 def modulation_against_report(evidence: LampEvidence) -> Iterator[Finding]:
     """Modulation values of the light records against the reported ones."""
     for name, text in _MODULATION_TEXTS.items():
-        yield from computed_against_reported(evidence, text, name, "the light record")
+        yield from computed_against_reported(evidence, text, name, _FROM_RECORD)
 
 
 def _mains_frequency(evidence: LampEvidence, unit: Unit) -> Decimal | None:
@@ -96,11 +114,18 @@ def flicker_frequency_against_mains(evidence: LampEvidence) -> Iterator[Finding]
             evidence.lamp.lamp_id,
             unit.unit_id,
             severity,
-            f"light modulation at {worded(_FREQUENCY, light.value)} "
-            f"({worded(_PERCENT_FLICKER, depth.value)} percent flicker), twice the mains frequency "
-            f"of {worded('frequency_hz', mains_hz)} is {number(2 * mains_hz)} Hz; difference "
-            f"{number(deviation, 3, signed=True)} Hz, allowed "
-            f"{tolerance(_FREQUENCY).words} ({tolerance(_FREQUENCY).reason})",
+            say(
+                "light modulation at {light} ({depth} percent flicker), twice the mains "
+                "frequency of {mains} is {twice} Hz; difference {difference} Hz, allowed "
+                "{allowed} ({reason})",
+                light=worded(_FREQUENCY, light.value),
+                depth=worded(_PERCENT_FLICKER, depth.value),
+                mains=worded("frequency_hz", mains_hz),
+                twice=number(2 * mains_hz),
+                difference=number(deviation, 3, signed=True),
+                allowed=tolerance(_FREQUENCY).words,
+                reason=tolerance(_FREQUENCY).reason,
+            ),
             deviation,
             "Hz",
         )
@@ -128,8 +153,13 @@ def flicker_index_above_bound(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 Severity.IMPOSSIBLE,
-                f"flicker index reported as {worded('flicker_index', index.value)}, a percent "
-                f"flicker of {worded(_PERCENT_FLICKER, depth.value)} allows "
-                f"{number(bound, 3)} at most; {number(deviation, 2)} above it",
+                say(
+                    "flicker index reported as {index}, a percent flicker of {depth} allows "
+                    "{bound} at most; {difference} above it",
+                    index=worded("flicker_index", index.value),
+                    depth=worded(_PERCENT_FLICKER, depth.value),
+                    bound=number(bound, 3),
+                    difference=number(deviation, 2),
+                ),
                 deviation,
             )

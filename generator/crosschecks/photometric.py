@@ -16,7 +16,8 @@ from generator.crosschecks.significance import (
     reading,
 )
 from generator.crosschecks.tolerances import NO_SOURCE, tolerance
-from generator.crosschecks.wording import CheckText, worded
+from generator.crosschecks.wording import CheckText, sourced, worded
+from generator.language import Message, say
 from generator.quantities import quantity
 from generator.records.figure import MEAN, Grade
 from generator.records.finding import Finding, Severity
@@ -44,113 +45,152 @@ _MAXIMUM_LM_PER_W = Decimal("683.002")
 
 _FLUX_SPECTRUM = CheckText(
     "flux-spectrum-against-report",
-    "Flux from the spectrum and reported flux differ",
-    "A spectrum calibrated separately from the flux, one in another unit or scale, columns of two "
-    "units exchanged, or a flux corrected for a factor that the spectrum was not.",
+    say("Flux from the spectrum and reported flux differ"),
+    say(
+        "A spectrum calibrated separately from the flux, one in another unit or scale, columns of "
+        "two units exchanged, or a flux corrected for a factor that the spectrum was not."
+    ),
     (_FLUX,),
-    "cie_s025, total luminous flux from the spectral radiant flux",
+    sourced("cie_s025", say("total luminous flux from the spectral radiant flux")),
 )
 _FLUX_DISTRIBUTION = CheckText(
     "flux-distribution-against-report",
-    "Flux from the intensity distribution and flux of the unit differ",
-    "Another unit or another operating point on the goniophotometer than in the sphere, planes "
-    "or angles missing from the distribution, or spatial non-uniformity of the sphere.",
+    say("Flux from the intensity distribution and flux of the unit differ"),
+    say(
+        "Another unit or another operating point on the goniophotometer than in the sphere, planes "
+        "or angles missing from the distribution, or spatial non-uniformity of the sphere."
+    ),
     (_FLUX, "flux_120deg_lm", "flux_120deg_fraction"),
-    "cie_84, luminous flux from luminous intensities",
+    sourced("cie_84", say("luminous flux from luminous intensities")),
 )
 _DISTRIBUTION_TEXTS = {
     name: CheckText(
         f"{word}-distribution-against-report",
-        f"{quantity(name).label.capitalize()} computed and reported differ",
-        "Another definition of the angle or cone, another unit on the goniophotometer, or a "
-        "distribution with its axis off the axis of the lamp.",
+        title,
+        say(
+            "Another definition of the angle or cone, another unit on the goniophotometer, or a "
+            "distribution with its axis off the axis of the lamp."
+        ),
         (name,),
-        f"{quantity(name).source}, definition",
+        sourced(quantity(name).source, say("definition")),
     )
-    for word, name in (
-        ("useful-flux", "useful_luminous_flux_lm"),
-        ("beam-angle", "beam_angle_deg"),
-        ("peak-intensity", "peak_intensity_cd"),
+    for word, name, title in (
+        (
+            "useful-flux",
+            "useful_luminous_flux_lm",
+            say("Useful luminous flux computed and reported differ"),
+        ),
+        ("beam-angle", "beam_angle_deg", say("Beam angle computed and reported differ")),
+        (
+            "peak-intensity",
+            "peak_intensity_cd",
+            say("Peak luminous intensity computed and reported differ"),
+        ),
     )
 }
 _EFFICACY_RATIO = CheckText(
     "efficacy-against-flux-and-power",
-    "Efficacy is not flux divided by power",
-    "Flux, power and efficacy taken from different units or operating points, or efficacy "
-    "referred to the power of the module without its control gear.",
+    say("Efficacy is not flux divided by power"),
+    say(
+        "Flux, power and efficacy taken from different units or operating points, or efficacy "
+        "referred to the power of the module without its control gear."
+    ),
     (_EFFICACY, _FLUX, _POWER),
-    "cie_s025, definition of luminous efficacy",
+    sourced("cie_s025", say("definition of luminous efficacy")),
 )
 _ABOVE_LER = CheckText(
     "efficacy-above-ler",
-    "Efficacy above what the spectrum itself allows",
-    "The lamp would have to give more light than its spectrum carries at full conversion of "
-    "power. A flux in another unit, a power without control gear, or a spectrum of another lamp "
-    "would explain it.",
+    say("Efficacy above what the spectrum itself allows"),
+    say(
+        "The lamp would have to give more light than its spectrum carries at full conversion of "
+        "power. A flux in another unit, a power without control gear, or a spectrum of another "
+        "lamp would explain it."
+    ),
     (_EFFICACY, _LER, _FLUX, _POWER),
-    "cie_eilv, luminous efficacy of radiation",
+    sourced("cie_eilv", say("luminous efficacy of radiation")),
 )
 _DECLARED_ABOVE_LER = CheckText(
     "declared-efficacy-above-ler",
-    "Declared efficacy above what the spectrum allows",
-    "A declared flux or power of another operating mode, a slip in one of the two, or a spectrum "
-    "of another lamp would explain it.",
+    say("Declared efficacy above what the spectrum allows"),
+    say(
+        "A declared flux or power of another operating mode, a slip in one of the two, or a "
+        "spectrum of another lamp would explain it."
+    ),
     (_EFFICACY, _LER, _FLUX, _POWER),
-    "cie_eilv, luminous efficacy of radiation",
+    sourced("cie_eilv", say("luminous efficacy of radiation")),
 )
 _ABOVE_MAXIMUM = CheckText(
     "efficacy-above-maximum",
-    "Efficacy above that of any radiation",
-    "No light has a higher luminous efficacy than monochromatic radiation at 555 nm. A slip in "
-    "flux or power, or in their units, would explain it.",
+    say("Efficacy above that of any radiation"),
+    say(
+        "No light has a higher luminous efficacy than monochromatic radiation at 555 nm. A slip in "
+        "flux or power, or in their units, would explain it."
+    ),
     (_EFFICACY, _FLUX, _POWER),
-    "si_brochure, luminous efficacy Kcd",
+    sourced("si_brochure", say("luminous efficacy Kcd")),
 )
 _EFFICIENCY = CheckText(
     "radiant-efficiency-above-one",
-    "More radiant flux than electrical power",
-    "A spectrum in another unit than W/nm, on a relative scale, or a power without control gear "
-    "would explain it.",
+    say("More radiant flux than electrical power"),
+    say(
+        "A spectrum in another unit than W/nm, on a relative scale, or a power without control "
+        "gear would explain it."
+    ),
     ("radiant_efficiency", "radiant_flux_w", _POWER),
-    "cie_eilv, radiant efficiency",
+    sourced("cie_eilv", say("radiant efficiency")),
 )
 _USEFUL = CheckText(
     "useful-flux-above-flux",
-    "Useful flux above total flux",
-    "The useful flux is the part of the total within a cone. The two columns exchanged, or the "
-    "two taken from different units or instruments, would explain it.",
+    say("Useful flux above total flux"),
+    say(
+        "The useful flux is the part of the total within a cone. The two columns exchanged, or the "
+        "two taken from different units or instruments, would explain it."
+    ),
     ("useful_luminous_flux_lm", _FLUX),
-    "eu_2019_2015, definition of useful luminous flux",
+    sourced("eu_2019_2015", say("definition of useful luminous flux")),
 )
 _PEAK = CheckText(
     "peak-intensity-below-average",
-    "Peak intensity below the average over all directions",
-    "The highest intensity cannot be lower than flux divided by 4π. A slip in one of the two, or "
-    "a distribution scaled to another flux, would explain it.",
+    say("Peak intensity below the average over all directions"),
+    say(
+        "The highest intensity cannot be lower than flux divided by 4π. A slip in one of the two, "
+        "or a distribution scaled to another flux, would explain it."
+    ),
     ("peak_intensity_cd", _FLUX),
-    "cie_eilv, luminous flux and luminous intensity",
+    sourced("cie_eilv", say("luminous flux and luminous intensity")),
 )
 _ENDURANCE = CheckText(
     "endurance-start-against-report",
-    "Flux at the start of the ageing test and reported flux differ",
-    "The ageing test run on other units, at another supply or temperature, or after a burn-in "
-    "that the report does not count, would explain it.",
+    say("Flux at the start of the ageing test and reported flux differ"),
+    say(
+        "The ageing test run on other units, at another supply or temperature, or after a burn-in "
+        "that the report does not count, would explain it."
+    ),
     (_FLUX,),
     NO_SOURCE,
+)
+_FROM_SPECTRUM = say("computed from the spectrum as {computed}")
+_FROM_DISTRIBUTION = say("computed from the intensity distribution as {computed}")
+_BESIDE_REPORTED = say(
+    "luminous flux from the intensity distribution {zonal}, reported {other}; {outcome}"
+)
+_BESIDE_SPECTRUM = say(
+    "luminous flux from the intensity distribution {zonal}, computed from the spectrum {other}; "
+    "{outcome}"
 )
 
 
 def flux_spectrum_against_report(evidence: LampEvidence) -> Iterator[Finding]:
     """Flux computed from the spectrum against the reported flux."""
     yield from computed_against_reported(
-        evidence, _FLUX_SPECTRUM, _FLUX, "the spectrum", zonal=False
+        evidence, _FLUX_SPECTRUM, _FLUX, _FROM_SPECTRUM, zonal=False
     )
 
 
 def distribution_against_report(evidence: LampEvidence) -> Iterator[Finding]:
     """Useful flux, beam angle and peak intensity of the distribution against reported ones."""
     for name, text in _DISTRIBUTION_TEXTS.items():
-        yield from computed_against_reported(evidence, text, name, "the intensity distribution")
+        yield from computed_against_reported(evidence, text, name, _FROM_DISTRIBUTION)
 
 
 def _distribution_flux(evidence: LampEvidence, unit: Unit) -> Reading | None:
@@ -165,19 +205,19 @@ def _distribution_flux(evidence: LampEvidence, unit: Unit) -> Reading | None:
     return Reading(cone.value / share.value, cone.expanded and cone.expanded / share.value)
 
 
-def _other_flux(evidence: LampEvidence, unit: Unit) -> tuple[Reading | None, str]:
-    """Reported flux, else that of the spectrum, with its name."""
+def _other_flux(evidence: LampEvidence, unit: Unit) -> tuple[Reading | None, Message]:
+    """Reported flux, else that of the spectrum, with what is then said."""
     reported = evidence.reported(unit, _FLUX)
     if reported is not None:
-        return reported, "reported"
-    return evidence.computed(unit, _FLUX, zonal=False), "computed from the spectrum"
+        return reported, _BESIDE_REPORTED
+    return evidence.computed(unit, _FLUX, zonal=False), _BESIDE_SPECTRUM
 
 
 def flux_distribution_against_report(evidence: LampEvidence) -> Iterator[Finding]:
     """Flux of the intensity distribution against that of the sphere."""
     for unit in evidence.units:
         zonal = _distribution_flux(evidence, unit)
-        other, grade = _other_flux(evidence, unit)
+        other, words = _other_flux(evidence, unit)
         if zonal is None or other is None:
             continue
         outcome = compared(zonal, other, tolerance(_FLUX))
@@ -186,8 +226,11 @@ def flux_distribution_against_report(evidence: LampEvidence) -> Iterator[Finding
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"luminous flux from the intensity distribution {worded(_FLUX, zonal.value)}, "
-                f"{grade} {worded(_FLUX, other.value)}; {outcome.words('lm')}",
+                words.format(
+                    zonal=worded(_FLUX, zonal.value),
+                    other=worded(_FLUX, other.value),
+                    outcome=outcome.words("lm"),
+                ),
                 outcome.deviation,
                 "lm",
             )
@@ -216,9 +259,15 @@ def efficacy_against_ratio(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"efficacy reported as {worded(_EFFICACY, efficacy.value)}, "
-                f"{worded(_FLUX, flux.value)} divided by {worded(_POWER, power.value)} is "
-                f"{worded(_EFFICACY, ratio.value)}; {outcome.words('lm/W')}",
+                say(
+                    "efficacy reported as {efficacy}, {flux} divided by {power} is {ratio}; "
+                    "{outcome}",
+                    efficacy=worded(_EFFICACY, efficacy.value),
+                    flux=worded(_FLUX, flux.value),
+                    power=worded(_POWER, power.value),
+                    ratio=worded(_EFFICACY, ratio.value),
+                    outcome=outcome.words("lm/W"),
+                ),
                 outcome.deviation,
                 "lm/W",
             )
@@ -244,9 +293,13 @@ def efficacy_above_ler(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 severity,
-                f"luminous efficacy {worded(_EFFICACY, efficacy.value)} (flux divided by power), "
-                f"luminous efficacy of the radiation itself {worded(_LER, ler.value)}; "
-                f"{outcome.words('lm/W')}",
+                say(
+                    "luminous efficacy {efficacy} (flux divided by power), luminous efficacy of "
+                    "the radiation itself {radiation}; {outcome}",
+                    efficacy=worded(_EFFICACY, efficacy.value),
+                    radiation=worded(_LER, ler.value),
+                    outcome=outcome.words("lm/W"),
+                ),
                 outcome.deviation,
                 "lm/W",
             )
@@ -269,9 +322,15 @@ def declared_efficacy_above_ler(evidence: LampEvidence) -> Iterator[Finding]:
             evidence.lamp.lamp_id,
             MEAN,
             severity,
-            f"declared {worded(_FLUX, flux)} divided by declared {worded(_POWER, power)} is "
-            f"{worded(_EFFICACY, efficacy.value)}, luminous efficacy of the radiation itself "
-            f"{worded(_LER, ler.value)}; {outcome.words('lm/W')}",
+            say(
+                "declared {flux} divided by declared {power} is {efficacy}, luminous efficacy of "
+                "the radiation itself {radiation}; {outcome}",
+                flux=worded(_FLUX, flux),
+                power=worded(_POWER, power),
+                efficacy=worded(_EFFICACY, efficacy.value),
+                radiation=worded(_LER, ler.value),
+                outcome=outcome.words("lm/W"),
+            ),
             outcome.deviation,
             "lm/W",
         )
@@ -291,9 +350,13 @@ def efficacy_above_maximum(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 severity,
-                f"luminous efficacy {worded(_EFFICACY, efficacy.value)} (flux divided by power), "
-                f"highest of any radiation {worded(_EFFICACY, highest.value)}; "
-                f"{outcome.words('lm/W')}",
+                say(
+                    "luminous efficacy {efficacy} (flux divided by power), highest of any "
+                    "radiation {highest}; {outcome}",
+                    efficacy=worded(_EFFICACY, efficacy.value),
+                    highest=worded(_EFFICACY, highest.value),
+                    outcome=outcome.words("lm/W"),
+                ),
                 outcome.deviation,
                 "lm/W",
             )
@@ -315,8 +378,12 @@ def radiant_efficiency_above_one(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 severity,
-                f"radiant flux divided by electrical power is {worded(name, efficiency.value)}, "
-                f"at most 1 is possible; {outcome.words('')}",
+                say(
+                    "radiant flux divided by electrical power is {efficiency}, at most 1 is "
+                    "possible; {outcome}",
+                    efficiency=worded(name, efficiency.value),
+                    outcome=outcome.words(""),
+                ),
                 outcome.deviation,
             )
 
@@ -334,8 +401,12 @@ def useful_flux_above_flux(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"useful luminous flux {worded(name, useful.value)}, total luminous flux "
-                f"{worded(_FLUX, total.value)}; {outcome.words('lm')}",
+                say(
+                    "useful luminous flux {useful}, total luminous flux {total}; {outcome}",
+                    useful=worded(name, useful.value),
+                    total=worded(_FLUX, total.value),
+                    outcome=outcome.words("lm"),
+                ),
                 outcome.deviation,
                 "lm",
             )
@@ -356,8 +427,13 @@ def peak_intensity_below_average(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 Severity.IMPOSSIBLE,
-                f"{worded(_FLUX, flux.value)} over 4π sr is {worded(name, mean.value)} on average, "
-                f"peak intensity {worded(name, peak.value)}; {outcome.words('cd')}",
+                say(
+                    "{flux} over 4π sr is {mean} on average, peak intensity {peak}; {outcome}",
+                    flux=worded(_FLUX, flux.value),
+                    mean=worded(name, mean.value),
+                    peak=worded(name, peak.value),
+                    outcome=outcome.words("cd"),
+                ),
                 outcome.deviation,
                 "cd",
             )
@@ -380,8 +456,13 @@ def endurance_start_against_report(evidence: LampEvidence) -> Iterator[Finding]:
                 evidence.lamp.lamp_id,
                 unit.unit_id,
                 outcome.severity,
-                f"luminous flux {worded(_FLUX, start.value)} at 0 h of the ageing test, "
-                f"{worded(_FLUX, reported.value)} measured otherwise; {outcome.words('lm')}",
+                say(
+                    "luminous flux {start} at 0 h of the ageing test, {other} measured "
+                    "otherwise; {outcome}",
+                    start=worded(_FLUX, start.value),
+                    other=worded(_FLUX, reported.value),
+                    outcome=outcome.words("lm"),
+                ),
                 outcome.deviation,
                 "lm",
             )

@@ -19,6 +19,7 @@ from generator.crosschecks.curves import (
 )
 from generator.crosschecks.tolerances import NO_SOURCE, tolerance
 from generator.crosschecks.wording import CheckText, listed, named, number
+from generator.language import Numeral, say
 from generator.records.campaign import Campaign
 from generator.records.figure import exact
 from generator.records.finding import Finding, Severity
@@ -42,43 +43,71 @@ class _Kind:
     bidders: CheckText
 
 
-def _kind(check: str, word: str, reason: str) -> _Kind:
-    title = f"The same {word} under"
+_COPIED = say(
+    "A column copied from one unit to another, or one measurement entered for both, would explain "
+    "it; separate measurements differ by more than this."
+)
+_COMMON_EMITTER = (
+    say("A common emitter type, or one measurement used for a family of models, would explain it."),
+    say(
+        "A common emitter type, one maker's lamp and report offered by two bidders, or copied "
+        "data, would explain it; separate measurements differ by more than this."
+    ),
+)
+_COMMON_GEAR = (
+    say("A common control gear, or one measurement used for a family of models, would explain it."),
+    say(
+        "A common control gear, one maker's lamp and report offered by two bidders, or copied "
+        "data, would explain it; separate measurements differ by more than this."
+    ),
+)
+
+
+def _kind(check: str, word: str, titles: tuple[str, str, str], reasons: tuple[str, str]) -> _Kind:
+    """Texts of one kind of curve, each relation in turn: units, lamps of a bidder, bidders."""
+    units, family, bidders = titles
     return _Kind(
         word,
-        CheckText(
-            f"{check}-same-between-units",
-            f"{title} two units",
-            "A column copied from one unit to another, or one measurement entered for both, would "
-            "explain it; separate measurements differ by more than this.",
-            (),
-            NO_SOURCE,
-        ),
-        CheckText(
-            f"{check}-same-within-bidder",
-            f"{title} two lamps of the bidder",
-            f"{reason}, or one measurement used for a family of models, would explain it.",
-            (),
-            NO_SOURCE,
-        ),
-        CheckText(
-            f"{check}-same-between-bidders",
-            f"{title} two bidders",
-            f"{reason}, one maker's lamp and report offered by two bidders, or copied data, would "
-            "explain it; separate measurements differ by more than this.",
-            (),
-            NO_SOURCE,
-        ),
+        CheckText(f"{check}-same-between-units", units, _COPIED, (), NO_SOURCE),
+        CheckText(f"{check}-same-within-bidder", family, reasons[0], (), NO_SOURCE),
+        CheckText(f"{check}-same-between-bidders", bidders, reasons[1], (), NO_SOURCE),
     )
 
 
-_SPECTRUM = _kind("spectrum", "spectrum", "A common emitter type")
-_LIGHT = _kind("light", "light record", "A common control gear")
-_MAINS = _kind("mains", "mains current", "A common control gear")
+_SPECTRUM = _kind(
+    "spectrum",
+    say("spectrum"),
+    (
+        say("The same spectrum under two units"),
+        say("The same spectrum under two lamps of the bidder"),
+        say("The same spectrum under two bidders"),
+    ),
+    _COMMON_EMITTER,
+)
+_LIGHT = _kind(
+    "light",
+    say("light record"),
+    (
+        say("The same light record under two units"),
+        say("The same light record under two lamps of the bidder"),
+        say("The same light record under two bidders"),
+    ),
+    _COMMON_GEAR,
+)
+_MAINS = _kind(
+    "mains",
+    say("mains current"),
+    (
+        say("The same mains current under two units"),
+        say("The same mains current under two lamps of the bidder"),
+        say("The same mains current under two bidders"),
+    ),
+    _COMMON_GEAR,
+)
 _SPECTRUM_NEAR = CheckText(
     "spectrum-near-between-bidders",
-    "Nearly the same spectrum under two bidders",
-    "Emitters of one type in both lamps would explain it, which is common.",
+    say("Nearly the same spectrum under two bidders"),
+    say("Emitters of one type in both lamps would explain it, which is common."),
     (),
     NO_SOURCE,
 )
@@ -90,6 +119,7 @@ def _pair(
     place: int,
     others: list[int],
     nearest: Array,
+    kind: _Kind,
     limit: str,
 ) -> tuple[str, str, Decimal]:
     """Unit, text and difference [percent] of the nearest other lamp, the rest by name."""
@@ -102,21 +132,33 @@ def _pair(
         for other in others
         if other != closest_other
     ]
-    tail = f"; the same goes for {listed(rest)}" if rest else ""
-    text = (
-        f"and that of {named(other_lamp, other_unit)} ({lamps[other_lamp].bidder}) differ by "
-        f"{_percent(percent)} % RMS after scaling, over {table.points}"
+    text = say(
+        "{curve} and that of {other} ({bidder}) differ by {percent} % RMS after scaling, over "
+        "{points}, {limit}",
+        curve=kind.word,
+        other=named(other_lamp, other_unit),
+        bidder=lamps[other_lamp].bidder,
+        percent=_percent(percent),
+        points=table.points,
+        limit=limit,
     )
-    return unit, f"{text}{limit}{tail}", percent
+    if rest:
+        text = say("{text}; the same goes for {lamps}", text=text, lamps=listed(rest))
+    return unit, text, percent
 
 
-def _percent(value: Decimal) -> str:
+def _percent(value: Decimal) -> Numeral:
     return number(value.quantize(Decimal("0.0001")), 2)
 
 
-def _limit(name: str) -> str:
-    limit = tolerance(name)
-    return f", taken as the same up to {limit.words} ({limit.reason})"
+def _same_limit() -> str:
+    limit = tolerance(_SAME)
+    return say("taken as the same up to {limit} ({reason})", limit=limit.words, reason=limit.reason)
+
+
+def _near_limit() -> str:
+    limit = tolerance(_NEAR)
+    return say("named up to {limit} ({reason})", limit=limit.words, reason=limit.reason)
 
 
 def _of_table(table: CurveTable, lamps: dict[str, Lamp], kind: _Kind) -> Iterator[Finding]:
@@ -131,8 +173,16 @@ def _of_table(table: CurveTable, lamps: dict[str, Lamp], kind: _Kind) -> Iterato
                 lamp_id,
                 unit,
                 Severity.DOUBT,
-                f"{kind.word} of units {unit} and {other} differ by {_percent(percent)} % RMS "
-                f"after scaling, over {table.points}{_limit(_SAME)}",
+                say(
+                    "{curve} of units {unit} and {other} differ by {percent} % RMS after "
+                    "scaling, over {points}, {limit}",
+                    curve=kind.word,
+                    unit=unit,
+                    other=other,
+                    percent=_percent(percent),
+                    points=table.points,
+                    limit=_same_limit(),
+                ),
                 percent,
                 "%",
             )
@@ -147,9 +197,10 @@ def _of_table(table: CurveTable, lamps: dict[str, Lamp], kind: _Kind) -> Iterato
                 if other != place and (lamps[table.lamp_ids[other]].bidder == bidder) is own
             ]
             if others:
-                limit = _limit(_SAME)
-                unit, words, percent = _pair(table, lamps, place, others, nearest, limit)
-                yield text.finding(lamp_id, unit, severity, f"{kind.word} {words}", percent, "%")
+                unit, words, percent = _pair(
+                    table, lamps, place, others, nearest, kind, _same_limit()
+                )
+                yield text.finding(lamp_id, unit, severity, words, percent, "%")
         if kind is _SPECTRUM:
             yield from _near(table, lamps, place, nearest)
 
@@ -166,11 +217,8 @@ def _near(
         if lamps[table.lamp_ids[other]].bidder != lamps[lamp_id].bidder and other != place
     ]
     if others:
-        limit = f", named up to {tolerance(_NEAR).words} ({tolerance(_NEAR).reason})"
-        unit, words, percent = _pair(table, lamps, place, others, nearest, limit)
-        yield _SPECTRUM_NEAR.finding(
-            lamp_id, unit, Severity.REMARK, f"spectrum {words}", percent, "%"
-        )
+        unit, words, percent = _pair(table, lamps, place, others, nearest, _SPECTRUM, _near_limit())
+        yield _SPECTRUM_NEAR.finding(lamp_id, unit, Severity.REMARK, words, percent, "%")
 
 
 def same_spectra(campaign: Campaign) -> Iterator[Finding]:

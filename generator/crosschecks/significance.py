@@ -17,6 +17,7 @@ from decimal import Decimal
 
 from generator.crosschecks.tolerances import GROSS_FACTOR, UNCONFIRMED, Tolerance
 from generator.crosschecks.wording import number, with_unit
+from generator.language import joined, say
 from generator.records.figure import Figure, Grade
 from generator.records.finding import Severity
 
@@ -87,12 +88,19 @@ class Comparison:
         str
             Text to follow the two values.
         """
-        share = "" if self.percent is None else f" ({number(self.percent, 2, signed=True)} %)"
-        text = (
-            f"difference {with_unit(number(self.deviation, 3, signed=True), unit)}{share}, "
-            f"allowed {with_unit(number(self.allowance, 3), unit)} ({self.basis})"
+        difference = with_unit(number(self.deviation, 3, signed=True), unit)
+        if self.percent is not None:
+            percent = number(self.percent, 2, signed=True)
+            difference = say("{difference} ({share} %)", difference=difference, share=percent)
+        text = say(
+            "difference {difference}, allowed {allowed} ({basis})",
+            difference=difference,
+            allowed=with_unit(number(self.allowance, 3), unit),
+            basis=self.basis,
         )
-        return text if self.e_n is None else f"{text}, E_n = {number(self.e_n, 2)}"
+        if self.e_n is None:
+            return text
+        return say("{text}, E_n = {e_n}", text=text, e_n=number(self.e_n, 2))
 
 
 def half_digit(value: Decimal) -> Decimal:
@@ -149,10 +157,13 @@ def quotient(first: Reading, second: Reading) -> Reading:
 
 def _basis(limit: Tolerance, *, known_larger: bool) -> str:
     if known_larger:
-        return "the one expanded uncertainty that is known, k = 2"
-    status = f", {UNCONFIRMED}" if limit.status == UNCONFIRMED else ""
-    return (
-        f"default tolerance of {limit.words}, an uncertainty being unknown: {limit.reason}{status}"
+        return say("the one expanded uncertainty that is known, k = 2")
+    unconfirmed = limit.status == UNCONFIRMED
+    reason = joined(", ", (limit.reason, UNCONFIRMED)) if unconfirmed else limit.reason
+    return say(
+        "default tolerance of {tolerance}, an uncertainty being unknown: {reason}",
+        tolerance=limit.words,
+        reason=reason,
     )
 
 
@@ -181,10 +192,8 @@ def compared(first: Reading, second: Reading, limit: Tolerance) -> Comparison:
         allowance = Decimal(0)
     if allowance:
         severity = Severity.CONTRADICTION if excess > allowance else None
-        basis = "expanded uncertainties of both, k = 2"
-        return Comparison(
-            deviation, excess, allowance, excess / allowance, severity, basis, percent
-        )
+        both = say("expanded uncertainties of both, k = 2")
+        return Comparison(deviation, excess, allowance, excess / allowance, severity, both, percent)
     known = max(first.expanded or Decimal(0), second.expanded or Decimal(0))
     allowance = max(limit.allowance(second.value), known)
     severity = None

@@ -12,6 +12,8 @@ from dataclasses import dataclass
 from decimal import Decimal
 from types import MappingProxyType
 
+from generator.language import joined, numeral, say, say_as
+
 __all__ = [
     "CONVENTION",
     "GROSS_FACTOR",
@@ -23,9 +25,9 @@ __all__ = [
     "tolerance",
 ]
 
-NO_SOURCE = "common practice, no source"
-CONVENTION = "convention"
-UNCONFIRMED = "from memory, unconfirmed"
+NO_SOURCE = say("common practice, no source")
+CONVENTION = say_as("status of a tolerance", "convention")
+UNCONFIRMED = say("from memory, unconfirmed")
 
 PERCENT = "%"
 """Unit of a tolerance that is a share of the value compared with."""
@@ -69,11 +71,12 @@ class Tolerance:
     @property
     def words(self) -> str:
         """Number and unit as printed."""
-        return f"{self.value:f} {self.unit}".rstrip()
+        value = numeral(f"{self.value:f}")
+        return joined(" ", (value, self.unit)) if self.unit else value
 
 
-_TWO_LABORATORIES = "two ordinary laboratory uncertainties, root sum of squares, rounded up"
-_S025 = "cie_s025, tolerance intervals of the test conditions"
+_TWO_LABORATORIES = say("two ordinary laboratory uncertainties, root sum of squares, rounded up")
+_S025 = joined(", ", ("cie_s025", say("tolerance intervals of the test conditions")))
 
 _ROWS: tuple[Tolerance, ...] = (
     # two values of one quantity
@@ -81,7 +84,7 @@ _ROWS: tuple[Tolerance, ...] = (
     Tolerance("useful_luminous_flux_lm", Decimal(6), PERCENT, _TWO_LABORATORIES),
     Tolerance("peak_intensity_cd", Decimal(6), PERCENT, _TWO_LABORATORIES),
     Tolerance("efficacy_lm_per_w", Decimal(6), PERCENT, _TWO_LABORATORIES),
-    Tolerance("beam_angle_deg", Decimal(10), PERCENT, "beam edges of lamps are ragged"),
+    Tolerance("beam_angle_deg", Decimal(10), PERCENT, say("beam edges of lamps are ragged")),
     Tolerance("power_w", Decimal(2), PERCENT, _TWO_LABORATORIES),
     Tolerance("current_a", Decimal(2), PERCENT, _TWO_LABORATORIES),
     Tolerance("voltage_v", Decimal("0.5"), PERCENT, _TWO_LABORATORIES),
@@ -91,22 +94,22 @@ _ROWS: tuple[Tolerance, ...] = (
     Tolerance(
         "thd_current_percent",
         Decimal(5),
-        "percentage points",
-        "depends on the supply and on the orders counted",
+        say("percentage points"),
+        say("depends on the supply and on the orders counted"),
     ),
     Tolerance("x", Decimal("0.004"), "", _TWO_LABORATORIES),
     Tolerance("y", Decimal("0.004"), "", _TWO_LABORATORIES),
     Tolerance("cct_k", Decimal("2.5"), PERCENT, _TWO_LABORATORIES),
     Tolerance("duv", Decimal("0.003"), "", _TWO_LABORATORIES),
     Tolerance("ra", Decimal("1.5"), "", _TWO_LABORATORIES),
-    Tolerance("r9", Decimal(5), "", "R9 moves about three times as far as Ra"),
+    Tolerance("r9", Decimal(5), "", say("R9 moves about three times as far as Ra")),
     Tolerance(
         "percent_flicker",
         Decimal(5),
-        "percentage points",
-        "depends on the bandwidth of the recorder and on the supply",
+        say("percentage points"),
+        say("depends on the bandwidth of the recorder and on the supply"),
     ),
-    Tolerance("flicker_index", Decimal("0.02"), "", "as percent flicker"),
+    Tolerance("flicker_index", Decimal("0.02"), "", say("as percent flicker")),
     Tolerance("svm", Decimal("0.1"), "", _TWO_LABORATORIES),
     Tolerance("pst_lm", Decimal("0.1"), "", _TWO_LABORATORIES),
     # limits of the possible: how far the two sides may miss one another
@@ -114,44 +117,44 @@ _ROWS: tuple[Tolerance, ...] = (
         "efficacy_above_ler",
         Decimal(0),
         PERCENT,
-        "the numbers then stand as given",
+        say("the numbers then stand as given"),
     ),
     # declarations
     Tolerance(
         "declared_cct_k",
         Decimal("8.5"),
         PERCENT,
-        "no nominal step of the 2008 edition reaches farther from its nominal value",
-        "ansi_c78_377, nominal CCT and tolerance",
+        say("no nominal step of the 2008 edition reaches farther from its nominal value"),
+        joined(", ", ("ansi_c78_377", say("nominal CCT and tolerance"))),
     ),
     Tolerance(
         "least_units_for_doubt",
         Decimal(3),
-        "units",
-        "two units on one side of a fair declaration happen once in four",
+        say("units"),
+        say("two units on one side of a fair declaration happen once in four"),
     ),
     # modulation
     Tolerance(
         "flicker_frequency_hz",
         Decimal(1),
         PERCENT,
-        "resolution of a record of one second, and drift of the mains",
+        say("resolution of a record of one second, and drift of the mains"),
     ),
     Tolerance(
         "least_modulation_percent",
         Decimal(1),
         "%",
-        "below it the main frequency is that of the noise",
+        say("below it the main frequency is that of the noise"),
     ),
     # conditions
     Tolerance(
-        "ambient_set_c", Decimal("25.0"), "°C", "set value of the standard", _S025, UNCONFIRMED
+        "ambient_set_c", Decimal("25.0"), "°C", say("set value of the standard"), _S025, UNCONFIRMED
     ),
     Tolerance(
         "ambient_temperature_c",
         Decimal("1.2"),
         "°C",
-        "tolerance interval of the standard",
+        say("tolerance interval of the standard"),
         _S025,
         UNCONFIRMED,
     ),
@@ -159,7 +162,7 @@ _ROWS: tuple[Tolerance, ...] = (
         "supply_voltage_v",
         Decimal("0.4"),
         PERCENT,
-        "tolerance interval of the standard",
+        say("tolerance interval of the standard"),
         _S025,
         UNCONFIRMED,
     ),
@@ -167,7 +170,7 @@ _ROWS: tuple[Tolerance, ...] = (
         "supply_frequency_hz",
         Decimal("0.2"),
         PERCENT,
-        "tolerance interval of the standard",
+        say("tolerance interval of the standard"),
         _S025,
         UNCONFIRMED,
     ),
@@ -175,48 +178,48 @@ _ROWS: tuple[Tolerance, ...] = (
         "stabilisation_percent",
         Decimal("0.5"),
         PERCENT,
-        "the standard allows it over 15 min; a shorter record that exceeds it has not settled",
+        say("the standard allows it over 15 min; a shorter record that exceeds it has not settled"),
         _S025,
         UNCONFIRMED,
     ),
-    Tolerance("stabilisation_record_s", Decimal(30), "s", "shorter records show no drift"),
+    Tolerance("stabilisation_record_s", Decimal(30), "s", say("shorter records show no drift")),
     # dates
     Tolerance(
         "report_before_market_d",
         Decimal(365),
-        "days",
-        "testing comes before placing on the market, seldom by more than a year",
+        say("days"),
+        say("testing comes before placing on the market, seldom by more than a year"),
     ),
     # copied data
     Tolerance(
         "identical_quantities",
         Decimal(3),
-        "quantities",
-        "fewer agree by chance",
+        say("quantities"),
+        say("fewer agree by chance"),
     ),
     Tolerance(
         "identical_digits",
         Decimal(10),
-        "digits",
-        "that many significant digits in all do not agree by chance",
+        say("digits"),
+        say("that many significant digits in all do not agree by chance"),
     ),
     Tolerance(
         "digits_of_one_value",
         Decimal(3),
-        "digits",
-        "values of fewer significant digits agree by rounding",
+        say("digits"),
+        say("values of fewer significant digits agree by rounding"),
     ),
     Tolerance(
         "same_curve_percent",
         Decimal("0.1"),
         "%",
-        "RMS difference below the noise of two separate measurements, above that of rounding",
+        say("RMS difference below the noise of two separate measurements, above that of rounding"),
     ),
     Tolerance(
         "near_curve_percent",
         Decimal(1),
         "%",
-        "RMS difference as between units of one batch of emitters",
+        say("RMS difference as between units of one batch of emitters"),
     ),
 )
 

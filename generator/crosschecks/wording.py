@@ -6,17 +6,18 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from decimal import ROUND_HALF_EVEN, Decimal
 
+from generator.language import Message, Numeral, joined, numeral, say
 from generator.quantities import quantity
 from generator.records.figure import MEAN, exact
 from generator.records.finding import Finding, Severity
 
-__all__ = ["CheckText", "listed", "named", "number", "with_unit", "worded"]
+__all__ = ["CheckText", "listed", "named", "number", "sourced", "with_unit", "worded"]
 
 _MOST_DIGITS = 6
 _MOST_NAMES = 6
 
 
-def number(value: Decimal, digits: int = 5, *, signed: bool = False) -> str:
+def number(value: Decimal, digits: int = 5, *, signed: bool = False) -> Numeral:
     """A number as printed: as written where it is short, else to some significant digits.
 
     Parameters
@@ -30,7 +31,7 @@ def number(value: Decimal, digits: int = 5, *, signed: bool = False) -> str:
 
     Returns
     -------
-    str
+    Numeral
         Text without exponent.
     """
     if len(value.as_tuple().digits) > min(digits, _MOST_DIGITS) and value:
@@ -39,12 +40,12 @@ def number(value: Decimal, digits: int = 5, *, signed: bool = False) -> str:
             value = value.quantize(step, rounding=ROUND_HALF_EVEN)
     if not value and digits < _MOST_DIGITS:
         value = Decimal(0)
-    return f"{value:+f}" if signed else f"{value:f}"
+    return numeral(f"{value:+f}" if signed else f"{value:f}")
 
 
 def with_unit(text: str, unit: str) -> str:
     """A printed number with its unit; bare where the unit is empty."""
-    return f"{text} {unit}" if unit else text
+    return joined(" ", (text, unit)) if unit else text
 
 
 def worded(name: str, value: Decimal) -> str:
@@ -55,14 +56,28 @@ def worded(name: str, value: Decimal) -> str:
 
 def named(lamp_id: str, unit_id: str = MEAN) -> str:
     """Lamp, and unit where there is one, by name."""
-    return f"lamp {lamp_id}" if unit_id == MEAN else f"lamp {lamp_id}, unit {unit_id}"
+    if unit_id == MEAN:
+        return say("lamp {lamp}", lamp=lamp_id)
+    return say("lamp {lamp}, unit {unit}", lamp=lamp_id, unit=unit_id)
+
+
+def _headed(lamp_id: str, unit_id: str) -> Message:
+    """Lamp, and unit where there is one, in front of what was found there."""
+    if unit_id == MEAN:
+        return say("lamp {lamp}: ", lamp=lamp_id)
+    return say("lamp {lamp}, unit {unit}: ", lamp=lamp_id, unit=unit_id)
+
+
+def sourced(key: str, clause: str) -> str:
+    """A source: its key, and where in it."""
+    return joined(", ", (key, clause))
 
 
 def listed(names: Sequence[str]) -> str:
     """Names in one phrase, the first few where there are many."""
-    shown = ", ".join(names[:_MOST_NAMES])
+    shown = joined(", ", names[:_MOST_NAMES])
     more = len(names) - _MOST_NAMES
-    return f"{shown} and {more} more" if more > 0 else shown
+    return say("{names} and {more} more", names=shown, more=more) if more > 0 else shown
 
 
 @dataclass(frozen=True, slots=True)
@@ -122,7 +137,7 @@ class CheckText:
             check=self.check,
             severity=severity,
             title=self.title,
-            compared=f"{named(lamp_id, unit_id)}: {compared}.",
+            compared=joined("", (_headed(lamp_id, unit_id), compared, ".")),
             deviation=None if deviation is None else exact(float(deviation)),
             deviation_unit=deviation_unit,
             explanation=self.explanation,

@@ -7,6 +7,7 @@ from functools import cache
 from typing import Literal
 
 from generator.datasets.tables import reference_table
+from generator.language import say
 
 __all__ = ["CIRCLE_STEP", "Centre", "CentreSystem", "centres"]
 
@@ -61,11 +62,15 @@ class Centre:
             "iec_60081": "IEC 60081",
             "ansi_c78_377_2008": "ANSI C78.377-2008",
             "ansi_c78_377_2017": "ANSI C78.377-2017",
-            "declared": "declared chromaticity",
         }
-        nominal = "" if self.system == "declared" else f" {self.nominal_cct_k:.0f} K"
-        kind = "u′v′ circle" if self.ellipse is None else "ellipse"
-        return f"{names[self.system]}{nominal} ({self.x:.4f}, {self.y:.4f}), {kind}"
+        centre: str = say("declared chromaticity")
+        if self.system != "declared":
+            centre = f"{names[self.system]} {self.nominal_cct_k:.0f} K"
+        if self.ellipse is None:
+            return say(
+                "{centre} ({x:.4f}, {y:.4f}), u′v′ circle", centre=centre, x=self.x, y=self.y
+            )
+        return say("{centre} ({x:.4f}, {y:.4f}), ellipse", centre=centre, x=self.x, y=self.y)
 
 
 @cache

@@ -6,14 +6,18 @@ import tomllib
 from dataclasses import dataclass
 from functools import cache
 from types import MappingProxyType
-from typing import TYPE_CHECKING
+from typing import TYPE_CHECKING, Any
 
 from generator.datasets.tables import FOLDER
+from generator.language import Message
 
 if TYPE_CHECKING:
     from collections.abc import Mapping
 
-__all__ = ["Method", "method", "methods"]
+__all__ = ["TRANSLATED_KEYS", "Method", "method", "methods"]
+
+TRANSLATED_KEYS = frozenset({"title", "formula", "clause"})
+"""Keys of ``methods.toml`` whose texts are printed; they are messages."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -56,12 +60,12 @@ def methods() -> Mapping[str, Method]:
         If an entry of the file has a key that :class:`Method` does not know.
     """
     entries = tomllib.loads((FOLDER / "methods.toml").read_text(encoding="utf-8"))
-    return MappingProxyType(
-        {
-            key: Method(**{**entry, "inputs": tuple(entry.get("inputs", ()))})
-            for key, entry in entries.items()
-        }
-    )
+    return MappingProxyType({key: _method(entry) for key, entry in entries.items()})
+
+
+def _method(entry: Mapping[str, Any]) -> Method:
+    texts = {key: Message(entry[key]) for key in TRANSLATED_KEYS & entry.keys()}
+    return Method(**{**entry, **texts, "inputs": tuple(entry.get("inputs", ()))})
 
 
 def method(method_id: str) -> Method | None:

@@ -26,6 +26,7 @@ from generator.intake.tables.source_file import decoded_text, read_source
 from generator.intake.tables.text_table import read_heading
 from generator.intake.units_csv import read_units
 from generator.intake.waveforms_csv import read_light, read_mains
+from generator.language import say
 from generator.records.campaign import Campaign, InputFile
 from generator.records.lamp import Lamp, Unit
 from generator.records.raw import (
@@ -241,7 +242,9 @@ class _Reading:
         def read(text: str, file: CampaignFile, problems: ProblemList) -> tuple[str, str]:
             if file.owner not in known and self.register.lamps_whole:
                 problems.warning(
-                    f"lamps.csv has no lamp {file.owner}; the remarks stand nowhere.",
+                    say(
+                        "lamps.csv has no lamp {lamp}; the remarks stand nowhere.", lamp=file.owner
+                    ),
                     found=file.owner,
                     expected=nearest(file.owner, known) or "a lamp_id of lamps.csv, or campaign",
                 )
@@ -274,7 +277,7 @@ class _Reading:
             for lamp in lamps:
                 if lamp.lamp_id not in measured:
                     problems.warning(
-                        f"No unit of lamp {lamp.lamp_id} was measured.",
+                        say("No unit of lamp {lamp} was measured.", lamp=lamp.lamp_id),
                         row=lamp.row,
                         column="lamp_id",
                         found=lamp.lamp_id,

@@ -9,6 +9,7 @@ from types import MappingProxyType
 
 from generator.intake.tables.problem_list import ProblemList, nearest
 from generator.intake.tables.text_table import Heading
+from generator.language import numeral, say
 
 __all__ = [
     "DECLARED_COLUMNS",
@@ -236,7 +237,7 @@ def check_heading(
     for name in strangers:
         near = nearest(name, known, cutoff=0.75)
         problems.warning(
-            f"No column is called {name}; it is not read.",
+            say("No column is called {name}; it is not read.", name=name),
             row=heading.row,
             column=name,
             found=name,
@@ -281,7 +282,11 @@ def check_span(
         return False
     if span.usual is not None and not span.usual[0] <= number <= span.usual[1]:
         problems.warning(
-            f"{column} is rarely {number}; is the unit right?",
+            say(
+                "{column} is rarely {number}; is the unit right?",
+                column=column,
+                number=numeral(f"{number}"),
+            ),
             row=row,
             column=column,
             found=str(number),

@@ -9,6 +9,7 @@ from generator.intake.register import Register
 from generator.intake.tables.cells import CellReader
 from generator.intake.tables.problem_list import ProblemList
 from generator.intake.tables.text_table import read_text_table
+from generator.language import say
 from generator.records.raw import EnduranceReading
 
 __all__ = ["ENDURANCE_COLUMNS", "read_endurance"]
@@ -106,7 +107,7 @@ def _check_flux(
 ) -> None:
     if operational and not written:
         problems.warning(
-            "The unit worked, but its luminous flux was not measured.",
+            say("The unit worked, but its luminous flux was not measured."),
             row=row,
             column="luminous_flux_lm",
             found="an empty cell",
@@ -122,7 +123,7 @@ def _check_flux(
         )
     if not operational and flux_lm:
         problems.warning(
-            "The unit gave light, but did not count as working.",
+            say("The unit gave light, but did not count as working."),
             row=row,
             column="luminous_flux_lm",
             found=f"{flux_lm} lm, operational no",

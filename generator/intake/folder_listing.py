@@ -8,6 +8,7 @@ from pathlib import Path
 
 from generator.errors import Problem
 from generator.intake.tables.problem_list import ProblemList, nearest, shown
+from generator.language import say
 
 __all__ = ["CampaignFile", "list_campaign"]
 
@@ -130,7 +131,7 @@ def _entries(folder: Path, inside: str, root: Path, found: list[Problem]) -> Ite
             continue
         problems = ProblemList(inside + shown(entry.name))
         if not entry.name.isprintable():
-            problems.warning("The file name has unprintable characters; it is not read.")
+            problems.warning(say("The file name has unprintable characters; it is not read."))
         elif entry.is_symlink() and not _stays(entry, root):
             problems.error(
                 "The link leads out of the campaign folder, or nowhere.",
@@ -171,7 +172,7 @@ def _owned(folder: str, name: str, path: Path) -> CampaignFile | None:
 def _not_read(name: str, expected: str | None, found: list[Problem]) -> None:
     problems = ProblemList(name)
     problems.warning(
-        "Nothing of this name belongs to a campaign; it is not read.",
+        say("Nothing of this name belongs to a campaign; it is not read."),
         expected=expected or "the files of the campaign format",
     )
     found.extend(problems.problems)

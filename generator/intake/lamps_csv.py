@@ -17,6 +17,7 @@ from generator.intake.register import Register
 from generator.intake.tables.cells import CellReader
 from generator.intake.tables.problem_list import ProblemList
 from generator.intake.tables.text_table import read_text_table
+from generator.language import say
 from generator.records.lamp import Lamp, Offer
 
 __all__ = ["read_lamps"]
@@ -24,6 +25,7 @@ __all__ = ["read_lamps"]
 _CURRENCY = re.compile(r"[A-Z]{3}")
 _FIRST_LAMPS = date(1990, 1, 1)  # before white LED lamps; common knowledge, no source
 _CLASSES = frozenset("ABCDEFG")
+_LACKING = {"bidder": say("The lamp has no bidder."), "model": say("The lamp has no model.")}
 
 
 def read_lamps(text: str, register: Register, problems: ProblemList) -> tuple[Lamp, ...]:
@@ -64,11 +66,9 @@ def _lamp(record: dict[str, str], row: int, cells: CellReader) -> Lamp:
     def answer(column: str) -> bool | None:
         return cells.yes_no(record.get(column, ""), row, column)
 
-    for column in ("bidder", "model"):
+    for column, text in _LACKING.items():
         if record.get(column) == "":
-            cells.problems.warning(
-                f"The lamp has no {column}.", row=row, column=column, found="an empty cell"
-            )
+            cells.problems.warning(text, row=row, column=column, found="an empty cell")
     directional = answer("directional")
     return Lamp(
         lamp_id=record["lamp_id"],
@@ -114,7 +114,10 @@ def _offer(record: dict[str, str], row: int, cells: CellReader) -> Offer:
     currency = record.get("currency") or None
     if currency is None and price is not None:
         cells.problems.warning(
-            "The price has no currency.", row=row, column="currency", expected="a code such as EUR"
+            say("The price has no currency."),
+            row=row,
+            column="currency",
+            expected="a code such as EUR",
         )
     if currency is not None and not _CURRENCY.fullmatch(currency):
         cells.problems.error(
@@ -141,7 +144,7 @@ def _day(record: dict[str, str], column: str, row: int, cells: CellReader) -> da
     day = cells.iso_date(record.get(column, ""), row, column)
     if day is not None and not _FIRST_LAMPS <= day < date(2100, 1, 1):
         cells.problems.warning(
-            f"{column} is far from any date of an LED lamp.",
+            say("{column} is far from any date of an LED lamp.", column=column),
             row=row,
             column=column,
             found=day.isoformat(),

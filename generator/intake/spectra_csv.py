@@ -7,6 +7,7 @@ from numpy.typing import NDArray
 
 from generator.intake.tables.number_table import NumberTable, read_number_table
 from generator.intake.tables.problem_list import ProblemList
+from generator.language import say
 from generator.records.raw import SpectrumSet, SpectrumUnit
 
 __all__ = ["FEWEST_WAVELENGTHS", "read_spectra"]
@@ -146,7 +147,7 @@ def _check_values(table: NumberTable, name: str, values: Array, problems: Proble
     elif table.whole and values.min() < -_NOTEWORTHY_NEGATIVE * values.max():
         lowest = int(values.argmin())
         problems.warning(
-            f"The spectrum of {name} has negative values past what noise explains.",
+            say("The spectrum of {name} has negative values past what noise explains.", name=name),
             row=table.lines([lowest])[0],
             column=name,
             found=f"{values[lowest]:g} at a peak of {values.max():g}",

@@ -8,6 +8,7 @@ from numpy.typing import NDArray
 from generator.intake.sampling import sampling_rate_hz
 from generator.intake.tables.number_table import NumberTable, read_number_table
 from generator.intake.tables.problem_list import ProblemList
+from generator.language import say
 from generator.records.raw import LightRecord, MainsCapture
 
 __all__ = [
@@ -74,7 +75,7 @@ def light_record(
     duration_s = table.values.shape[1] / rate_hz
     if long and duration_s < LONG_RECORD_S:
         problems.warning(
-            "The long light record is short.",
+            say("The long light record is short."),
             column="time_s",
             found=f"{duration_s:.3g} s",
             expected=f"{LONG_RECORD_S:g} s or more",
@@ -120,7 +121,7 @@ def mains_capture(table: NumberTable, unit_id: str, problems: ProblemList) -> Ma
     for name in heading.names:
         if name not in MAINS_HEADING:
             problems.warning(
-                f"A mains capture has no column {name}; it is not read.",
+                say("A mains capture has no column {name}; it is not read.", name=name),
                 row=heading.row,
                 column=name,
                 found=name,

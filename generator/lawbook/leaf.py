@@ -8,12 +8,14 @@ from typing import Annotated, Any, Literal, Self
 
 from pydantic import BeforeValidator, Field, ValidationError, model_validator
 
+from generator.language import say
 from generator.lawbook.leaf_parts import (
     Basis,
     Comparison,
     ConditionTable,
     Day,
     LimitValue,
+    Note,
     Number,
     QuantityName,
     RoundingTable,
@@ -22,10 +24,12 @@ from generator.lawbook.leaf_parts import (
     Strict,
     Text,
     ValueTable,
+    Words,
     limit_given,
     no_overlap,
     quantity_names,
 )
+from generator.lawbook.leaf_text import Capital, source_of
 from generator.quantities import QUANTITIES
 from generator.records.clause import BUYER, Clause, Condition, Constant, Exemption, Source
 
@@ -42,12 +46,12 @@ __all__ = [
 
 class _LawLeaf(Strict):
     id: Annotated[str, Field(pattern=r"^[a-z0-9][a-z0-9.-]*$")]
-    title: Text
-    regime: Text
+    title: Words
+    regime: Words
     status: Status
     checked_on: Day
     source: SourceTable
-    note: str = ""
+    note: Note = ""
 
 
 class _DatedLeaf(_LawLeaf):
@@ -110,7 +114,7 @@ class ClauseLeaf(_DatedLeaf, _Judged):
             regime=self.regime,
             kind=self.kind,
             quantities=tuple(self.quantities),
-            unit=self.unit,
+            unit=QUANTITIES[self.quantities[0]].unit,
             comparison=self.comparison,
             values=tuple(item.record() for item in self.values),
             source=self.source.record(),
@@ -157,7 +161,7 @@ class VerificationLeaf(_DatedLeaf, _Judged):
             regime=self.regime,
             kind=self.kind,
             quantities=tuple(self.quantities),
-            unit=self.unit,
+            unit=QUANTITIES[self.quantities[0]].unit,
             comparison=self.comparison,
             values=tuple(item.record() for item in self.values),
             source=self.source.record(),
@@ -235,7 +239,7 @@ class BuyerLeaf(_Judged):
     kind: Literal["clause"] = "clause"
     id: Annotated[str, Field(pattern=r"^[A-Za-z0-9][A-Za-z0-9_.-]*$")] | None = None
     title: Text | None = None
-    regime: Text = "Buyer"
+    regime: Text = say("Buyer")
     unit: str = ""
     comparison: Comparison
     value: LimitValue | None = None
@@ -248,7 +252,7 @@ class BuyerLeaf(_Judged):
     status: Status | Literal["buyer"] = "buyer"
     checked_on: Day | None = None
     source: SourceTable | str = ""
-    note: str = ""
+    note: Note = ""
 
     @model_validator(mode="before")
     @classmethod
@@ -279,18 +283,19 @@ class BuyerLeaf(_Judged):
 
     def record(self, clause_id: str, file: str) -> Clause:
         """The frozen record."""
-        label = QUANTITIES[self.quantities[0]].label
         if isinstance(self.source, SourceTable):
             source = self.source.record()
+        elif self.source:
+            source = source_of(self.source)
         else:
-            source = Source(self.source or "Requirement of the buyer")
+            source = Source(say("Requirement of the buyer"))
         return Clause(
             id=clause_id,
-            title=self.title or f"{label[:1].upper()}{label[1:]}",
+            title=self.title or Capital(QUANTITIES[self.quantities[0]].label),
             regime=self.regime,
             kind="clause",
             quantities=tuple(self.quantities),
-            unit=self.unit,
+            unit=QUANTITIES[self.quantities[0]].unit,
             comparison=self.comparison,
             values=tuple(item.record() for item in self.dated),
             source=source,

@@ -7,8 +7,9 @@ from decimal import Decimal
 from types import MappingProxyType
 from typing import Annotated, Any, Literal, Self
 
-from pydantic import BaseModel, BeforeValidator, ConfigDict, Field, model_validator
+from pydantic import AfterValidator, BaseModel, BeforeValidator, ConfigDict, Field, model_validator
 
+from generator.lawbook.leaf_text import TRANSLATED_KEYS, message_of, note_of, source_of
 from generator.quantities import QUANTITIES, suggestion
 from generator.records.clause import (
     Condition,
@@ -22,11 +23,13 @@ from generator.records.clause import (
 
 __all__ = [
     "LAMP_PROPERTIES",
+    "TRANSLATED_KEYS",
     "Basis",
     "Comparison",
     "ConditionTable",
     "Day",
     "LimitValue",
+    "Note",
     "Number",
     "QuantityName",
     "RoundingTable",
@@ -36,6 +39,7 @@ __all__ = [
     "Text",
     "ToleranceTable",
     "ValueTable",
+    "Words",
     "limit_given",
     "no_overlap",
     "quantity_names",
@@ -120,6 +124,8 @@ Day = Annotated[date, BeforeValidator(_day)]
 QuantityName = Annotated[str, BeforeValidator(_quantity)]
 Subject = Annotated[str, BeforeValidator(_subject)]
 Text = Annotated[str, Field(min_length=1)]
+Words = Annotated[str, Field(min_length=1), AfterValidator(message_of)]
+Note = Annotated[str, AfterValidator(note_of)]
 Row = Annotated[list[Number], Field(min_length=2)]
 
 
@@ -138,7 +144,7 @@ class SourceTable(Strict):
 
     def record(self) -> Source:
         """The frozen record."""
-        return Source(self.act, self.annex, self.point)
+        return source_of(self.act, self.annex, self.point)
 
 
 class ConditionTable(Strict):
@@ -225,7 +231,7 @@ class ValueTable(Strict):
     may_be_lowered_to: Number | None = None
     status: Status | None = None
     source: SourceTable | None = None
-    note: str = ""
+    note: Note = ""
 
     @model_validator(mode="after")
     def _in_order(self) -> Self:

@@ -142,7 +142,7 @@ def _harmonics(figures: FigureSet, lamp: Lamp) -> HarmonicComb | None:
             percent.append(float(figure.number))
     if not orders:
         return None
-    return HarmonicComb(np.array(orders), np.array(percent), np.full(len(orders), np.nan))
+    return HarmonicComb(np.array(orders), np.array(percent))
 
 
 def _white(campaign: Campaign, figures: FigureSet, lamp: Lamp) -> WhitePlane | None:

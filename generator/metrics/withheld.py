@@ -31,4 +31,4 @@ def withheld(
     texts = np.full(values.shape, "", dtype=object)
     for condition, text in reversed(rules):
         texts[np.broadcast_to(condition, values.shape)] = text
-    return np.where(texts != "", np.nan, values), tuple(str(text) for text in texts)
+    return np.where(texts != "", np.nan, values), tuple(texts.tolist())

@@ -17,8 +17,10 @@ if TYPE_CHECKING:
 
     from generator.publish import FolderExchange, PublicCampaign
     from generator.publish.signing import Signer
-    from generator.publish.site import Site
+    from generator.publish.site import SheetTree, Site
     from generator.records.assessment import Assessment
+    from generator.records.comparison import SheetContext
+    from generator.records.harmonic_table import HarmonicTable
     from generator.records.product_field import ProductField
 
 __all__ = ["Issued", "issue", "versions_of"]
@@ -26,6 +28,7 @@ __all__ = ["Issued", "issue", "versions_of"]
 _log = logging.getLogger("lampassay")
 
 _LIBRARIES = (
+    "babel",
     "jinja2",
     "markdown",
     "nh3",
@@ -189,7 +192,6 @@ def _write_edition(
     with exchange.building() as folder:
         writer.write_data(folder, [field for lamp in products.values() for field in lamp], salt)
         writer.write_sheets(folder, site, pdf=making.pdf, jobs=making.jobs)
-        _write_tender(folder, source, assessment, making)
         writer.close(folder, making.signer)
 
 
@@ -205,30 +207,16 @@ def _products(assessment: Assessment) -> dict[str, tuple[ProductField, ...]]:
     }
 
 
-def _write_tender(folder: Path, source: Path, assessment: Assessment, making: _Making) -> None:
-    from generator.datasets import sources
-    from generator.publish.tender_files import tender_files
-    from generator.records.comparison import SheetContext
-    from generator.sheets import (
-        TenderSheets,
-        describe_letters,
-        describe_tender_report,
-        theme_overrides,
-    )
+def _harmonic_tables(assessment: Assessment) -> dict[str, HarmonicTable]:
+    """The limits of the harmonics of every lamp."""
+    from generator.conformity.harmonic_table import harmonic_table
+    from generator.lawbook import read_law_book
 
-    if assessment.tender is None:
-        return
-    _log.info("sheets: tender")
-    theme = assessment.campaign.settings.sheet.theme
-    context = SheetContext(sources(), with_pdf=making.pdf, overrides=theme_overrides(source, theme))
-    sheets = TenderSheets(
-        describe_tender_report(assessment, context), describe_letters(assessment, context)
-    )
-    files = tender_files(assessment, sheets, pdf=making.pdf, jobs=making.jobs)
-    for name, content in files.items():
-        path = folder / name
-        path.parent.mkdir(parents=True, exist_ok=True)
-        path.write_bytes(content)
+    law, day = read_law_book(), assessment.assessed_on
+    return {
+        lamp.lamp_id: harmonic_table(lamp, assessment.figures, law, assessment.clauses, day)
+        for lamp in assessment.campaign.lamps
+    }
 
 
 def _sheets(
@@ -240,15 +228,15 @@ def _sheets(
 ) -> Site:
     from generator.comparison import compare
     from generator.datasets import method, sources
+    from generator.language.speaking import speaking
     from generator.metrics import curves_of
     from generator.publish.site import Site
     from generator.records.comparison import SheetContext
-    from generator.sheets import describe_comparison, describe_lamp, theme_overrides
+    from generator.sheets import theme_overrides
 
     _log.info("comparison")
     campaign = assessment.campaign
     matrix = compare(campaign.lamps, assessment.figures, assessment.verdicts, assessment.findings)
-    _log.info("sheets")
     theme = campaign.settings.sheet.theme
     used = dict.fromkeys(figure.method or figure.grade.value for figure in assessment.figures)
     context = SheetContext(
@@ -259,11 +247,37 @@ def _sheets(
         methods={key: known for key in used if (known := method(key)) is not None},
         overrides=theme_overrides(source, theme),
         products=products,
+        harmonic_tables=_harmonic_tables(assessment),
     )
+    trees = {}
+    for language in campaign.settings.languages:
+        _log.info("sheets: %s", language)
+        with speaking(language):
+            trees[language] = _tree(assessment, context)
+    return Site(trees, theme, context.overrides)
+
+
+def _tree(assessment: Assessment, context: SheetContext) -> SheetTree:
+    """Every sheet in the language that is being spoken."""
+    from generator.publish.site import SheetTree
+    from generator.sheets import (
+        TenderSheets,
+        describe_comparison,
+        describe_lamp,
+        describe_letters,
+        describe_tender_report,
+    )
+
     lamps = {
-        lamp.lamp_id: describe_lamp(assessment, lamp.lamp_id, context) for lamp in campaign.lamps
+        lamp.lamp_id: describe_lamp(assessment, lamp.lamp_id, context)
+        for lamp in assessment.campaign.lamps
     }
-    return Site(describe_comparison(assessment, context), lamps, theme, context.overrides)
+    tender = None
+    if assessment.tender is not None:
+        tender = TenderSheets(
+            describe_tender_report(assessment, context), describe_letters(assessment, context)
+        )
+    return SheetTree(describe_comparison(assessment, context), lamps, tender)
 
 
 def versions_of(assessment: Assessment) -> Mapping[str, str]:

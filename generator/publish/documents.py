@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import os
+import signal
 from collections.abc import Callable, Iterator, Sequence
 from concurrent.futures import FIRST_COMPLETED, Future, ProcessPoolExecutor, wait
 from concurrent.futures.process import BrokenProcessPool
@@ -82,4 +83,10 @@ def in_processes(
 
 
 def _worker() -> ProcessPoolExecutor:
-    return ProcessPoolExecutor(max_workers=1, mp_context=get_context("spawn"))
+    """A process of its own, which leaves an interruption by the user to its parent."""
+    return ProcessPoolExecutor(
+        max_workers=1,
+        mp_context=get_context("spawn"),
+        initializer=signal.signal,
+        initargs=(signal.SIGINT, signal.SIG_IGN),
+    )

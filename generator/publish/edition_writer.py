@@ -16,6 +16,7 @@ from generator.publish.lamp_evidence import document_attachments
 from generator.publish.manifest import Edition, write_manifest
 from generator.publish.redaction import check_public, code_names
 from generator.publish.site import Site, write_documents, write_pages
+from generator.publish.tender_files import tender_files
 from generator.records.assessment import Assessment
 from generator.records.product_field import ProductField
 
@@ -65,6 +66,10 @@ class EditionWriter:
         """
         write_inputs(folder, self.source, self.assessment.campaign)
         write_data(folder, self.assessment, products)
+        for name, content in tender_files(self.assessment).items():
+            path = folder / name
+            path.parent.mkdir(parents=True, exist_ok=True)
+            path.write_bytes(content)
         if salt is not None:
             write_redaction(folder, salt, code_names(self.assessment.campaign, salt))
 

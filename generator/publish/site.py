@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import logging
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from pathlib import Path
 
@@ -12,15 +12,62 @@ from generator.sheets import (
     ComparisonSheet,
     LampSheet,
     SheetAttachment,
+    TenderDocument,
+    TenderSheets,
+    page_place,
     pdf_engine_missing,
     render_html,
     render_pdf,
     site_assets,
+    tree_of,
 )
 
-__all__ = ["Site", "write_documents", "write_pages"]
+__all__ = ["SheetTree", "Site", "write_documents", "write_pages"]
 
 _log = logging.getLogger("lampassay")
+
+Document = ComparisonSheet | LampSheet | TenderDocument
+
+
+@dataclass(frozen=True, slots=True)
+class SheetTree:
+    """The sheets of one issue in one language.
+
+    Parameters
+    ----------
+    comparison
+        The comparison of all lamps.
+    lamps
+        ``lamp_id`` -> spec sheet.
+    tender
+        Report and letters; ``None`` where the campaign is no tender.
+    """
+
+    comparison: ComparisonSheet
+    lamps: Mapping[str, LampSheet]
+    tender: TenderSheets | None = None
+
+    def pages(self) -> Iterator[tuple[str, Document]]:
+        """Give every sheet with its path inside the tree, ending in ``.html``."""
+        yield "index.html", self.comparison
+        for lamp_id, sheet in self.lamps.items():
+            yield f"lamps/{lamp_id}.html", sheet
+        for name, document in self._of_tender():
+            yield f"{name}.html", document
+
+    def documents(self) -> Iterator[tuple[str, Document]]:
+        """Give every sheet with its path inside the tree, ending in ``.pdf``."""
+        yield "comparison.pdf", self.comparison
+        for lamp_id, sheet in self.lamps.items():
+            yield f"lamps/{lamp_id}.pdf", sheet
+        for name, document in self._of_tender():
+            yield f"{name}.pdf", document
+
+    def _of_tender(self) -> Iterator[tuple[str, TenderDocument]]:
+        if self.tender is not None:
+            yield "tender/report", self.tender.report
+            for name, letter in self.tender.letters.items():
+                yield f"tender/letters/{name}", letter
 
 
 @dataclass(frozen=True, slots=True)
@@ -29,24 +76,26 @@ class Site:
 
     Parameters
     ----------
-    comparison
-        The comparison of all lamps.
-    lamps
-        ``lamp_id`` -> spec sheet.
+    trees
+        Language -> its sheets; the tree of the first is the root of the issue.
     theme
         Theme whose assets the pages need.
     overrides
         Folder of the campaign with templates of its own for the theme; ``None`` without one.
     """
 
-    comparison: ComparisonSheet
-    lamps: Mapping[str, LampSheet]
+    trees: Mapping[str, SheetTree]
     theme: str
     overrides: Path | None = None
 
+    @property
+    def languages(self) -> tuple[str, ...]:
+        """Languages of the issue."""
+        return tuple(self.trees)
+
 
 def write_pages(folder: Path, site: Site) -> None:
-    """Write the HTML pages and the assets they need.
+    """Write the HTML pages of every language and the assets they need.
 
     Parameters
     ----------
@@ -55,28 +104,29 @@ def write_pages(folder: Path, site: Site) -> None:
     site
         The sheets.
     """
-    (folder / "lamps").mkdir()
     for name, content in site_assets(site.theme, site.overrides).items():
-        path = folder / "assets" / name
-        path.parent.mkdir(parents=True, exist_ok=True)
-        path.write_bytes(content)
-    page = render_html(site.comparison, asset_prefix="assets/")
-    (folder / "index.html").write_text(page, encoding="utf-8", newline="\n")
-    for lamp_id, sheet in site.lamps.items():
-        page = render_html(sheet, asset_prefix="../assets/")
-        (folder / "lamps" / f"{lamp_id}.html").write_text(page, encoding="utf-8", newline="\n")
+        _write(folder / "assets" / name, content)
+    for language, tree in site.trees.items():
+        for name, sheet in tree.pages():
+            page = render_html(sheet, page_place(name, language, site.languages))
+            _write(folder / tree_of(language, site.languages) / name, page.encode())
+
+
+def _write(path: Path, content: bytes) -> None:
+    path.parent.mkdir(parents=True, exist_ok=True)
+    path.write_bytes(content)
 
 
 @dataclass(frozen=True, slots=True)
-class _Document:
+class _Task:
     """One PDF to be made: the sheet, and the files it carries."""
 
-    sheet: ComparisonSheet | LampSheet
+    sheet: Document
     attachments: Sequence[SheetAttachment]
 
 
-def _rendered(document: _Document) -> bytes:
-    return render_pdf(document.sheet, attachments=document.attachments)
+def _rendered(task: _Task) -> bytes:
+    return render_pdf(task.sheet, attachments=task.attachments)
 
 
 def write_documents(
@@ -85,7 +135,7 @@ def write_documents(
     jobs: int,
     attachments: Mapping[str, Sequence[SheetAttachment]] | None = None,
 ) -> None:
-    """Write the PDF documents, several at once in processes of their own.
+    """Write the PDF documents of every language, several at once in processes of their own.
 
     Parameters
     ----------
@@ -96,7 +146,7 @@ def write_documents(
     jobs
         Number of processes.
     attachments
-        Path of a document -> files to put inside it.
+        Path of a document inside the tree of a language -> files to put inside it.
 
     Raises
     ------
@@ -104,11 +154,13 @@ def write_documents(
         If a document cannot be rendered; names every one that cannot.
     """
     inside = attachments or {}
-    sheets: dict[str, ComparisonSheet | LampSheet] = {"comparison.pdf": site.comparison}
-    sheets |= {f"lamps/{lamp_id}.pdf": sheet for lamp_id, sheet in site.lamps.items()}
-    tasks = [(name, _Document(sheet, inside.get(name, ()))) for name, sheet in sheets.items()]
+    tasks = [
+        (f"{tree_of(language, site.languages)}{name}", _Task(sheet, inside.get(name, ())))
+        for language, tree in site.trees.items()
+        for name, sheet in tree.documents()
+    ]
     for count, (name, content) in enumerate(in_processes(_rendered, tasks, jobs), start=1):
-        (folder / name).write_bytes(content)
+        _write(folder / name, content)
         _log.info("  %d of %d: %s", count, len(tasks), name)
 
 

@@ -11,13 +11,17 @@ from types import MappingProxyType
 from typing import Any
 
 from generator.errors import LawBookError
+from generator.language import joined, say
 from generator.quantities import QUANTITIES
 from generator.records.clause_words import (
     FORMULAS,
     bounds_text,
     choice_text,
+    compared_text,
+    number_of,
     sloped_text,
     tolerance_text,
+    with_unit,
 )
 
 __all__ = [
@@ -48,16 +52,42 @@ Entry = Decimal | tuple[tuple[Decimal, ...], ...]
 
 @dataclass(frozen=True, slots=True)
 class Source:
-    """Where a value stands: act or standard, annex, point."""
+    """Where a value stands.
+
+    Parameters
+    ----------
+    act
+        Act, standard or call.
+    annex, point
+        Annex and point, without what amended them.
+    edition
+        What tells editions or parts of the act apart, for instance ``edition 5``.
+    amendment
+        The amending act in words, for instance ``as amended by Regulation (EU) 2021/341``.
+    amending_act
+        The number of the amending act alone.
+    """
 
     act: str
     annex: str = ""
     point: str = ""
+    edition: str = ""
+    amendment: str = ""
+    amending_act: str = ""
+
+    @property
+    def place(self) -> str:
+        """Where it stands inside the act."""
+        return _listed(self.edition, self.annex, self.point)
 
     @property
     def text(self) -> str:
-        """Act, annex and point in one phrase."""
-        return ", ".join(part for part in (self.act, self.annex, self.point) if part)
+        """Act, place and amendment in one phrase."""
+        return _listed(self.act, self.edition, self.annex, self.point, self.amendment)
+
+
+def _listed(*parts: str) -> str:
+    return joined(", ", (part for part in parts if part))
 
 
 @dataclass(frozen=True, slots=True)
@@ -113,9 +143,20 @@ class Tolerance:
     plus_percent: Decimal | None = None
     minus_percent: Decimal | None = None
 
+    @property
+    def is_zero(self) -> bool:
+        """Whether there is no tolerance at all."""
+        return not any((self.plus, self.minus, self.plus_percent, self.minus_percent))
+
     def text(self, unit: str) -> str:
         """The tolerance in words, for a unit."""
         return tolerance_text(self.plus, self.minus, self.plus_percent, self.minus_percent, unit)
+
+
+def _tolerated_text(tolerance: Tolerance, unit: str) -> str:
+    if tolerance.is_zero:
+        return say("the declared value")
+    return say("the declared value {tolerance}", tolerance=tolerance.text(unit))
 
 
 @dataclass(frozen=True, slots=True)
@@ -172,18 +213,18 @@ class DatedValue:
     def text(self, unit: str) -> str:
         """What the value says, in words: a number, a span, a tolerance, no limit, a formula."""
         if self.no_limit:
-            return "no limit"
+            return say("no limit")
         if self.tolerance is not None:
-            tolerance = self.tolerance.text(unit)
-            return f"the declared value{'' if tolerance == 'none' else f' {tolerance}'}"
+            return _tolerated_text(self.tolerance, unit)
         if self.lower is not None and self.upper is not None:
-            return f"{self.lower} to {self.upper} {unit}".rstrip().replace("-", "−")
+            ends = say("{low} to {high}", low=number_of(self.lower), high=number_of(self.upper))
+            return with_unit(ends, unit)
         if self.value is None:
-            return "by formula"
+            return say("by formula")
         if self.slopes and isinstance(self.value, Decimal):
             slopes = [(item.quantity, item.times) for item in self.slopes]
             return sloped_text(self.value, slopes, unit)
-        return f"{self.value} {unit}".rstrip()
+        return with_unit(number_of(self.value), unit)
 
     @property
     def plain_limit(self) -> float | str | None:
@@ -313,8 +354,9 @@ class Clause:
         if value.no_limit:
             return value.text(self.unit)
         if self.formula:
-            return f"by formula: {FORMULAS[self.formula].text}" if self.formula in FORMULAS else ""
-        return f"{self.comparison} {value.text(self.unit)}"
+            known = FORMULAS.get(self.formula)
+            return say("by formula: {formula}", formula=known.text) if known else ""
+        return compared_text(self.comparison, value.text(self.unit))
 
     def on(self, day: date) -> tuple[DatedValue, ...]:
         """The values in force on a day; several where conditions tell them apart."""

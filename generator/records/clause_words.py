@@ -2,38 +2,79 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass
 from decimal import Decimal
+from functools import reduce
 from types import MappingProxyType
 
+from generator.language import joined, numeral, say, say_as
 from generator.quantities import QUANTITIES
 
 __all__ = [
     "FORMULAS",
     "Formula",
+    "all_of",
     "bounds_text",
     "choice_text",
+    "compared_text",
+    "number_of",
     "sloped_text",
     "subject_text",
     "tolerance_text",
+    "with_unit",
 ]
 
-_STATED: Mapping[str, tuple[str, str]] = MappingProxyType(
+_STATED: Mapping[str, tuple[str, str, str]] = MappingProxyType(
     {
-        "directional": ("the lamp is directional", "the lamp is not directional"),
-        "mains": ("the lamp runs on the mains", "the lamp does not run on the mains"),
-        "connected": ("the lamp is connected", "the lamp is not connected"),
-        "colour_tuneable": ("the lamp is colour-tuneable", "the lamp is not colour-tuneable"),
-        "high_luminance": ("the lamp is of high luminance", "the lamp is not of high luminance"),
-        "anti_glare_shield": (
-            "the lamp has an anti-glare shield",
-            "the lamp has no anti-glare shield",
+        "directional": (
+            say("the lamp is directional"),
+            say("the lamp is not directional"),
+            say("whether the lamp is directional"),
         ),
-        "dimmable": ("the lamp is dimmable", "the lamp is not dimmable"),
+        "mains": (
+            say("the lamp runs on the mains"),
+            say("the lamp does not run on the mains"),
+            say("whether the lamp runs on the mains"),
+        ),
+        "connected": (
+            say("the lamp is connected"),
+            say("the lamp is not connected"),
+            say("whether the lamp is connected"),
+        ),
+        "colour_tuneable": (
+            say("the lamp is colour-tuneable"),
+            say("the lamp is not colour-tuneable"),
+            say("whether the lamp is colour-tuneable"),
+        ),
+        "high_luminance": (
+            say("the lamp is of high luminance"),
+            say("the lamp is not of high luminance"),
+            say("whether the lamp is of high luminance"),
+        ),
+        "anti_glare_shield": (
+            say("the lamp has an anti-glare shield"),
+            say("the lamp has no anti-glare shield"),
+            say("whether the lamp has an anti-glare shield"),
+        ),
+        "dimmable": (
+            say("the lamp is dimmable"),
+            say("the lamp is not dimmable"),
+            say("whether the lamp is dimmable"),
+        ),
     }
 )
-"""Property that is yes or no -> what is said of the lamp."""
+"""Property that is yes or no -> what is said of the lamp where it holds, where not, and where it
+is asked for."""
+
+_NAMED: Mapping[str, str] = MappingProxyType(
+    {
+        "technology": say("the technology"),
+        "cap": say("the cap"),
+        "reflector": say("the reflector"),
+    }
+)
+"""Property that has a name of its own -> what it is called."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -55,52 +96,93 @@ class Formula:
 FORMULAS: Mapping[str, Formula] = MappingProxyType(
     {
         "maximum_power": Formula(
-            "C × (L + useful luminous flux / (F × η)) × R, with R rounded to two decimals",
+            say("C × (L + useful luminous flux / (F × η)) × R, with R rounded to two decimals"),
             ("useful_luminous_flux_lm", "ra"),
         ),
         "lumen_maintenance_minimum": Formula(
-            "the flux fraction to the power of test hours over declared lifetime, not above the "
-            "cap",
+            say(
+                "the flux fraction to the power of test hours over declared lifetime, not above "
+                "the cap"
+            ),
             ("l70b50_h",),
         ),
         "efficacy_curve": Formula(
-            "a / (b + exp(−c × (luminous flux + d))) + e",
+            say("a / (b + exp(−c × (luminous flux + d))) + e"),
             ("useful_luminous_flux_lm", "length_mm"),
         ),
         "equivalent_power": Formula(
-            "the power that the luminous flux stands for, linear between the rows of the table, "
-            "rounded to an integer",
+            say(
+                "the power that the luminous flux stands for, linear between the rows of the "
+                "table, rounded to an integer"
+            ),
             ("useful_luminous_flux_lm",),
         ),
         "reflector_flux": Formula(
-            "reference flux of the reflector lamp × factor for lumen maintenance × factor for beam "
-            "angle",
+            say(
+                "reference flux of the reflector lamp × factor for lumen maintenance × factor for "
+                "beam angle"
+            ),
             ("equivalent_power_w", "lumen_maintenance_factor", "beam_angle_deg"),
         ),
         "declared_class": Formula(
-            "the lower end of the declared class; the value is useful luminous flux / power × "
-            "factor of the total mains efficacy",
+            say(
+                "the lower end of the declared class; the value is useful luminous flux / power × "
+                "factor of the total mains efficacy"
+            ),
             ("useful_luminous_flux_lm", "power_w"),
         ),
         "light_source_scope": Formula(
-            "chromaticity, luminous flux, flux density and CRI within the window of the act, unit "
-            "by unit",
+            say(
+                "chromaticity, luminous flux, flux density and CRI within the window of the act, "
+                "unit by unit"
+            ),
             ("x", "y", "ra", "light_emitting_area_mm2"),
         ),
         "harmonic_currents": Formula(
-            "every harmonic current within its table or, where there are options, within one of "
-            "them"
+            say(
+                "every harmonic current within its table or, where there are options, within one "
+                "of them"
+            )
         ),
     }
 )
 """Formula named in a leaf -> what it says."""
 
-_BOUNDS = (
-    ("at_least", "at least"),
-    ("above", "above"),
-    ("at_most", "at most"),
-    ("below", "below"),
+_BOUNDS = ("at_least", "above", "at_most", "below")
+
+_COMPARED = MappingProxyType(
+    {
+        "at least": say("at least {limit}"),
+        "at most": say("at most {limit}"),
+        "above": say("above {limit}"),
+        "below": say("below {limit}"),
+        "within": say("within {limit}"),
+    }
 )
+"""Comparison -> what is asked of a value."""
+
+
+def number_of(value: Decimal | str) -> str:
+    """Write a number as it stands in a leaf, without an exponent; the letter of a class stays."""
+    return value if isinstance(value, str) else numeral(f"{value:f}".replace("-", "\u2212"))
+
+
+def with_unit(number: str, unit: str) -> str:
+    """Put the unit behind a number, where there is one."""
+    return joined(" ", (number, unit)) if unit else number
+
+
+def compared_text(comparison: str, limit: str) -> str:
+    """Say how a value must lie to a limit.
+
+    Parameters
+    ----------
+    comparison
+        ``at least``, ``at most``, ``below``, ``above`` or ``within``.
+    limit
+        The limit in words.
+    """
+    return _COMPARED[comparison].format(limit=limit)
 
 
 def subject_text(subject: str) -> str:
@@ -117,13 +199,13 @@ def subject_text(subject: str) -> str:
         With its article; a property that is yes or no begins with ``whether``.
     """
     if subject in _STATED:
-        return f"whether {_STATED[subject][0]}"
+        return _STATED[subject][2]
+    if subject in _NAMED:
+        return _NAMED[subject]
     if subject in QUANTITIES:
-        return f"the {QUANTITIES[subject].label}"
-    stem = subject.removeprefix("declared_")
-    if stem in QUANTITIES:
-        return f"the declared {QUANTITIES[stem].label}"
-    return f"the {subject.replace('_', ' ')}"
+        return say("the {quantity}", quantity=QUANTITIES[subject].label)
+    label = QUANTITIES[subject.removeprefix("declared_")].label
+    return say("the declared {quantity}", quantity=label)
 
 
 def choice_text(subject: str, choices: Sequence[bool | str]) -> str:
@@ -131,33 +213,44 @@ def choice_text(subject: str, choices: Sequence[bool | str]) -> str:
     if subject in _STATED and len(choices) == 1:
         return _STATED[subject][0 if choices[0] is True else 1]
     words = [str(item) for item in choices]
-    listed = " or ".join([", ".join(words[:-1]), words[-1]] if len(words) > 1 else words)
-    return f"{subject_text(subject)} is {listed}"
+    listed = words[-1]
+    if len(words) > 1:
+        listed = say("{listed} or {last}", listed=", ".join(words[:-1]), last=words[-1])
+    return say("{subject} is {value}", subject=subject_text(subject), value=listed)
 
 
 def bounds_text(subject: str, bounds: Mapping[str, Decimal | None]) -> str:
     """Say between which numbers a quantity must lie."""
     unit = QUANTITIES[subject.removeprefix("declared_")].unit
-    name = subject_text(subject)
-    least, most = bounds.get("at_least"), bounds.get("at_most")
+    given = {key: bound for key in _BOUNDS if (bound := bounds.get(key)) is not None}
+    least, most = given.get("at_least"), given.get("at_most")
     if least is not None and least == most:
-        return f"{name} is {least} {unit}".rstrip()
-    parts = [
-        f"{word} {bounds[key]} {unit}".rstrip().replace("-", "−")
-        for key, word in _BOUNDS
-        if bounds[key] is not None
-    ]
-    return f"{name} is {' and '.join(parts)}"
+        value = with_unit(number_of(least), unit)
+    else:
+        value = all_of(
+            compared_text(key.replace("_", " "), with_unit(number_of(bound), unit))
+            for key, bound in given.items()
+        )
+    return say("{subject} is {value}", subject=subject_text(subject), value=value)
+
+
+def all_of(parts: Iterable[str]) -> str:
+    """Put texts together that hold at once; empty where there is none."""
+    both = say("{first} and {second}")
+    texts = tuple(parts)
+    return reduce(lambda first, second: both.format(first=first, second=second), texts or ("",))
 
 
 def sloped_text(value: Decimal, slopes: Sequence[tuple[str, Decimal]], unit: str) -> str:
     """Write a limit that grows with other quantities."""
-    text = f"{value}" if value else ""
+    parts: list[str] = [number_of(value)] if value else []
     for name, times in slopes:
-        sign = "−" if times < 0 else "+"
-        part = f"{abs(times)} × {QUANTITIES[name].label}"
-        text = f"{text} {sign} {part}" if text else f"{'− ' if times < 0 else ''}{part}"
-    return f"{text}, in {unit}" if unit else text
+        if parts or times < 0:
+            parts.append("\u2212" if times < 0 else "+")
+        label = QUANTITIES[name].label
+        parts.append(say("{factor} × {quantity}", factor=number_of(abs(times)), quantity=label))
+    text = joined(" ", parts)
+    return say("{formula}, in {unit}", formula=text, unit=unit) if unit else text
 
 
 def tolerance_text(
@@ -170,17 +263,17 @@ def tolerance_text(
     """Write a tolerance: ``+ 5 %``, ``− 0.1``, ``± 25 %``; ``none`` where it is zero."""
     sides = {
         "+": _side(plus, plus_percent, unit),
-        "−": _side(minus, minus_percent, unit),
+        "\u2212": _side(minus, minus_percent, unit),
     }
     given = {sign: text for sign, text in sides.items() if text}
     if not any((plus, minus, plus_percent, minus_percent)):
-        return "none"
+        return say_as("tolerance", "none")
     if len(given) > 1 and len(set(given.values())) == 1:
-        return f"± {given['+']}"
-    return ", ".join(f"{sign} {text}" for sign, text in given.items())
+        return joined(" ", ("±", given["+"]))
+    return joined(", ", (joined(" ", pair) for pair in given.items()))
 
 
 def _side(absolute: Decimal | None, percent: Decimal | None, unit: str) -> str:
     if absolute is not None:
-        return f"{absolute} {unit}".rstrip()
-    return "" if percent is None else f"{percent} %"
+        return with_unit(number_of(absolute), unit)
+    return "" if percent is None else with_unit(number_of(percent), "%")

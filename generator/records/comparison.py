@@ -9,6 +9,7 @@ from typing import Protocol
 
 from generator.records.curves import LampCurves
 from generator.records.figure import Figure
+from generator.records.harmonic_table import HarmonicTable
 from generator.records.product_field import ProductField
 from generator.records.verdict import Verdict, VerdictWord
 
@@ -149,6 +150,8 @@ class SheetContext:
         Folder of the campaign with templates of its own for the theme; ``None`` without one.
     products
         ``lamp_id`` -> product information, in the order of the act.
+    harmonic_tables
+        ``lamp_id`` -> limits of the harmonics of its current.
     """
 
     sources: Mapping[str, SourceLike] = field(default_factory=dict)
@@ -158,3 +161,4 @@ class SheetContext:
     methods: Mapping[str, MethodLike] = field(default_factory=dict)
     overrides: Path | None = None
     products: Mapping[str, tuple[ProductField, ...]] = field(default_factory=dict)
+    harmonic_tables: Mapping[str, HarmonicTable] = field(default_factory=dict)

@@ -123,7 +123,7 @@ class MainsCurve:
 
 @dataclass(frozen=True, slots=True, eq=False)
 class HarmonicComb:
-    """Harmonics of the current beside their limits.
+    """Harmonics of the current.
 
     Parameters
     ----------
@@ -131,16 +131,10 @@ class HarmonicComb:
         Orders, ascending (orders,).
     percent
         Harmonic current in percent of the fundamental [percent] (orders,).
-    limit_percent
-        Limit in force there [percent] (orders,); not-a-number where none is set.
-    source
-        Key into the list of sources of the limits; empty where there are none.
     """
 
     order: Array
     percent: Array
-    limit_percent: Array
-    source: str = ""
 
 
 @dataclass(frozen=True, slots=True, eq=False)

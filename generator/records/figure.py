@@ -6,11 +6,14 @@ from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, field
 from decimal import Decimal
 from enum import StrEnum
+from types import MappingProxyType
 
 import numpy as np
 from numpy.typing import NDArray
 
-__all__ = ["MEAN", "Figure", "FigureSet", "Grade", "SeriesFigures", "exact"]
+from generator.language import say_as
+
+__all__ = ["GRADE_WORDS", "MEAN", "Figure", "FigureSet", "Grade", "SeriesFigures", "exact"]
 
 MEAN = ""
 """The ``unit_id`` of a figure that stands for the mean over a lamp's units."""
@@ -45,6 +48,15 @@ class Grade(StrEnum):
     REPORTED = "reported"
     DECLARED = "declared"
 
+
+GRADE_WORDS = MappingProxyType(
+    {
+        Grade.COMPUTED: say_as("grade", "computed"),
+        Grade.REPORTED: say_as("grade", "reported"),
+        Grade.DECLARED: say_as("grade", "declared"),
+    }
+)
+"""The three grades as they are said."""
 
 _ORDER = {Grade.COMPUTED: 0, Grade.REPORTED: 1, Grade.DECLARED: 2}
 

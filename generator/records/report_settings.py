@@ -8,6 +8,8 @@ from typing import Self
 
 from pydantic import BaseModel, ConfigDict, Field, model_validator
 
+from generator.language import joined, say
+
 __all__ = ["Amendment", "Equipment", "ReportMethod", "ReportTable"]
 
 
@@ -34,15 +36,24 @@ class Equipment(_Table):
     @property
     def text(self) -> str:
         """The instrument in one phrase, with what is missing named."""
-        parts = [self.name]
-        parts += [f"serial {self.serial}"] if self.serial else []
+        parts: list[str] = [self.name]
+        if self.serial:
+            parts.append(say("serial {number}", number=self.serial))
         day = self.calibrated_on
-        parts.append(f"calibrated on {day.isoformat()}" if day else "calibration date missing")
+        parts.append(
+            say("calibrated on {day}", day=day.isoformat())
+            if day
+            else say("calibration date missing")
+        )
         if self.calibration_certificate:
-            parts.append(f"certificate {self.calibration_certificate}")
+            parts.append(say("certificate {number}", number=self.calibration_certificate))
         traced = self.traceable_to
-        parts.append(f"traceable to {traced}" if traced else "traceability missing")
-        return ", ".join(parts)
+        parts.append(
+            say("traceable to {reference}", reference=traced)
+            if traced
+            else say("traceability missing")
+        )
+        return joined(", ", parts)
 
 
 class Amendment(_Table):

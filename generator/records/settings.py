@@ -7,8 +7,9 @@ from datetime import date
 from decimal import Decimal
 from typing import Annotated, Any, Literal
 
-from pydantic import BeforeValidator, Field
+from pydantic import BeforeValidator, Field, field_validator
 
+from generator.language.speaking import LANGUAGES
 from generator.records.report_settings import ReportTable
 from generator.records.setting_values import NonNegative, Number, Positive, Table
 from generator.records.tender_settings import TenderSettings
@@ -17,6 +18,7 @@ __all__ = [
     "CampaignTable",
     "Decision",
     "Laboratory",
+    "Language",
     "Settings",
     "SheetTable",
     "Supply",
@@ -98,8 +100,15 @@ class Decision(Table):
     probability: Annotated[Number, Field(gt=0, lt=1)] = Decimal("0.95")
 
 
+Language = Literal["en", "de", "fr", "es", "it", "pl"]
+"""A language that sheets can be in."""
+
+
 class SheetTable(Table):
     """``[sheet]``: theme and languages of what is issued, and the pages of a lamp on paper.
+
+    Each language has a tree of pages of its own, the first one at the root of the issue. Without
+    languages the sheets speak that of the campaign where there is a catalogue for it, else English.
 
     With two pages a lamp's PDF is the short form; with four it holds the tables too. By default
     the tender theme has two, the others four.
@@ -107,7 +116,14 @@ class SheetTable(Table):
 
     theme: str = "tender"
     lamp_pages: Literal[2, 4] | None = None
-    languages: tuple[str, ...] = ("en",)
+    languages: tuple[Language, ...] = ()
+
+    @field_validator("languages")
+    @classmethod
+    def _each_once(cls, languages: tuple[str, ...]) -> tuple[str, ...]:
+        if len(set(languages)) < len(languages):
+            raise ValueError("each language once")
+        return languages
 
 
 class Settings(TenderSettings):
@@ -123,3 +139,9 @@ class Settings(TenderSettings):
     clause: tuple[dict[str, Any], ...] = ()
     sheet: SheetTable = SheetTable()
     report: ReportTable = ReportTable()
+
+    @property
+    def languages(self) -> tuple[str, ...]:
+        """Languages of the sheets, by tag; at least one."""
+        own = self.campaign.language.partition("-")[0].lower()
+        return self.sheet.languages or (own if own in LANGUAGES else "en",)

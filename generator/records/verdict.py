@@ -5,10 +5,12 @@ from __future__ import annotations
 from dataclasses import dataclass
 from decimal import Decimal
 from enum import StrEnum
+from types import MappingProxyType
 
+from generator.language import say_as
 from generator.records.figure import Figure
 
-__all__ = ["Basis", "Judgement", "Verdict", "VerdictWord"]
+__all__ = ["BASIS_WORDS", "VERDICT_WORDS", "Basis", "Judgement", "Verdict", "VerdictWord"]
 
 
 class VerdictWord(StrEnum):
@@ -26,6 +28,26 @@ class Basis(StrEnum):
 
     DECLARED = "declared"
     DETERMINED = "determined"
+
+
+VERDICT_WORDS = MappingProxyType(
+    {
+        VerdictWord.PASS: say_as("verdict", "pass"),
+        VerdictWord.FAIL: say_as("verdict", "fail"),
+        VerdictWord.INCONCLUSIVE: say_as("verdict", "inconclusive"),
+        VerdictWord.NOT_MEASURED: say_as("verdict", "not measured"),
+        VerdictWord.NOT_APPLICABLE: say_as("verdict", "not applicable"),
+    }
+)
+"""The five words as they are said."""
+
+BASIS_WORDS = MappingProxyType(
+    {
+        Basis.DECLARED: say_as("basis", "declared"),
+        Basis.DETERMINED: say_as("basis", "determined"),
+    }
+)
+"""The two bases as they are said."""
 
 
 @dataclass(frozen=True, slots=True)
@@ -69,9 +91,17 @@ class Verdict:
         The decision rule used, in words.
     note
         What a reader must know with the verdict (tie rule, indicative, small sample, why there
-        is none).
+        is none); a passage whose parts are its sentences.
     steps
         The way from inputs to verdict, one sentence a step, for ``explain``.
+    act
+        The act, standard or call alone, as it heads its clauses.
+    place
+        Edition, annex and point, without what amended them.
+    amending_act
+        Number of the act that amended the place; empty where none did.
+    reason
+        Why the clause does not apply; empty where it does.
     """
 
     lamp_id: str
@@ -93,6 +123,10 @@ class Verdict:
     rule: str = ""
     note: str = ""
     steps: tuple[str, ...] = ()
+    act: str = ""
+    place: str = ""
+    amending_act: str = ""
+    reason: str = ""
 
 
 @dataclass(frozen=True, slots=True)

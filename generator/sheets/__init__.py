@@ -11,6 +11,7 @@ from generator.sheets.comparison_sheet import describe_comparison
 from generator.sheets.html_sheet import render_html
 from generator.sheets.lamp_description import LampSheet
 from generator.sheets.lamp_sheet import describe_lamp
+from generator.sheets.page_place import PagePlace, page_place, tree_of
 from generator.sheets.pdf_sheet import (
     PdfEngine,
     SheetAttachment,
@@ -34,6 +35,7 @@ from generator.sheets.typeface import printable, uncovered_characters
 __all__ = [
     "ComparisonSheet",
     "LampSheet",
+    "PagePlace",
     "PdfEngine",
     "SheetAttachment",
     "TenderDocument",
@@ -42,6 +44,7 @@ __all__ = [
     "describe_lamp",
     "describe_letters",
     "describe_tender_report",
+    "page_place",
     "palette",
     "pdf_engine",
     "pdf_engine_missing",
@@ -53,5 +56,6 @@ __all__ = [
     "theme_overrides",
     "theme_problems",
     "themes",
+    "tree_of",
     "uncovered_characters",
 ]

@@ -9,13 +9,15 @@ from typing import Any
 
 import numpy as np
 
+from generator.language import told
+from generator.language.speaking import decimal_sign
 from generator.quantities import quantity
 from generator.records.assessment import Assessment
 from generator.records.comparison import ComparisonCell, ComparisonMatrix, SheetContext
 from generator.records.curves import SpectrumCurve
 from generator.records.verdict import VerdictWord
 from generator.sheets.comparison_description import ComparisonColumn
-from generator.sheets.comparison_words import CONTROL_WORDS, PRICE, QUESTIONS
+from generator.sheets.comparison_words import PRICE, QUESTIONS, control_words
 from generator.sheets.number_format import decimals_for
 from generator.sheets.shown_names import ShownNames
 from generator.sheets.words import COMPARISON_SIGNS, MARKS
@@ -95,7 +97,8 @@ def comparison_data(
     Returns
     -------
     str
-        JSON without a character that could end its element.
+        JSON without a character that could end its element; words, labels and the decimal sign
+        are those of the language that is being spoken.
     """
     places = {name: index for index, name in enumerate(matrix.quantities)}
     return page_json(
@@ -104,7 +107,8 @@ def comparison_data(
             "lamps": _lamps(assessment, matrix, columns, places, names),
             "pair": pair,
             "spectra": _spectra(context),
-            "words": dict(CONTROL_WORDS),
+            "words": control_words(),
+            "decimal": decimal_sign(),
         }
     )
 
@@ -125,9 +129,9 @@ def _column(
     )
     return {
         "key": column.key,
-        "label": column.label,
-        "symbol": column.symbol,
-        "unit": column.unit,
+        "label": told(column.label),
+        "symbol": told(column.symbol),
+        "unit": told(column.unit),
         "chosen": column.chosen,
         "number": numbers,
         "better": -1 if at is None else matrix.better.get(column.key, 0),
@@ -156,8 +160,8 @@ def _lamps(
         rows.append(
             {
                 "id": row.lamp_id,
-                "model": names.lamp(lamp),
-                "bidder": names.bidder(lamp),
+                "model": told(names.lamp(lamp)),
+                "bidder": told(names.bidder(lamp)),
                 "currency": lamp.offer.currency or "",
                 "counts": {MARKS[word]: row.counts.get(word, 0) for word in VerdictWord},
                 "cells": cells,
@@ -178,7 +182,7 @@ def _figure(cell: ComparisonCell, name: str) -> list[Any] | None:
     if figure is None or figure.value is None:
         return None
     if isinstance(figure.value, str):
-        return [figure.value]
+        return [told(figure.value)]
     spread = figure.expanded_uncertainty
     decimals = decimals_for(spread, quantity(name).decimals)
     return [float(figure.value), None if spread is None else float(spread), decimals]

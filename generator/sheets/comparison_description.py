@@ -33,6 +33,8 @@ class ComparisonCellText:
         Why there is no number; empty otherwise.
     ruler
         Margin ruler as SVG; empty where no clause limits the figure.
+    computed
+        Whether the figure is computed, which goes without saying.
     best
         Whether no other lamp is better.
     missing
@@ -44,6 +46,7 @@ class ComparisonCellText:
     grade: str = ""
     reason: str = ""
     ruler: str = ""
+    computed: bool = False
     best: bool = False
     missing: bool = False
 

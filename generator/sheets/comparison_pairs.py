@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from decimal import Decimal
 from typing import Literal
 
+from generator.language import say, sentence, told
 from generator.records.comparison import ComparisonMatrix, ComparisonRow
 from generator.records.lamp import Lamp
 from generator.records.verdict import VerdictWord
@@ -29,7 +30,8 @@ SCATTER_UP = ("efficacy_lm_per_w", "luminous_flux_lm", "ra")
 SCATTER_ACROSS = (PRICE, "cct_k", "power_w")
 """Figures drawn upwards and across, the first that at least two lamps have."""
 
-_HEADING = "Two figures against each other"
+_HEADING = say("Two figures against each other")
+_NOT_DRAWN = say("Not drawn: fewer than two lamps have two figures.")
 _FEWEST = 2
 
 _Value = tuple[Decimal, Decimal | None, str]
@@ -91,17 +93,17 @@ def scatter_drawing(
     across, up = pair
     first, second = _values(across, lamps, matrix), _values(up, lamps, matrix)
     both = [
-        (names.lamp(lamp), row, first[lamp.lamp_id], second[lamp.lamp_id])
+        (told(names.lamp(lamp)), row, first[lamp.lamp_id], second[lamp.lamp_id])
         for lamp, row in zip(lamps, matrix.rows, strict=True)
         if lamp.lamp_id in first and lamp.lamp_id in second
     ]
     if len(both) < _FEWEST:
-        return Drawing("scatter", _HEADING, "Not drawn: fewer than two lamps have two figures.")
+        return Drawing("scatter", _HEADING, _NOT_DRAWN)
     named = {column.key: column for column in columns}
     x, y = (_axis(named[key], matrix) for key in (across, up))
     points = [_point(*item) for item in both]
     caption = _caption(points, named[across].label, named[up].label)
-    svg = draw_scatter(points, x, y, caption, palette)
+    svg = draw_scatter(points, x, y, told(caption), palette)
     return Drawing("scatter", _HEADING, caption, svg, scatter_table(points, x, y))
 
 
@@ -119,13 +121,13 @@ def _values(key: str, lamps: Sequence[Lamp], matrix: ComparisonMatrix) -> dict[s
         figure = row.cells[at].figure
         if figure is not None and figure.number is not None:
             text = figure_text(figure, key)
-            told = f"{text.number} {text.uncertainty}".rstrip()
-            found[row.lamp_id] = (figure.number, figure.expanded_uncertainty, told)
+            written = f"{text.number} {text.uncertainty}".rstrip()
+            found[row.lamp_id] = (figure.number, figure.expanded_uncertainty, written)
     return found
 
 
 def _axis(column: ComparisonColumn, matrix: ComparisonMatrix) -> ScatterAxis:
-    name = f"{column.label}, {column.unit}" if column.unit else column.label
+    name = f"{column.label}, {column.unit}" if column.unit else told(column.label)
     if column.key not in matrix.quantities:
         return ScatterAxis(name)
     at = matrix.quantities.index(column.key)
@@ -155,8 +157,13 @@ def _worst(row: ComparisonRow) -> Literal["fail", "open", "pass"]:
 
 def _caption(points: Sequence[ScatterPoint], across: str, up: str) -> str:
     best = max(points, key=lambda point: point.y)
-    return (
-        f"{up[0].upper()}{up[1:]} against {across}. Highest: {best.name}. A dot passes every "
-        "clause, a ring has something open, a cross fails a clause; bars are expanded "
-        "uncertainties, broken lines are limits."
+    return sentence(
+        say(
+            "{up} against {across}. Highest: {lamp}. A dot passes every clause, a ring has "
+            "something open, a cross fails a clause; bars are expanded uncertainties, broken "
+            "lines are limits.",
+            up=up,
+            across=across,
+            lamp=best.name,
+        )
     )

@@ -8,6 +8,7 @@ from __future__ import annotations
 
 from html import escape
 
+from generator.language import told
 from generator.sheets.drawings.drawing import Palette
 from generator.sheets.drawings.margin_ruler import LEFT_END, RIGHT_END, Distance, place
 from generator.sheets.drawings.svg import coordinate
@@ -31,7 +32,7 @@ def draw_cell_ruler(distance: Distance, role: str, title: str, palette: Palette)
     palette
         Colours of the theme.
     """
-    limit = coordinate(place(0, _WIDTH))
+    limit, words = coordinate(place(0, _WIDTH)), escape(told(title), quote=False)
     axis = f"M0 {_MIDDLE:g}H{_WIDTH:g}M{limit} 0V{_HEIGHT:g}"
     parts = [f'<path class="s-quiet" fill="none" stroke="{palette["quiet"]}" d="{axis}"/>']
     if distance.uncertainty:
@@ -39,7 +40,7 @@ def draw_cell_ruler(distance: Distance, role: str, title: str, palette: Palette)
     parts.append(_filled(_tick(distance.margin), role, palette))
     return (
         f'<svg class="ruler" role="img" viewBox="0 0 {_WIDTH:g} {_HEIGHT:g}" width="{_WIDTH:g}"'
-        f' height="{_HEIGHT:g}"><title>{escape(title, quote=False)}</title>{"".join(parts)}</svg>'
+        f' height="{_HEIGHT:g}"><title>{words}</title>{"".join(parts)}</svg>'
     )
 
 

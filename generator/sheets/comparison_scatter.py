@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Literal
 
+from generator.language import say, say_as
 from generator.sheets.comparison_data import LimitLine
 from generator.sheets.drawings.axes import Frame, Scale, label, ticks
 from generator.sheets.drawings.drawing import DataTable, Palette
@@ -17,6 +18,12 @@ _WIDTH, _HEIGHT = 640.0, 360.0
 _LEFT, _RIGHT, _TOP, _BOTTOM = 44.0, 20.0, 24.0, 36.0
 _MARGIN = 0.08
 _MOST_NAMES, _LETTER, _NAME_HEIGHT = 40, 5.3, 11.0
+
+_STANDING = {
+    "pass": say("fails none"),
+    "open": say_as("verdict", "open"),
+    "fail": say_as("verdict", "fails"),
+}
 
 Box = tuple[float, float, float, float]
 
@@ -159,6 +166,5 @@ def _free(box: Box, taken: Sequence[Box], frame: Frame) -> bool:
 
 def scatter_table(points: Sequence[ScatterPoint], x: ScatterAxis, y: ScatterAxis) -> DataTable:
     """Give the numbers behind the plot."""
-    words = {"pass": "fails none", "open": "open", "fail": "fails"}
-    rows = tuple((p.name, p.x_text, p.y_text, words[p.worst]) for p in points)
-    return DataTable(("Lamp", x.name, y.name, "Verdict"), rows)
+    rows = tuple((p.name, p.x_text, p.y_text, _STANDING[p.worst]) for p in points)
+    return DataTable((say("Lamp"), x.name, y.name, say("Verdict")), rows)

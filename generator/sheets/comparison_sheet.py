@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping, Sequence
 
 from generator.errors import SheetError
+from generator.language import joined, say, say_as, say_counted
 from generator.quantities import quantity
 from generator.records.assessment import Assessment
 from generator.records.comparison import (
@@ -13,6 +14,7 @@ from generator.records.comparison import (
     ComparisonRow,
     SheetContext,
 )
+from generator.records.figure import Grade
 from generator.records.finding import Severity
 from generator.records.lamp import Lamp, Offer
 from generator.records.verdict import Verdict, VerdictWord
@@ -29,10 +31,10 @@ from generator.sheets.comparison_ruler import draw_cell_ruler
 from generator.sheets.comparison_spectra import spectra_drawings
 from generator.sheets.comparison_words import (
     CHOSEN_COLUMNS,
-    CONTROL_WORDS,
     PRICE,
     QUESTIONS,
     SHORT_LABELS,
+    control_words,
 )
 from generator.sheets.drawings.drawing import Palette
 from generator.sheets.figure_text import count_texts, distance_of, figure_text, verdict_text
@@ -101,7 +103,7 @@ def describe_comparison(assessment: Assessment, context: SheetContext) -> Compar
         spectra=spectra_drawings(assessment, context, colours, names),
         scatter=scatter_drawing(campaign.lamps, matrix, columns, pair, colours, names),
         bidders=tuple(filter(None, dict.fromkeys(map(names.bidder, campaign.lamps)))),
-        words=dict(CONTROL_WORDS),
+        words=control_words(),
         data=comparison_data(assessment, context, matrix, columns, pair, names),
         notes=names.notes(clean_notes(campaign.notes.get("campaign", ""))),
         questions=_questions(assessment, names),
@@ -118,7 +120,9 @@ def _questions(assessment: Assessment, names: ShownNames) -> tuple[LampQuestions
             lamp.lamp_id,
             names.lamp(lamp),
             tuple(
-                f"{item.title} ({SEVERITY_WORDS[item.severity]})"
+                say(
+                    "{title} ({severity})", title=item.title, severity=SEVERITY_WORDS[item.severity]
+                )
                 for item in assessment.findings_of(lamp.lamp_id)
                 if item.severity is not Severity.REMARK
             ),
@@ -131,15 +135,26 @@ def _questions(assessment: Assessment, names: ShownNames) -> tuple[LampQuestions
 def _sentence(rows: Sequence[ComparisonRow], lamps: Mapping[str, Lamp], names: ShownNames) -> str:
     clean = [row for row in rows if not row.counts.get(VerdictWord.FAIL, 0)]
     failing = len(rows) - len(clean)
-    compared = f"{len(rows)} lamp{'' if len(rows) == 1 else 's'} compared"
+    compared = say_counted("{count} lamp compared", "{count} lamps compared", len(rows))
     if not failing:
-        return f"{compared}; none fails a clause."
-    told = f"{compared}; {failing} fail{'s' if failing == 1 else ''} at least one clause."
+        return say("{compared}; none fails a clause.", compared=compared)
+    stated = say_counted(
+        "{compared}; {count} fails at least one clause.",
+        "{compared}; {count} fail at least one clause.",
+        failing,
+        compared=compared,
+    )
     if not clean or len(clean) > _MOST_NAMED or len(clean) >= failing:
-        return told
-    called = [names.lamp(lamps[row.lamp_id]) for row in clean]
-    listed = called[0] if len(called) == 1 else f"{', '.join(called[:-1])} and {called[-1]}"
-    return f"{told} Without a fail: {listed}."
+        return stated
+    lamps_named = _listed([names.lamp(lamps[row.lamp_id]) for row in clean])
+    return say("{stated} Without a fail: {lamps}.", stated=stated, lamps=lamps_named)
+
+
+def _listed(called: Sequence[str]) -> str:
+    """Names one after another, the last with an ``and`` before it."""
+    if len(called) == 1:
+        return called[0]
+    return say_as("list", "{first} and {last}", first=joined(", ", called[:-1]), last=called[-1])
 
 
 def _columns(matrix: ComparisonMatrix, offers: Sequence[Offer]) -> tuple[ComparisonColumn, ...]:
@@ -196,19 +211,25 @@ def _row(
 
 def _price(offer: Offer, unit: str) -> ComparisonCellText:
     if offer.unit_price is None:
-        return ComparisonCellText("not offered", missing=True)
+        return ComparisonCellText(say("not offered"), missing=True)
     currency = "" if unit or not offer.currency else f"\u00a0{offer.currency}"
     return ComparisonCellText(f"{exact_text(offer.unit_price)}{currency}")
 
 
 def _cell(cell: ComparisonCell, name: str, colours: Palette) -> ComparisonCellText:
-    text = figure_text(cell.figure, name)
-    if text.missing:
-        reason = "" if text.reason in {NOT_MEASURED, "not among the data"} else text.reason
+    figure, text = cell.figure, figure_text(cell.figure, name)
+    if figure is None or figure.value is None:
+        told_enough = figure is None or figure.reason == NOT_MEASURED
+        reason = "" if told_enough else text.reason
         return ComparisonCellText(NOT_MEASURED, reason=reason, missing=True)
     ruler = _ruler(cell.verdict, colours) if cell.verdict is not None else ""
     return ComparisonCellText(
-        text.number, text.uncertainty, text.grade, ruler=ruler, best=cell.best
+        text.number,
+        text.uncertainty,
+        text.grade,
+        ruler=ruler,
+        computed=figure.grade is Grade.COMPUTED,
+        best=cell.best,
     )
 
 
@@ -218,5 +239,11 @@ def _ruler(verdict: Verdict, colours: Palette) -> str:
         return ""
     text = verdict_text(verdict, colours)
     limit = f"{text.limit}\u00a0{text.unit}".rstrip("\u00a0")
-    title = f"{text.word}: {text.title}, {limit}, margin {text.margin}"
+    title = say(
+        "{verdict}: {clause}, {limit}, margin {margin}",
+        verdict=text.word,
+        clause=text.title,
+        limit=limit,
+        margin=text.margin,
+    )
     return draw_cell_ruler(distance, VERDICT_ROLES[verdict.verdict], title, colours)

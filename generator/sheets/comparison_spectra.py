@@ -9,6 +9,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, say, say_as, told
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext
 from generator.sheets.comparison_data import GRID_NM, relative_spectrum
@@ -71,18 +72,35 @@ def spectra_drawings(
     """
     lines = _lines(assessment, context, names)
     if not lines:
-        return (Drawing("spectra", "Spectra", "Not drawn: the campaign has no spectrum."),)
+        return (
+            Drawing("spectra", say("Spectra"), say("Not drawn: the campaign has no spectrum.")),
+        )
     drawings = []
     for nominal in sorted({line.nominal_k for line in lines}):
         group = [line for line in lines if line.nominal_k == nominal]
-        heading = f"Spectra, about {nominal}\u00a0K" if nominal else "Spectra, white not known"
+        heading = (
+            say("Spectra, about {white}\u00a0K", white=nominal)
+            if nominal
+            else say("Spectra, white not known")
+        )
         plots = _shared_out(group, len(SPECTRUM_LINES))
         for number, part in enumerate(plots, start=1):
-            name = heading if len(plots) == 1 else f"{heading}, {number} of {len(plots)}"
+            name = (
+                heading
+                if len(plots) == 1
+                else say(
+                    "{heading}, {number} of {count}",
+                    heading=heading,
+                    number=number,
+                    count=len(plots),
+                )
+            )
             key = f"spectra-{nominal}-{number}"
             caption = _caption(part)
             drawings.append(
-                Drawing(key, name, caption, _plot(part, group, caption, palette), _table(part))
+                Drawing(
+                    key, name, caption, _plot(part, group, told(caption), palette), _table(part)
+                )
             )
     return tuple(drawings)
 
@@ -96,7 +114,7 @@ def _lines(assessment: Assessment, context: SheetContext, names: ShownNames) -> 
         figure = assessment.figures.best(lamp.lamp_id, "cct_k")
         number = figure.number if figure else None
         nominal = _nearest(float(number)) if number else 0
-        found.append(_Line(names.lamp(lamp), nominal, relative_spectrum(curves.spectrum)))
+        found.append(_Line(told(names.lamp(lamp)), nominal, relative_spectrum(curves.spectrum)))
     return found
 
 
@@ -120,18 +138,32 @@ def _blue_peak(line: _Line) -> float:
 def _caption(lines: Sequence[_Line]) -> str:
     peaks = [_blue_peak(line) for line in lines]
     low, high = min(peaks), max(peaks)
-    where = f"at {low:.0f} nm" if low == high else f"between {low:.0f} nm and {high:.0f} nm"
+    where = (
+        say("at {wavelength:.0f} nm", wavelength=low)
+        if low == high
+        else say("between {low:.0f} nm and {high:.0f} nm", low=low, high=high)
+    )
     reds = {
         line.name: float(np.nansum(line.shares[GRID_NM >= 620]) / np.nansum(line.shares))
         for line in lines
     }
     if len(lines) == 1:
         red = _percent(reds[lines[0].name])
-        return f"{lines[0].name}: strongest blue {where}; {red} of its radiation beyond 620 nm."
+        return say(
+            "{lamp}: strongest blue {where}; {share} of its radiation beyond 620 nm.",
+            lamp=lines[0].name,
+            where=where,
+            share=red,
+        )
     most, least = max(reds, key=lambda name: reds[name]), min(reds, key=lambda name: reds[name])
-    return (
-        f"Strongest blue {where}. Most red beyond 620 nm: {most}, {_percent(reds[most])} of its "
-        f"radiation; least: {least}, {_percent(reds[least])}."
+    return say(
+        "Strongest blue {where}. Most red beyond 620 nm: {most}, {most_share} of its radiation; "
+        "least: {least}, {least_share}.",
+        where=where,
+        most=most,
+        most_share=_percent(reds[most]),
+        least=least,
+        least_share=_percent(reds[least]),
     )
 
 
@@ -144,9 +176,9 @@ def _plot(lines: Sequence[_Line], group: Sequence[_Line], title: str, palette: P
     canvas = Canvas(_WIDTH, _HEIGHT + legend, palette)
     base = _HEIGHT - 32
     frame = Frame(Scale(_FIRST_NM, _LAST_NM, 34, _WIDTH - 12), Scale(0, 105, base, _TOP + 8))
-    frame.draw_y(canvas, ticks(0, 100, 5), "% of the peak")
+    frame.draw_y(canvas, ticks(0, 100, 5), told(say("% of the peak")))
     _envelope(canvas, frame, group)
-    frame.draw_x(canvas, ticks(400, _LAST_NM, 8), "wavelength, nm")
+    frame.draw_x(canvas, ticks(400, _LAST_NM, 8), told(say("wavelength, nm")))
     for number, (line, (role, dash)) in enumerate(zip(lines, SPECTRUM_LINES, strict=False)):
         there = ~np.isnan(line.shares)
         points = frame.points(GRID_NM[there], line.shares[there] * 100)
@@ -168,12 +200,15 @@ def _envelope(canvas: Canvas, frame: Frame, group: Sequence[_Line]) -> None:
 
 
 def _table(lines: Sequence[_Line]) -> DataTable:
-    headings = ("wavelength, nm", *(f"{line.name}, % of the peak" for line in lines))
+    shares = (say("{lamp}, % of the peak", lamp=line.name) for line in lines)
+    headings = (say("wavelength, nm"), *shares)
     rows = tuple(
         (
             f"{GRID_NM[at]:.0f}",
             *(
-                "none" if np.isnan(line.shares[at]) else f"{100 * line.shares[at]:.1f}"
+                say_as("number", "none")
+                if np.isnan(line.shares[at])
+                else numeral(f"{100 * line.shares[at]:.1f}")
                 for line in lines
             ),
         )

@@ -115,19 +115,23 @@ class VerdictText:
 
 @dataclass(frozen=True, slots=True)
 class VerdictCount:
-    """How many verdicts of one word."""
+    """How many verdicts of one word: count and word as they are read, and the count alone."""
 
-    word: str
+    words: str
     mark: str
     count: str
 
 
 @dataclass(frozen=True, slots=True)
 class Note:
-    """One block of remarks, as HTML that was made clean, and its length as text."""
+    """One block of remarks, as HTML that was made clean, and its length as text.
+
+    ``language`` is the tag of its language where that may be another than that of the sheet.
+    """
 
     html: str
     length: int
+    language: str = ""
 
 
 @dataclass(frozen=True, slots=True)

@@ -7,6 +7,7 @@ import re
 from collections.abc import Iterable, Mapping
 from decimal import Decimal
 
+from generator.language import joined, say, say_counted, told
 from generator.quantities import QUANTITIES, quantity
 from generator.records.figure import Figure, Grade
 from generator.records.verdict import Basis, Verdict, VerdictWord
@@ -26,7 +27,15 @@ from generator.sheets.number_format import (
     shown_margin,
     telling_decimals,
 )
-from generator.sheets.words import COMPARISON_SIGNS, MARKS, NOT_MEASURED, VERDICT_ROLES
+from generator.sheets.words import (
+    BASIS_WORDS,
+    COMPARISON_SIGNS,
+    GRADE_NAMES,
+    MARKS,
+    NOT_MEASURED,
+    VERDICT_ROLES,
+    VERDICT_WORDS,
+)
 
 __all__ = [
     "count_texts",
@@ -65,11 +74,12 @@ def figure_text(figure: Figure | None, name: str) -> FigureText:
     entry = quantity(name)
     head = (name, entry.label, entry.symbol, entry.unit)
     if figure is None:
-        return FigureText(*head, NOT_MEASURED, "", "", "not among the data")
+        return FigureText(*head, NOT_MEASURED, "", "", say("not among the data"))
     if figure.value is None:
-        return FigureText(*head, NOT_MEASURED, "", "", figure.reason or "no reason given")
+        return FigureText(*head, NOT_MEASURED, "", "", figure.reason or say("no reason given"))
     if isinstance(figure.value, str):
-        return FigureText(*head, figure.value, "", figure.grade.value, "", _detail(figure, 0))
+        grade = GRADE_NAMES[figure.grade]
+        return FigureText(*head, figure.value, "", grade, "", _detail(figure, 0))
     uncertainty = figure.expanded_uncertainty
     decimals = _decimals(uncertainty, name)
     declared = figure.grade is Grade.DECLARED
@@ -77,7 +87,7 @@ def figure_text(figure: Figure | None, name: str) -> FigureText:
         *head,
         declared_text(figure.value) if declared else shown(figure.value, decimals),
         f"±\u00a0{_uncertainty_text(uncertainty, decimals)}" if uncertainty else "",
-        figure.grade.value,
+        GRADE_NAMES[figure.grade],
         "",
         _detail(figure, decimals),
     )
@@ -97,15 +107,18 @@ def _uncertainty_text(uncertainty: Decimal, decimals: int) -> str:
 
 
 def _detail(figure: Figure, decimals: int) -> str:
-    parts = []
+    parts: list[str] = []
     if figure.units_count > 1:
-        parts.append(f"mean of {figure.units_count} units")
+        parts.append(
+            say_counted("mean of {count} unit", "mean of {count} units", figure.units_count)
+        )
     if figure.spread is not None:
-        parts.append(f"standard deviation {spread_text(figure.spread, decimals)}")
+        spread = spread_text(figure.spread, decimals)
+        parts.append(say("standard deviation {spread}", spread=spread))
     if figure.method:
         parts.append(figure.method)
     remarks = (in_words(remark, decimals).rstrip(".") for remark in figure.remarks)
-    return "; ".join((*parts, *remarks))
+    return joined("; ", (*parts, *remarks))
 
 
 def spread_text(spread: Decimal, decimals: int) -> str:
@@ -136,13 +149,16 @@ def verdict_ruler(verdict: Verdict, text: VerdictText, palette: Palette) -> str:
     distance = distance_of(verdict)
     if distance is None:
         return ""
-    title = f"{text.title}: {text.value} against {text.limit} {text.unit}".rstrip()
-    return draw_margin_ruler(
-        distance,
-        VERDICT_ROLES[verdict.verdict],
-        f"{title}, margin {text.margin}, {text.word}",
-        palette,
+    limit = f"{text.limit} {text.unit}".rstrip()
+    finding = say(
+        "{title}: {value} against {limit}, margin {margin}, {word}",
+        title=text.title,
+        value=text.value,
+        limit=limit,
+        margin=text.margin,
+        word=text.word,
     )
+    return draw_margin_ruler(distance, VERDICT_ROLES[verdict.verdict], finding, palette)
 
 
 def verdict_text(verdict: Verdict, palette: Palette) -> VerdictText:
@@ -164,8 +180,8 @@ def verdict_text(verdict: Verdict, palette: Palette) -> VerdictText:
         clause=verdict.clause,
         title=verdict.title,
         source=verdict.source,
-        basis=verdict.basis.value,
-        word=verdict.verdict.value,
+        basis=BASIS_WORDS[verdict.basis],
+        word=VERDICT_WORDS[verdict.verdict],
         mark=MARKS[verdict.verdict],
         value=_value_text(dataclasses.replace(verdict, value=value), decimals),
         uncertainty=f"±\u00a0{_uncertainty_text(spread, decimals)}" if spread and number else "",
@@ -240,10 +256,10 @@ def in_words(text: str, decimals: int, known: Mapping[Decimal, str] | None = Non
     known
         Numbers that are written in a certain way.
     """
-    named = _NAME.sub(
-        lambda match: QUANTITIES[match[0]].label if match[0] in QUANTITIES else match[0], text
+    return _NAME.sub(
+        lambda match: told(QUANTITIES[match[0]].label) if match[0] in QUANTITIES else match[0],
+        readable(text, decimals, known),
     )
-    return readable(named, decimals, known)
 
 
 def severest(verdicts: Iterable[Verdict]) -> Verdict | None:
@@ -259,5 +275,23 @@ def severest(verdicts: Iterable[Verdict]) -> Verdict | None:
 def count_texts(counts: dict[VerdictWord, int]) -> tuple[VerdictCount, ...]:
     """Write how many verdicts there are of each word, the severest first."""
     return tuple(
-        VerdictCount(word.value, MARKS[word], str(counts.get(word, 0))) for word in _SEVERITY
+        VerdictCount(_counted(word, counts.get(word, 0)), MARKS[word], str(counts.get(word, 0)))
+        for word in _SEVERITY
     )
+
+
+def _counted(word: VerdictWord, count: int) -> str:
+    """Count and word; English has no plural of them, other languages have."""
+    return {
+        VerdictWord.PASS: say_counted("{count} pass", "{count} pass", count),
+        VerdictWord.FAIL: say_counted("{count} fail", "{count} fail", count),
+        VerdictWord.INCONCLUSIVE: say_counted(
+            "{count} inconclusive", "{count} inconclusive", count
+        ),
+        VerdictWord.NOT_MEASURED: say_counted(
+            "{count} not measured", "{count} not measured", count
+        ),
+        VerdictWord.NOT_APPLICABLE: say_counted(
+            "{count} not applicable", "{count} not applicable", count
+        ),
+    }[word]

@@ -7,8 +7,11 @@ from functools import cache
 from pathlib import Path
 from typing import TYPE_CHECKING, Any
 
+from generator.language import say, say_as, say_counted, told
+from generator.language.speaking import speaking
 from generator.sheets.comparison_description import ComparisonSheet
 from generator.sheets.lamp_description import LampSheet
+from generator.sheets.page_place import PagePlace
 from generator.sheets.tender_description import TenderDocument
 from generator.sheets.themes import BASE, templates_folder
 from generator.sheets.typeface import printable
@@ -20,26 +23,32 @@ __all__ = ["Sheet", "render_html", "render_paper"]
 
 Sheet = LampSheet | ComparisonSheet | TenderDocument
 
+_AT_ROOT = PagePlace("")
 _PAGES = {LampSheet: "lamp", ComparisonSheet: "comparison", TenderDocument: "tender"}
 
 
 @cache
 def _environment(
-    theme: str, overrides: Path | None, finalize: Callable[[Any], Any] | None = None
+    theme: str,
+    overrides: Path | None,
+    own_files: tuple[str, ...],
+    finalize: Callable[[Any], Any],
 ) -> Environment:
     """The templates of the campaign over those of the theme over those that all themes share.
 
     ``base/...`` and ``theme/...`` name a template of that place even where it is overridden, so
     that an override may extend what it replaces. Templates of a campaign come from outside the
-    program: they run in the sandbox.
+    program: they run in the sandbox. Their names are part of the key, so that one which is added
+    while somebody watches the folder is seen.
     """
+    del own_files
     from jinja2 import ChoiceLoader, FileSystemLoader, PrefixLoader, StrictUndefined
     from jinja2.sandbox import ImmutableSandboxedEnvironment
 
     base = FileSystemLoader(templates_folder() / BASE)
     own = FileSystemLoader([templates_folder() / theme, templates_folder() / BASE])
     campaign = [FileSystemLoader(overrides)] if overrides else []
-    return ImmutableSandboxedEnvironment(
+    environment = ImmutableSandboxedEnvironment(
         loader=ChoiceLoader([*campaign, own, PrefixLoader({"base": base, "theme": own})]),
         autoescape=True,
         undefined=StrictUndefined,
@@ -47,35 +56,45 @@ def _environment(
         trim_blocks=True,
         lstrip_blocks=True,
     )
+    environment.globals.update(say=say, say_as=say_as, say_counted=say_counted)
+    return environment
 
 
-def _template(sheet: Sheet, ending: str, finalize: Callable[[Any], Any] | None = None) -> Template:
-    environment = _environment(sheet.frame.theme, sheet.frame.overrides, finalize)
+def _template(sheet: Sheet, ending: str, finalize: Callable[[Any], Any]) -> Template:
+    overrides = sheet.frame.overrides
+    own_files = tuple(sorted(path.name for path in overrides.iterdir())) if overrides else ()
+    environment = _environment(sheet.frame.theme, overrides, own_files, finalize)
     return environment.get_template(f"{_PAGES[type(sheet)]}{ending}.html.j2")
 
 
+def _told(value: Any) -> Any:
+    """Say messages in the language that is being spoken; markup stays markup."""
+    return told(value) if isinstance(value, str) else value
+
+
 def _printable(value: Any) -> Any:
-    """Replace what the bundled typeface lacks; markup stays markup."""
-    return type(value)(printable(value)) if isinstance(value, str) else value
+    """Say messages, and replace what the bundled typeface lacks; markup stays markup."""
+    said = _told(value)
+    return type(said)(printable(said)) if isinstance(said, str) else said
 
 
-def render_html(sheet: Sheet, *, asset_prefix: str) -> str:
+def render_html(sheet: Sheet, place: PagePlace = _AT_ROOT) -> str:
     """Render the page of a sheet.
 
     Parameters
     ----------
     sheet
         The description.
-    asset_prefix
-        Path from the page to the folder of assets, ending in a slash: ``assets/`` for the
-        comparison, ``../assets/`` for a lamp.
+    place
+        Where the page lies in the issue; at its root by default.
 
     Returns
     -------
     str
-        A whole page; it asks for nothing but ``sheet.css`` and the faces under that prefix.
+        A whole page; it asks for nothing but what lies in the ``assets`` of the issue.
     """
-    return _template(sheet, "").render(sheet=sheet, asset_prefix=asset_prefix)
+    with speaking(sheet.frame.language):
+        return _template(sheet, "", _told).render(sheet=sheet, place=place)
 
 
 def render_paper(sheet: Sheet, *, dense: bool = False) -> str:
@@ -88,4 +107,5 @@ def render_paper(sheet: Sheet, *, dense: bool = False) -> str:
     dense
         Whether to set it closer, for want of room.
     """
-    return _template(sheet, "_paper", _printable).render(sheet=sheet, dense=dense)
+    with speaking(sheet.frame.language):
+        return _template(sheet, "_paper", _printable).render(sheet=sheet, dense=dense)

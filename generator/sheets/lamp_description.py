@@ -216,8 +216,8 @@ class Statements:
 
     Parameters
     ----------
-    conditions
-        Who measured, how, on what supply.
+    laboratory, conditions
+        Who measured, and with what; on what supply, how warm, for what purpose.
     uncertainties
         Expanded uncertainties that the laboratory states, by quantity.
     uncertainty, decision
@@ -228,6 +228,7 @@ class Statements:
         Global risks of the clauses that this lamp was judged by; ``None`` where there are none.
     """
 
+    laboratory: tuple[Pair, ...]
     conditions: tuple[Pair, ...]
     uncertainties: tuple[Pair, ...]
     uncertainty: str

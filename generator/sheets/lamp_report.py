@@ -6,6 +6,7 @@ import dataclasses
 from collections.abc import Iterable
 from decimal import Decimal
 
+from generator.language import joined
 from generator.records.assessment import Assessment
 from generator.records.figure import FigureSet
 from generator.records.lamp import Lamp
@@ -20,7 +21,6 @@ __all__ = ["product_table", "report_text"]
 
 _CLOSING = frozenset({"items_only", "reproduction", "signatory", "opinions", "amendments"})
 _PRINTED = "pages"  # the margin of every page says it
-_SUPPLIER, _MODEL = "supplier's name", "model identifier"
 
 
 def report_text(assessment: Assessment, lamp: Lamp, names: ShownNames) -> ReportText:
@@ -80,15 +80,15 @@ def product_table(
     for row in rows:
         if not row.text:
             reasons.setdefault(row.reason, []).append(row.name)
-    missing = tuple(Pair(reason, ", ".join(listed)) for reason, listed in reasons.items())
+    missing = tuple(Pair(reason, joined(", ", listed)) for reason, listed in reasons.items())
     return ProductTable(rows, missing) if rows else None
 
 
 def _product(field: ProductField, lamp: Lamp, names: ShownNames) -> ProductText:
     text = field.text
     if names.hidden(lamp.lamp_id):
-        called = {_SUPPLIER: names.bidder(lamp), _MODEL: names.lamp(lamp)}
-        text = called.get(field.name, text)
+        called = {lamp.bidder: names.bidder(lamp), lamp.model: names.lamp(lamp)}
+        text = called.get(text, text) if text else ""
     return ProductText(
         name=field.name,
         text=text,

@@ -6,11 +6,13 @@ from collections import Counter
 from collections.abc import Iterable
 
 from generator.errors import Problem
+from generator.language import joined, told
 from generator.quantities import GROUPS, QUANTITIES, quantity
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext
 from generator.records.curves import LampCurves
 from generator.records.figure import Figure, Grade
+from generator.records.harmonic_table import HarmonicTable
 from generator.records.lamp import Lamp
 from generator.records.verdict import Basis, Verdict, VerdictWord
 from generator.sheets.description import Pair
@@ -37,12 +39,17 @@ from generator.sheets.lamp_statements import (
 from generator.sheets.lamp_tables import declared_texts, units_table
 from generator.sheets.lamp_verdicts import shortfalls, verdict_groups, verdict_notes
 from generator.sheets.lamp_words import (
+    AGAINST,
     CLASS_ARROW,
     CLASS_MISSING,
     CLASS_WORDS,
     CLOSEST,
     EVIDENCE,
+    GAP,
+    GRADE_COUNTS,
     IDENTITY_LABELS,
+    SHEET_SUMMARY,
+    SHEET_TITLE,
     SILHOUETTE,
     VERDICT_SENTENCES,
 )
@@ -94,8 +101,8 @@ def describe_lamp(assessment: Assessment, lamp_id: str, context: SheetContext) -
     frame = sheet_frame(
         assessment,
         context,
-        title=f"{model} \u2013 spec sheet",
-        summary=f"{lamp_id}. {sentence}",
+        title=SHEET_TITLE.format(model=model),
+        summary=SHEET_SUMMARY.format(lamp=lamp_id, sentence=sentence),
         gaps=_gaps(assessment, lamp),
         keys=[quantity(item.quantity).source for item in figures],
         principal=[quantity(name).source for name in HEADLINE_LABELS],
@@ -118,7 +125,11 @@ def describe_lamp(assessment: Assessment, lamp_id: str, context: SheetContext) -
         shortfalls=shortfalls(groups),
         verdict_notes=verdict_notes(groups),
         drawings=lamp_drawings(
-            assessment, lamp_id, context.curves.get(lamp_id, LampCurves()), colours
+            assessment,
+            lamp_id,
+            context.curves.get(lamp_id, LampCurves()),
+            context.harmonic_tables.get(lamp_id, HarmonicTable()),
+            colours,
         ),
         declared=declared_texts(assessment, lamp, colours),
         product=product_table(context.products.get(lamp_id, ()), lamp, names),
@@ -137,7 +148,7 @@ def describe_lamp(assessment: Assessment, lamp_id: str, context: SheetContext) -
 
 def _silhouette(lamp: Lamp, colours: Palette) -> str:
     shape = lamp_shape(lamp.cap, directional=lamp.directional)
-    title = SILHOUETTE[shape].format(cap=lamp.cap)
+    title = told(SILHOUETTE[shape].format(cap=lamp.cap))
     return draw_silhouette(lamp.cap, directional=lamp.directional, title=title, palette=colours)
 
 
@@ -181,7 +192,7 @@ def _verdict_sentence(counts: Counter[VerdictWord]) -> str:
     keys = [first]
     keys += ["open"] if numbers["open"] else []
     keys += ["not measured"] if numbers["unmeasured"] else []
-    return " ".join(VERDICT_SENTENCES[key].format(**numbers) for key in keys)
+    return joined(" ", (VERDICT_SENTENCES[key].format(**numbers) for key in keys))
 
 
 def _closest(verdicts: Iterable[Verdict], colours: Palette) -> str:
@@ -213,7 +224,8 @@ def _headline(assessment: Assessment, lamp_id: str, name: str, colours: Palette)
     if limiting is None:
         return Headline(HEADLINE_LABELS[name], text)
     judged = verdict_text(limiting, colours)
-    return Headline(HEADLINE_LABELS[name], text, judged.ruler, f"{judged.limit} {limiting.regime}")
+    against = AGAINST.format(limit=judged.limit, regime=limiting.regime)
+    return Headline(HEADLINE_LABELS[name], text, judged.ruler, against)
 
 
 def _energy_class(assessment: Assessment, lamp: Lamp, colours: Palette) -> EnergyClass:
@@ -227,9 +239,9 @@ def _energy_class(assessment: Assessment, lamp: Lamp, colours: Palette) -> Energ
         found = {Grade.DECLARED: lamp.declared_energy_class} | found
     if not found:
         return EnergyClass(CLASS_MISSING)
-    words = ", ".join(CLASS_WORDS[grade].format(letter=found[grade]) for grade in found)
+    words = joined(", ", (CLASS_WORDS[grade].format(letter=found[grade]) for grade in found))
     declared = found.get(Grade.DECLARED, "")
-    title = CLASS_ARROW.format(letter=declared)
+    title = told(CLASS_ARROW.format(letter=declared))
     return EnergyClass(words, draw_class_arrow(declared, title, colours))
 
 
@@ -259,10 +271,13 @@ def _evidence(assessment: Assessment, lamp_id: str) -> str:
         figure.grade for figure in _shown_figures(assessment, lamp_id) if figure.value is not None
     )
     units = len(assessment.campaign.units_of(lamp_id))
-    counted = ", ".join(f"{grades[grade]} {grade.value}" for grade in Grade if grades[grade])
+    counted = joined(
+        ", ", (GRADE_COUNTS[grade].format(count=grades[grade]) for grade in Grade if grades[grade])
+    )
     first = {0: "no unit", 1: "one unit"}.get(units, "units")
     second = "figures" if counted else "no figures"
-    return " ".join(EVIDENCE[key].format(units=units, counted=counted) for key in (first, second))
+    keys = (first, second)
+    return joined(" ", (EVIDENCE[key].format(units=units, counted=counted) for key in keys))
 
 
 def _gaps(assessment: Assessment, lamp: Lamp) -> list[str]:
@@ -271,7 +286,7 @@ def _gaps(assessment: Assessment, lamp: Lamp) -> list[str]:
     names = {lamp.lamp_id, *(unit.unit_id for unit in units)}
     rows = {"lamps.csv": {lamp.row}, "units.csv": {unit.row for unit in units if unit.row}}
     return [
-        f"{problem.message} ({problem.place})"
+        GAP.format(message=problem.message, place=problem.place)
         for problem in assessment.campaign.warnings
         if _concerns(problem, names, rows)
     ]

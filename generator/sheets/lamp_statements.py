@@ -6,6 +6,7 @@ import re
 from collections.abc import Iterable, Iterator
 from decimal import Decimal
 
+from generator.language import Passage, joined, told
 from generator.quantities import QUANTITIES, quantity
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext
@@ -20,9 +21,11 @@ from generator.sheets.lamp_words import (
     AND_MORE,
     CONDITION_LABELS,
     DECISION_RULES,
+    FOUND_ON,
     GRADE_FIGURES,
     GRADE_WORDS,
     LAW_READ,
+    LIFE_BASES,
     SEVERITY_WORDS,
     UNCERTAINTY_NAMES,
     UNCERTAINTY_STATEMENT,
@@ -68,16 +71,16 @@ def finding_texts(findings: Iterable[Finding], context: SheetContext) -> tuple[F
 
 def _compared(finding: Finding) -> str:
     """What was compared; the lamp is named by the sheet already."""
-    text = finding.compared.removeprefix(f"lamp {finding.lamp_id}: ")
-    plain = _HYPHEN_MINUS.sub("\u2212", in_words(text, 0))
+    text = in_words(finding.compared, 0).removeprefix(told(FOUND_ON.format(lamp=finding.lamp_id)))
+    plain = _HYPHEN_MINUS.sub("\u2212", text)
     return f"{plain[:1].upper()}{plain[1:]}"
 
 
 def _named_source(text: str, context: SheetContext) -> str:
     """A source key with its clause, the key by the title of the document."""
-    key, comma, clause = text.partition(", ")
+    key, *clause = text.parts if isinstance(text, Passage) else text.split(", ", 1)
     known = context.sources.get(key)
-    return f"{known.title}{comma}{clause}" if known else text
+    return joined(", ", (known.title, *clause)) if known else text
 
 
 def method_texts(figures: Iterable[Figure], context: SheetContext) -> tuple[MethodText, ...]:
@@ -100,13 +103,18 @@ def method_texts(figures: Iterable[Figure], context: SheetContext) -> tuple[Meth
         MethodText(
             title,
             titled[title].formula,
-            ", ".join(
-                part
-                for part in (
-                    source_text(context.sources.get(titled[title].source), titled[title].source),
-                    titled[title].clause,
-                )
-                if part
+            joined(
+                ", ",
+                (
+                    part
+                    for part in (
+                        source_text(
+                            context.sources.get(titled[title].source), titled[title].source
+                        ),
+                        titled[title].clause,
+                    )
+                    if part
+                ),
             ),
             _some(list(_labels(names))),
         )
@@ -121,7 +129,7 @@ def _labels(names: Iterable[str]) -> Iterator[str]:
 
 def _some(labels: list[str]) -> str:
     """The first labels, and how many more there are."""
-    named = ", ".join(labels[:_MOST_LABELS])
+    named = joined(", ", labels[:_MOST_LABELS])
     left = len(labels) - _MOST_LABELS
     return AND_MORE.format(titles=named, count=left) if left > 0 else named
 
@@ -148,8 +156,9 @@ def grade_texts(figures: Iterable[Figure]) -> tuple[Pair, ...]:
 def _listed(names: list[str]) -> str:
     """Quantities by name; the groups of the catalogue where there are many."""
     if len(names) > _MOST_NAMED:
-        return ", ".join(dict.fromkeys(GROUP_HEADINGS[quantity(name).group] for name in names))
-    return ", ".join(quantity(name).label for name in names)
+        groups = dict.fromkeys(quantity(name).group for name in names)
+        return joined(", ", (GROUP_HEADINGS[group] for group in groups))
+    return joined(", ", (quantity(name).label for name in names))
 
 
 def statements_of(assessment: Assessment, lamp_id: str) -> Statements:
@@ -165,7 +174,8 @@ def statements_of(assessment: Assessment, lamp_id: str) -> Statements:
     settings = assessment.campaign.settings
     decision = settings.decision
     return Statements(
-        conditions=tuple(_conditions(assessment, lamp_id)),
+        laboratory=_labelled(_laboratory(settings)),
+        conditions=_labelled(_conditions(assessment, lamp_id)),
         uncertainties=tuple(_stated(name, rule) for name, rule in settings.uncertainty.items()),
         uncertainty=UNCERTAINTY_STATEMENT,
         decision=DECISION_RULES[decision.rule].format(
@@ -199,27 +209,35 @@ def _stated(name: str, rule: UncertaintyRule) -> Pair:
     return Pair(label, f"{exact_text(rule.absolute or Decimal(0))}\u00a0{unit}".rstrip("\u00a0"))
 
 
-def _conditions(assessment: Assessment, lamp_id: str) -> Iterator[Pair]:
-    settings = assessment.campaign.settings
-    laboratory, supply = settings.laboratory, settings.supply
+def _labelled(texts: dict[str, str]) -> tuple[Pair, ...]:
+    """What is stated, under its label."""
+    return tuple(Pair(CONDITION_LABELS[key], text) for key, text in texts.items() if text)
+
+
+def _laboratory(settings: Settings) -> dict[str, str]:
+    laboratory = settings.laboratory
     methods = laboratory.methods
+    return {
+        "laboratory": laboratory.name,
+        "address": laboratory.address,
+        "accreditation": laboratory.accreditation,
+        "methods": methods if isinstance(methods, str) else "; ".join(methods),
+    }
+
+
+def _conditions(assessment: Assessment, lamp_id: str) -> dict[str, str]:
+    settings = assessment.campaign.settings
+    supply = settings.supply
     volts = f"{exact_text(supply.voltage_v)}\u00a0V" if supply.voltage_v else ""
     hertz = f"{exact_text(supply.frequency_hz)}\u00a0Hz" if supply.frequency_hz else ""
     ambient = figure_text(
         assessment.figures.best(lamp_id, "ambient_temperature_c"), "ambient_temperature_c"
     )
-    texts = {
-        "laboratory": laboratory.name,
-        "address": laboratory.address,
-        "accreditation": laboratory.accreditation,
-        "methods": methods if isinstance(methods, str) else "; ".join(methods),
+    return {
         "supply": ", ".join(part for part in (volts, hertz) if part),
         "ambient": "" if ambient.missing else phrase(ambient),
         "purpose": settings.campaign.purpose,
     }
-    for key, text in texts.items():
-        if text:
-            yield Pair(CONDITION_LABELS[key], text)
 
 
 def use_texts(assessment: Assessment, lamp_id: str) -> tuple[UseText, ...]:
@@ -277,7 +295,7 @@ def _life_cycle(assessment: Assessment, lamp_id: str) -> Iterator[UseText]:
                 USE_LABELS["life"].format(years=years),
                 shown(bid.cost.total, 0),
                 bid.cost.currency,
-                USE_BASES["life"].format(lamps=lamps, prices=bid.cost.prices),
+                LIFE_BASES[bid.cost.prices].format(lamps=lamps),
             )
 
 

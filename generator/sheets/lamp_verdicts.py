@@ -2,9 +2,10 @@
 
 from __future__ import annotations
 
-import re
 from collections.abc import Iterable, Sequence
 
+from generator.language import Passage, joined, told
+from generator.records.clause import BUYER
 from generator.records.verdict import Basis, Verdict, VerdictWord
 from generator.sheets.description import Pair, VerdictText
 from generator.sheets.drawings.drawing import Palette
@@ -15,16 +16,16 @@ from generator.sheets.lamp_words import (
     AMENDED,
     AND_MORE,
     ASKED_BY_THE_BUYER,
+    JUDGED_RULER,
+    JUDGED_VALUE,
     SHORTFALL_SENTENCE,
+    SHORTFALL_VALUE,
     SHORTFALL_WORDS,
 )
 from generator.sheets.words import MARKS, VERDICT_ROLES
 
 __all__ = ["clause_text", "shortfalls", "verdict_groups", "verdict_notes"]
 
-_BUYER = "Buyer"
-_AMENDED = re.compile(r", as amended by (?:Delegated )?Regulation \(EU\) (\d+/\d+)")
-_SENTENCE_END = re.compile(r"(?<=\.) (?=[A-Z0-9])")
 _NOTE_DIGITS = 2
 _MOST_TITLES = 3
 
@@ -47,20 +48,15 @@ def verdict_groups(verdicts: Sequence[Verdict], colours: Palette) -> tuple[Verdi
 
 def _act(verdict: Verdict) -> tuple[str, str]:
     """Regime and the act that heads its group."""
-    return verdict.regime, verdict.source.split(", ", 1)[0] or verdict.regime
+    return verdict.regime, verdict.act or verdict.regime
 
 
-def _place(verdict: Verdict) -> str:
-    """Where a clause stands inside its act; the amending act stands in the heading."""
-    return _AMENDED.sub("", verdict.source.partition(", ")[2])
-
-
-def _heading(act: tuple[str, str], verdicts: list[Verdict]) -> str:
-    regime, name = act
-    amending = {found[1] for item in verdicts for found in _AMENDED.finditer(item.source)}
+def _heading(name: str, verdicts: list[Verdict]) -> str:
+    amending = {item.amending_act for item in verdicts if item.amending_act}
     if amending:
         return AMENDED.format(act=name, amending=", ".join(sorted(amending)))
-    return ASKED_BY_THE_BUYER.format(act=name) if regime == _BUYER else name
+    asked = any(item.status == BUYER for item in verdicts)
+    return ASKED_BY_THE_BUYER.format(act=name) if asked else name
 
 
 def _group(act: tuple[str, str], verdicts: list[Verdict], colours: Palette) -> VerdictGroup:
@@ -70,7 +66,7 @@ def _group(act: tuple[str, str], verdicts: list[Verdict], colours: Palette) -> V
         if item.verdict is not VerdictWord.NOT_APPLICABLE:
             judged.setdefault(item.clause, []).append(item)
     return VerdictGroup(
-        _heading(act, verdicts),
+        _heading(act[1], verdicts),
         tuple(clause_text(items, colours) for items in judged.values()),
         _left_out(outside),
     )
@@ -80,9 +76,8 @@ def _left_out(verdicts: Iterable[Verdict]) -> tuple[Pair, ...]:
     """Each reason why clauses do not apply, with the clauses it keeps out."""
     reasons: dict[str, dict[str, None]] = {}
     for item in verdicts:
-        reason = item.note.removeprefix("Not applicable: ").rstrip(".")
-        reasons.setdefault(reason, {})[item.title] = None
-    return tuple(Pair("; ".join(titles), reason) for reason, titles in reasons.items())
+        reasons.setdefault(told(item.reason).rstrip("."), {})[item.title] = None
+    return tuple(Pair(joined("; ", titles), reason) for reason, titles in reasons.items())
 
 
 def clause_text(verdicts: Sequence[Verdict], colours: Palette) -> ClauseText:
@@ -105,7 +100,7 @@ def clause_text(verdicts: Sequence[Verdict], colours: Palette) -> ClauseText:
     return ClauseText(
         clause=first.clause,
         title=first.title,
-        place=_place(first),
+        place=first.place,
         limit=limit,
         declared_limit=other,
         declared=declared,
@@ -122,19 +117,25 @@ def _ruler(
     places = {basis: distance_of(item) if item else None for basis, item in chosen.items()}
     if not any(places.values()):
         return ""
-    said = "; ".join(
-        f"{text.basis} {text.value} against {text.limit} {text.unit}".rstrip()
-        + f", margin {text.margin}, {text.word}"
-        for basis, text in shown.items()
-        if places[basis]
-    )
+    said = joined("; ", (_judged(text) for basis, text in shown.items() if places[basis]))
     found = chosen[Basis.DETERMINED]
     return draw_margin_ruler(
         places[Basis.DETERMINED],
         VERDICT_ROLES[found.verdict] if found else "open",
-        f"{next(iter(shown.values())).title}: {said}",
+        told(JUDGED_RULER.format(title=next(iter(shown.values())).title, judged=said)),
         colours,
         declared=places[Basis.DECLARED],
+    )
+
+
+def _judged(text: VerdictText) -> str:
+    """What a ruler shows, in words."""
+    return JUDGED_VALUE.format(
+        basis=text.basis,
+        value=text.value,
+        limit=f"{text.limit} {text.unit}".rstrip(),
+        margin=text.margin,
+        word=text.word,
     )
 
 
@@ -143,7 +144,7 @@ def _sentences(verdicts: Iterable[Verdict]) -> tuple[str, ...]:
     found = (
         in_words(sentence, _NOTE_DIGITS)
         for item in verdicts
-        for sentence in _SENTENCE_END.split(item.note)
+        for sentence in (item.note.parts if isinstance(item.note, Passage) else (item.note,))
         if sentence
     )
     return tuple(dict.fromkeys(found))
@@ -166,7 +167,7 @@ def verdict_notes(groups: Iterable[VerdictGroup]) -> tuple[Pair, ...]:
 
 
 def _first_titles(titles: list[str]) -> str:
-    named = "; ".join(titles[:_MOST_TITLES])
+    named = joined("; ", titles[:_MOST_TITLES])
     left = len(titles) - _MOST_TITLES
     return AND_MORE.format(titles=named, count=left) if left > 0 else named
 
@@ -189,15 +190,20 @@ def shortfalls(groups: Iterable[VerdictGroup]) -> tuple[Shortfall, ...]:
 
 
 def _shortfall(group: VerdictGroup, clause: ClauseText) -> Shortfall:
-    values = ", ".join(
-        f"{text.basis} {text.value}\u00a0{text.unit}".rstrip("\u00a0")
-        for text in clause.verdicts
-        if text.mark == clause.mark
+    values = joined(
+        ", ",
+        (
+            SHORTFALL_VALUE.format(
+                basis=text.basis, value=f"{text.value}\u00a0{text.unit}".rstrip("\u00a0")
+            )
+            for text in clause.verdicts
+            if text.mark == clause.mark
+        ),
     )
     return Shortfall(
         SHORTFALL_WORDS[clause.mark],
         clause.mark,
         clause.title,
         SHORTFALL_SENTENCE.format(values=values, limit=clause.limit or clause.declared_limit),
-        ", ".join(part for part in (group.heading, clause.place) if part),
+        joined(", ", (part for part in (group.heading, clause.place) if part)),
     )

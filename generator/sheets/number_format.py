@@ -1,7 +1,8 @@
 """Numbers as text: digits follow the uncertainty, exact values stay exact, minus is a minus.
 
 Rounding is for the eye alone and never moves a value to the other side of its limit: where it
-would, more digits are shown.
+would, more digits are shown. The decimal sign is that of the language that is being spoken; the
+space between thousands is the same in all of them.
 """
 
 from __future__ import annotations
@@ -10,6 +11,9 @@ import re
 from collections.abc import Iterable, Mapping
 from datetime import date
 from decimal import ROUND_CEILING, ROUND_HALF_UP, Decimal
+
+from generator.language import numeral, say, told
+from generator.language.speaking import date_in_words
 
 __all__ = [
     "date_words",
@@ -34,20 +38,6 @@ _RANGE = re.compile(r"(-?\d+(?:\.\d+)?) to (-?\d+(?:\.\d+)?)")
 _GROUPED_FROM = 5
 _ONE_DIGIT_FROM = 3
 _SPACE, _MINUS = "\u00a0", "\u2212"
-_MONTHS = (
-    "January",
-    "February",
-    "March",
-    "April",
-    "May",
-    "June",
-    "July",
-    "August",
-    "September",
-    "October",
-    "November",
-    "December",
-)
 
 
 def decimals_for(expanded_uncertainty: Decimal | None, otherwise: int) -> int:
@@ -114,7 +104,7 @@ def _written(value: Decimal) -> str:
         groups += [whole[at : at + 3] for at in range(head, len(whole), 3)]
         whole = _SPACE.join(groups)
     body = f"{whole}.{fraction}" if fraction else whole
-    return f"{_MINUS}{body}" if negative and value != 0 else body
+    return told(numeral(f"{_MINUS}{body}" if negative and value != 0 else body))
 
 
 def declared_text(value: Decimal, limits: Iterable[Decimal] = ()) -> str:
@@ -165,7 +155,9 @@ def limits_in(limit: Decimal | str | None) -> tuple[Decimal, ...]:
 def range_text(text: str) -> str:
     """Write a range such as ``60 to 82000`` with its thousands apart; other text stays."""
     ends = limits_in(text)
-    return f"{exact_text(ends[0])} to {exact_text(ends[1])}" if len(ends) > 1 else text
+    if len(ends) < 2:
+        return told(text)
+    return told(say("{low} to {high}", low=exact_text(ends[0]), high=exact_text(ends[1])))
 
 
 def readable(text: str, decimals: int, known: Mapping[Decimal, str] | None = None) -> str:
@@ -179,6 +171,11 @@ def readable(text: str, decimals: int, known: Mapping[Decimal, str] | None = Non
         Least decimals kept; a small number keeps four significant digits.
     known
         Numbers that are written in a certain way, so that sentence and table agree.
+
+    Returns
+    -------
+    str
+        The sentence in the language that is being spoken.
     """
     said = known or {}
 
@@ -187,10 +184,13 @@ def readable(text: str, decimals: int, known: Mapping[Decimal, str] | None = Non
         if value in said:
             return said[value]
         if len(value.normalize().as_tuple().digits) <= _LONGEST_DECLARED - 1:
-            return match[0]
+            return told(numeral(match[0]))
         return shown(value, max(decimals, _decimals_of_digits(value)))
 
-    return _LONG_NUMBER.sub(short, text)
+    def shortened(part: str) -> str:
+        return _LONG_NUMBER.sub(short, part)
+
+    return shortened(told(text, shortened))
 
 
 def telling_decimals(value: Decimal, limits: Iterable[Decimal], decimals: int) -> int:
@@ -225,4 +225,4 @@ def shown_margin(margin: Decimal, decimals: int) -> str:
 
 def date_words(day: date) -> str:
     """Write a date in words, for instance ``1 September 2021``."""
-    return f"{day.day}{_SPACE}{_MONTHS[day.month - 1]} {day.year}"
+    return date_in_words(day)

@@ -9,6 +9,8 @@ from __future__ import annotations
 import dataclasses
 from collections import Counter
 
+from generator.language import told
+from generator.language.speaking import speaking
 from generator.sheets.description import Note
 from generator.sheets.drawings.drawing import Drawing
 from generator.sheets.lamp_description import LampSheet, VerdictGroup
@@ -97,6 +99,11 @@ def fitted(sheet: LampSheet, budget: Budget) -> LampSheet:
     budget
         What it may hold.
     """
+    with speaking(sheet.frame.language):
+        return _fitted(sheet, budget)
+
+
+def _fitted(sheet: LampSheet, budget: Budget) -> LampSheet:
     drawings = _chosen(sheet.drawings, budget.drawings)
     methods, notes = sheet.methods[: budget.entries], sheet.verdict_notes[: budget.entries]
     left = {
@@ -124,8 +131,9 @@ def _product_fields(sheet: LampSheet) -> int:
 
 def _left_words(sheet: LampSheet, left: dict[str, int]) -> tuple[str, ...]:
     """What is said of the parts that are left to the page on screen."""
-    tables = (FOLDED["tables"],) if sheet.frame.short else ()
-    return (*tables, *(FOLDED[key].format(count=count) for key, count in left.items() if count))
+    tables = (told(FOLDED["tables"]),) if sheet.frame.short else ()
+    counted = (told(FOLDED[key].format(count=count)) for key, count in left.items() if count)
+    return (*tables, *counted)
 
 
 def _chosen(drawings: tuple[Drawing, ...], most: int) -> tuple[Drawing, ...]:
@@ -151,7 +159,7 @@ def _fold(group: VerdictGroup, kept: set[int]) -> VerdictGroup:
     words = Counter(text.word for clause in left for text in clause.verdicts)
     counted = ", ".join(f"{count} {word}" for word, count in words.items())
     return dataclasses.replace(
-        group, clauses=shown, folded=FOLDED["verdicts"].format(counted=counted)
+        group, clauses=shown, folded=told(FOLDED["verdicts"].format(counted=counted))
     )
 
 
@@ -160,5 +168,6 @@ def _shortened(notes: tuple[Note, ...], length: int) -> tuple[Note, ...]:
     for place, note in enumerate(notes):
         used += note.length
         if used > length:
-            return (*notes[:place], Note(f"<p>{FOLDED['remarks']}</p>", len(FOLDED["remarks"])))
+            said = told(FOLDED["remarks"])
+            return (*notes[:place], Note(f"<p>{said}</p>", len(said)))
     return notes

@@ -9,6 +9,8 @@ from __future__ import annotations
 from collections.abc import Iterator
 from typing import Any
 
+from generator.sheets.pdf_writing import write_out
+
 __all__ = ["ACCESSIBILITY_CLAIM", "finish_archive"]
 
 ACCESSIBILITY_CLAIM = b"""
@@ -54,6 +56,7 @@ def finish_archive(document: Any, pdf: Any) -> None:
     _placed_figures(pdf)
     _direct_items(pdf)
     _told_ends(pdf)
+    write_out(pdf)
 
 
 def _dictionaries(pdf: Any) -> Iterator[Any]:

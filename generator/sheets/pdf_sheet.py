@@ -9,13 +9,14 @@ import io
 import logging
 import warnings
 from collections.abc import Iterable, Iterator
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from datetime import UTC, date, datetime
 from functools import cache
 from pathlib import Path
 from typing import Any
 
 from generator.errors import SheetError
+from generator.sheets.engine_shortcuts import lean_defaults, put_aside_drawings, take_shortcuts
 from generator.sheets.html_sheet import Sheet, render_paper
 from generator.sheets.lamp_description import LampSheet
 from generator.sheets.paper_fit import budgets_for, fitted
@@ -105,6 +106,7 @@ def _read(page: str, fetcher: Any) -> Any:
     root = page_tree(page)
     if root is None:
         return HTML(string=page, url_fetcher=fetcher)
+    put_aside_drawings(root)
     document = HTML.__new__(HTML)
     document.base_url, document.url_fetcher, document.media_type = None, fetcher, "print"
     document.wrapper_element = ElementWrapper.from_html_root(root, content_language=None)
@@ -149,17 +151,34 @@ class PdfEngine:
         from weasyprint.text.fonts import FontConfiguration
 
         logging.getLogger("weasyprint").setLevel(logging.ERROR)
+        take_shortcuts()
         self._fetcher = _asset_fetcher()
         self._fonts = FontConfiguration()
-        self._style = CSS(
-            string=paper_style(theme, overrides), url_fetcher=self._fetcher, font_config=self._fonts
-        )
+        written = {
+            of_lamp: paper_style(theme, overrides, of_lamp=of_lamp) for of_lamp in (True, False)
+        }
+        self._styles = {
+            of_lamp: CSS(string=style, url_fetcher=self._fetcher, font_config=self._fonts)
+            for of_lamp, style in written.items()
+        }
+        self._defaults = lean_defaults(written[False])
         gc.freeze()
 
-    def lay_out(self, page: str) -> Any:
-        """Lay out a page of HTML; give the document of the engine."""
-        return _read(page, self._fetcher).render(
-            font_config=self._fonts, stylesheets=[self._style], pdf_variant=_VARIANT
+    def lay_out(self, page: str, *, of_lamp: bool = True) -> Any:
+        """Lay out a page of HTML; give the document of the engine.
+
+        Parameters
+        ----------
+        page
+            A whole page.
+        of_lamp
+            Whether it is a page of one lamp; pages of many have rules of their own.
+        """
+        document = _read(page, self._fetcher)
+        if self._defaults is not None:
+            document._ua_stylesheets = lambda _forms: [self._defaults]
+        return document.render(
+            font_config=self._fonts, stylesheets=[self._styles[of_lamp]], pdf_variant=_VARIANT
         )
 
     def render(self, sheet: Sheet, attachments: Iterable[SheetAttachment] = ()) -> bytes:
@@ -190,13 +209,20 @@ class PdfEngine:
 
     def _fitting(self, sheet: Sheet) -> Any:
         if not isinstance(sheet, LampSheet):
-            return self.lay_out(render_paper(sheet))
+            return self.lay_out(render_paper(sheet), of_lamp=False)
         most = MOST_SHORT_PAGES if sheet.frame.short else MOST_LAMP_PAGES
-        for budget in budgets_for(sheet):
+        rows, tried = 0, ""
+        for entry in budgets_for(sheet):
+            budget = replace(entry, rows=max(entry.rows, rows))
             page = render_paper(fitted(sheet, budget), dense=budget.dense)
-            document = self.lay_out(page)
-            if len(document.pages) <= most and _short_form_fits(document):
+            if page == tried:
+                continue
+            document, tried = self.lay_out(page), page
+            alone = _short_form_fits(document)
+            if alone and len(document.pages) <= most:
                 return document
+            # Where page one stands alone, fewer clauses on it would help no other page.
+            rows = budget.rows if alone else 0
         raise SheetError(f"the sheet of {sheet.lamp_id} does not fit on {most} pages")
 
 

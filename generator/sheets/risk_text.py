@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from decimal import Decimal
 
+from generator.language import joined, say, say_counted
 from generator.records.risk import CampaignRisk
 from generator.sheets.description import Pair, RiskStatement, RiskText
 from generator.sheets.number_format import shown
@@ -13,13 +14,12 @@ __all__ = ["risk_statement"]
 
 _MOST = 8
 _LEAST = Decimal("0.001")
-_SENTENCE = (
+_SENTENCE = say(
     "Consumer\u2019s risk: a lamp passes the clause and does not conform. Producer\u2019s risk: a "
     "lamp conforms and does not pass. Both are estimated over the lamps of this campaign from "
     "their margins and uncertainties, with a normal distribution (JCGM 106, clause 9.5)."
 )
-_REST = "Of {count} further clauses both risks are {most} or less."
-_NO_REASON = "no reason given"
+_NO_REASON = say("no reason given")
 
 
 def risk_statement(risks: Sequence[CampaignRisk]) -> RiskStatement | None:
@@ -41,7 +41,12 @@ def risk_statement(risks: Sequence[CampaignRisk]) -> RiskStatement | None:
     rest = ""
     if given[_MOST:]:
         most = _largest(given[_MOST]) or Decimal(0)
-        rest = _REST.format(count=len(given) - _MOST, most=_percent(most))
+        rest = say_counted(
+            "Of {count} further clause both risks are {most} or less.",
+            "Of {count} further clauses both risks are {most} or less.",
+            len(given) - _MOST,
+            most=_percent(most),
+        )
     return RiskStatement(_SENTENCE, texts[:_MOST], texts[_MOST:], rest, _unknown(risks))
 
 
@@ -76,6 +81,6 @@ def _unknown(risks: Sequence[CampaignRisk]) -> tuple[Pair, ...]:
     reasons: dict[str, dict[str, None]] = {}
     for item in risks:
         if _largest(item) is None:
-            title = f"{item.title} ({item.regime})"
+            title = say("{title} ({regime})", title=item.title, regime=item.regime)
             reasons.setdefault(item.reason or _NO_REASON, {})[title] = None
-    return tuple(Pair("; ".join(titles), reason) for reason, titles in reasons.items())
+    return tuple(Pair(joined("; ", titles), reason) for reason, titles in reasons.items())

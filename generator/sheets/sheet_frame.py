@@ -5,13 +5,14 @@ from __future__ import annotations
 from collections.abc import Iterable
 from typing import TYPE_CHECKING
 
+from generator.language.speaking import spoken_language
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext, SourceLike
 from generator.sheets.description import SheetFrame, SourceText
 from generator.sheets.drawings.margin_ruler import draw_ruler_scale
 from generator.sheets.number_format import date_words
 from generator.sheets.themes import palette
-from generator.sheets.words import CAUTIONS, LANGUAGE, RULER_SCALE_TITLE, RULER_SIDES
+from generator.sheets.words import CAUTIONS, RULER_SCALE_TITLE, RULER_SIDES
 
 if TYPE_CHECKING:
     from generator.records.settings import SheetTable
@@ -48,7 +49,7 @@ def sheet_frame(
     return SheetFrame(
         title=title,
         summary=summary,
-        language=LANGUAGE,
+        language=spoken_language(),
         theme=settings.sheet.theme,
         campaign=settings.campaign.title,
         reference=settings.campaign.reference,

@@ -3,13 +3,16 @@
 from __future__ import annotations
 
 import dataclasses
+import html
 import re
 from collections.abc import Mapping
 from typing import Any, TypeVar
 
+from generator.language import say, told
 from generator.records.assessment import Assessment
 from generator.records.lamp import Lamp
 from generator.sheets.description import Note
+from generator.sheets.finished import finished
 from generator.sheets.words import UNDER_CODE_NAMES
 
 __all__ = ["ShownNames"]
@@ -21,6 +24,7 @@ _AS_IT_IS = frozenset({"lamp_id", "key", "data", "theme", "overrides", "words"})
 _MARKUP = frozenset({"svg", "ruler", "arrow", "silhouette", "html", "ruler_scale"})
 _LEAST_LETTERS = 4  # a shorter word stands in too many sentences that tell nobody
 _BETWEEN_TAGS = re.compile(r">[^<]+<")
+_BIDDER = say("Bidder {code}")
 
 
 class ShownNames:
@@ -33,9 +37,10 @@ class ShownNames:
     """
 
     def __init__(self, assessment: Assessment) -> None:
-        self._codes = assessment.shown_bidders
+        self._language = assessment.campaign.settings.campaign.language
+        self._codes = {lamp: told(code) for lamp, code in assessment.shown_bidders.items()}
         self._letters = assessment.tender.codes if assessment.tender else {}
-        self._words = dict(_hidden_words(assessment, self._codes))
+        self._words = _hidden_words(assessment, self._codes, self._letters)
         longest_first = sorted(self._words, key=len, reverse=True)
         pattern = "|".join(map(re.escape, longest_first))
         self._pattern = re.compile(rf"(?<![\w-])(?:{pattern})(?![\w-])") if pattern else None
@@ -55,18 +60,23 @@ class ShownNames:
         maker who bids.
         """
         if self.hidden(lamp.lamp_id):
-            return f"Bidder {self._letters[lamp.lamp_id]}"
+            return told(_BIDDER.format(code=self._letters[lamp.lamp_id]))
         return "" if lamp.bidder in self._words else lamp.bidder
 
     def notes(self, notes: tuple[Note, ...]) -> tuple[Note, ...]:
         """Remarks, which are free text; under code names a sentence in their place."""
         if not (notes and self._codes):
-            return notes
-        return (Note(f"<p>{UNDER_CODE_NAMES}</p>", len(UNDER_CODE_NAMES)),)
+            return tuple(dataclasses.replace(note, language=self._language) for note in notes)
+        text = told(UNDER_CODE_NAMES)
+        return (Note(f"<p>{html.escape(text, quote=False)}</p>", len(text)),)
 
     def masked(self, described: Described) -> Described:
-        """Replace the names that still stand in the running text of a description."""
-        result: Described = self._masked(described, "") if self._pattern else described
+        """Replace the names that still stand in the running text of a description.
+
+        The messages of the description are said first: what is masked is what is read.
+        """
+        plain = finished(described)
+        result: Described = self._masked(plain, "") if self._pattern else plain
         return result
 
     def _masked(self, value: Any, field: str) -> Any:
@@ -94,15 +104,22 @@ class ShownNames:
         return self._pattern.sub(lambda found: self._words[found[0]], text)
 
 
-def _hidden_words(assessment: Assessment, codes: Mapping[str, str]) -> dict[str, str]:
+def _hidden_words(
+    assessment: Assessment, codes: Mapping[str, str], letters: Mapping[str, str]
+) -> dict[str, str]:
     """Every word that tells a bid -> what stands for it."""
     words: dict[str, str] = {}
+    lamp_word, report_word = told(say("the lamp")), told(say("the report"))
     for lamp in (lamp for lamp in assessment.campaign.lamps if lamp.lamp_id in codes):
         code = codes[lamp.lamp_id]
         for model in {lamp.model, lamp.offer.report_model}:
-            words[model] = code if words.get(model, code) == code else "the lamp"
-        words |= {lamp.bidder: code.partition(",")[0], lamp.offer.report_no or "": "the report"}
+            words[model] = code if words.get(model, code) == code else lamp_word
+        bidder = told(_BIDDER.format(code=letters[lamp.lamp_id]))
+        words |= {lamp.bidder: bidder, lamp.offer.report_no or "": report_word}
         units = assessment.campaign.units_of(lamp.lamp_id)
-        words |= {unit.unit_id: f"unit {place}" for place, unit in enumerate(units, 1)}
+        words |= {
+            unit.unit_id: told(say("unit {number}", number=place))
+            for place, unit in enumerate(units, 1)
+        }
         words[lamp.lamp_id] = code
     return {word: said for word, said in words.items() if len(word) >= _LEAST_LETTERS}

@@ -3,8 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import replace
+from decimal import Decimal
 
-from generator.records.tender import BidResult, CostItem, LifeCycleCost, LotResult
+from generator.language import joined, say, say_as, say_counted, told
+from generator.records.tender import BidResult, BreakEven, CostItem, LifeCycleCost, LotResult
 from generator.records.tender_settings import Sensitivity
 from generator.sheets.drawings.drawing import DataTable, Drawing, Palette
 from generator.sheets.drawings.tornado import draw_tornado
@@ -16,38 +19,38 @@ from generator.sheets.tender_description import (
     ParagraphBlock,
     TableBlock,
 )
-from generator.sheets.tender_text import NONE, amount, number
+from generator.sheets.tender_text import NONE, amount, capital, number
+from generator.sheets.tender_words import COST_ITEMS, EMISSION_BASES, MOVED_ASSUMPTIONS, PRICES
 
 __all__ = ["cost_blocks", "energy_blocks", "item_table", "tornado_blocks"]
 
-_STUDY = (
-    "Present value over {years} years, {prices} prices, in {currency}, for the number of lamps "
-    "named in each row."
-)
-_EQUAL = (
+_EQUAL = say(
     "Mean luminous flux is that over the study. Lamps needed is the number that gives the light "
     "the lot asks for; a dash stands where it asks for none."
 )
-_TORNADO = (
+_TORNADO = say(
     "{bid}: of the assumptions moved one at a time, {first} changes the life-cycle cost most, from "
     "{low} to {high} {currency}."
 )
-_RANGE = "{low} to {high}"
-_SAVED = "Against {lamp}, which the lot uses today."
-_FACTOR = "{basis}: {factor} g/kWh, {region}, {year}. Source: {source}"
+_RANGE = say("{low} to {high}")
+_SAVED = say("Against {lamp}, which the lot uses today.")
+_FACTOR = say("{basis}: {factor} g/kWh, {region}, {year}. Source: {source}")
+_LEAST_PAYBACK = Decimal("0.05")
+"""A shorter payback would be printed as nought [years]."""
 
 
 def cost_blocks(lot: LotResult, titles: Mapping[str, str], currency: str) -> Iterator[Block]:
     """Life-cycle cost by item, cost at equal light, break-even."""
     costed = [item for item in lot.bids if item.cost is not None]
-    yield HeadingBlock("Life-cycle cost", 3)
+    yield HeadingBlock(say("Life-cycle cost"), 3)
     withheld = [
-        f"{item.shown_as}: {'; '.join(item.withheld)}." for item in lot.bids if item.withheld
+        say("{bid}: {text}.", bid=item.shown_as, text=joined("; ", item.withheld))
+        for item in lot.bids
+        if item.withheld
     ]
     first = next((item.cost for item in costed if item.cost is not None), None)
     if first is not None:
-        words = _STUDY.format(years=first.years, prices=first.prices, currency=currency)
-        yield ParagraphBlock(words, "quiet")
+        yield ParagraphBlock(_study(first, currency), "quiet")
         yield item_table(lot, titles, currency)
         yield ParagraphBlock(_EQUAL, "quiet")
         yield _light_table(costed, currency)
@@ -55,21 +58,36 @@ def cost_blocks(lot: LotResult, titles: Mapping[str, str], currency: str) -> Ite
             yield ParagraphBlock(_SAVED.format(lamp=titles[lot.baseline_lamp]), "quiet")
             yield _break_even_table(costed, currency)
     if withheld:
-        yield ParagraphBlock("Not given")
+        yield ParagraphBlock(say("Not given"))
         yield ListBlock(tuple(withheld))
     if lot.notes:
         yield ListBlock(lot.notes)
 
 
+def _study(cost: LifeCycleCost, currency: str) -> str:
+    return say_counted(
+        "Present value over {count} year, {prices}, in {currency}, for the number of lamps named "
+        "in each row.",
+        "Present value over {count} years, {prices}, in {currency}, for the number of lamps named "
+        "in each row.",
+        cost.years,
+        prices=PRICES[cost.prices],
+        currency=currency,
+    )
+
+
 def item_table(lot: LotResult, titles: Mapping[str, str], currency: str) -> TableBlock:
     """Present value by item of cost, one row per bid and one for the baseline lamp."""
-    costs = [(item.shown_as, item.cost) for item in lot.bids if item.cost is not None]
+    costs: list[tuple[str, LifeCycleCost]] = [
+        (item.shown_as, item.cost) for item in lot.bids if item.cost is not None
+    ]
     if lot.baseline is not None:
-        costs.append((f"{titles[lot.baseline_lamp]} (in use today)", lot.baseline))
+        name = say("{lamp} (in use today)", lamp=titles[lot.baseline_lamp])
+        costs.append((name, lot.baseline))
     used = [item for item in CostItem if any(item in cost.by_item for _, cost in costs)]
     rows = tuple(_cost_row(name, cost, used) for name, cost in costs)
-    headings = ("Bid", "Lamps", *(item.value for item in used), "Total")
-    caption = f"Life-cycle cost by item, present value in {currency}"
+    headings = (say("Bid"), say("Lamps"), *(COST_ITEMS[item] for item in used), say("Total"))
+    caption = say("Life-cycle cost by item, present value in {currency}", currency=currency)
     return TableBlock(caption, headings, rows)
 
 
@@ -101,36 +119,40 @@ def _light_table(costed: Sequence[BidResult], currency: str) -> TableBlock:
             )
         )
     headings = (
-        "Bid",
-        "Initial flux, lm",
-        "Mean flux, lm",
-        "Light, Mlm h",
-        f"{currency} per Mlm h",
-        "Lamps needed",
+        say("Bid"),
+        say("Initial flux, lm"),
+        say("Mean flux, lm"),
+        say("Light, Mlm h"),
+        say("{currency} per Mlm h", currency=currency),
+        say("Lamps needed"),
     )
-    return TableBlock("Cost at equal light", headings, tuple(rows))
+    return TableBlock(say("Cost at equal light"), headings, tuple(rows))
 
 
 def _break_even_table(costed: Sequence[BidResult], currency: str) -> TableBlock:
     rows = []
     for item in costed:
         even = item.break_even
-        payback, year = NONE, NONE
+        year = NONE
         if even is not None:
-            year = "never" if even.year is None else str(even.year)
-            payback = number(even.simple_payback_years, 1)
-            if payback == "0.0":
-                payback = "< 0.1"
-            if even.simple_payback_years is None and even.year == 0:
-                payback = "at once"
-        rows.append((item.shown_as, amount(even.saving if even else None), year, payback))
+            year = say("never") if even.year is None else str(even.year)
+        saving = amount(even.saving if even else None)
+        rows.append((item.shown_as, saving, year, _payback(even) if even else NONE))
     headings = (
-        "Bid",
-        f"Saving, {currency}",
-        "Break-even, end of year",
-        "Simple payback, years",
+        say("Bid"),
+        say("Saving, {currency}", currency=currency),
+        say("Break-even, end of year"),
+        say("Simple payback, years"),
     )
-    return TableBlock("Saving against the lamp in use today, present value", headings, tuple(rows))
+    caption = say("Saving against the lamp in use today, present value")
+    return TableBlock(caption, headings, tuple(rows))
+
+
+def _payback(even: BreakEven) -> str:
+    years = even.simple_payback_years
+    if years is None:
+        return say("at once") if even.year == 0 else NONE
+    return f"< {number(Decimal('0.1'), 1)}" if abs(years) < _LEAST_PAYBACK else number(years, 1)
 
 
 def tornado_blocks(
@@ -140,7 +162,7 @@ def tornado_blocks(
     bids = [item for item in lot.bids if item.sensitivity and item.cost is not None]
     if not bids:
         return
-    yield HeadingBlock("Sensitivity", 3)
+    yield HeadingBlock(say("Sensitivity"), 3)
     yield DrawingBlock(_tornado(bids[0], currency, colours))
     spans = {
         "tariff": moved.tariff_percent,
@@ -149,8 +171,14 @@ def tornado_blocks(
         "life": moved.life_percent,
     }
     rows = tuple((item.shown_as, *_ranges(item, tuple(spans))) for item in bids)
-    headings = ("Bid", *(f"{name} ± {span} %" for name, span in spans.items()))
-    caption = f"Life-cycle cost with one assumption moved down and up, {currency}"
+    moves = (
+        say("{assumption} ± {span} %", assumption=MOVED_ASSUMPTIONS[name], span=span)
+        for name, span in spans.items()
+    )
+    headings = (say("Bid"), *moves)
+    caption = say(
+        "Life-cycle cost with one assumption moved down and up, {currency}", currency=currency
+    )
     yield TableBlock(caption, headings, rows)
 
 
@@ -160,14 +188,17 @@ def _ranges(item: BidResult, names: Sequence[str]) -> Iterator[str]:
     for name in names:
         bar = bars[name]
         yield (
-            "unchanged"
+            say_as("cost", "unchanged")
             if bar.swing == 0
             else _RANGE.format(low=amount(bar.low_cost), high=amount(bar.high_cost))
         )
 
 
 def _tornado(item: BidResult, currency: str, colours: Palette) -> Drawing:
-    bars, widest = item.sensitivity, item.sensitivity[0]
+    bars = tuple(
+        replace(bar, assumption=told(MOVED_ASSUMPTIONS[bar.assumption])) for bar in item.sensitivity
+    )
+    widest = bars[0]
     ends = sorted((widest.low_cost, widest.high_cost))
     says = _TORNADO.format(
         bid=item.shown_as,
@@ -178,12 +209,14 @@ def _tornado(item: BidResult, currency: str, colours: Palette) -> Drawing:
     )
     cost = float(item.cost.total) if item.cost is not None else 0.0
     rows = tuple((bar.assumption, amount(bar.low_cost), amount(bar.high_cost)) for bar in bars)
-    table = DataTable(("assumption", "cost at the lower", "cost at the higher"), rows)
+    table = DataTable(
+        (say("assumption"), say("cost at the lower"), say("cost at the higher")), rows
+    )
     return Drawing(
         "tornado",
-        "Sensitivity of the cost",
+        say("Sensitivity of the cost"),
         says,
-        draw_tornado(bars, cost, currency, says, colours),
+        draw_tornado(bars, cost, currency, told(says), colours),
         table,
     )
 
@@ -193,7 +226,7 @@ def energy_blocks(lot: LotResult, titles: Mapping[str, str]) -> Iterator[Block]:
     known = [item for item in lot.bids if item.energy is not None]
     if not known:
         return
-    yield HeadingBlock("Energy and emissions of a year", 3)
+    yield HeadingBlock(say("Energy and emissions of a year"), 3)
     first = known[0].energy
     bases = first.emissions if first is not None else ()
     rows = []
@@ -206,21 +239,33 @@ def energy_blocks(lot: LotResult, titles: Mapping[str, str]) -> Iterator[Block]:
         for emission in use.emissions:
             cells += [number(emission.tonnes, 2), number(emission.saving_tonnes, 2)]
         rows.append(tuple(cells))
-    headings = ["Bid", "Lamps", "In use, kWh", "Standby, kWh", "Saved, kWh"]
+    headings: list[str] = [
+        say("Bid"),
+        say("Lamps"),
+        say("In use, kWh"),
+        say("Standby, kWh"),
+        say("Saved, kWh"),
+    ]
     for emission in bases:
-        headings += [f"{emission.basis}, t CO2e", "saved, t CO2e"]
-    caption = "Energy and emissions of a year"
-    if lot.baseline_lamp:
-        caption += f"; saved against {titles[lot.baseline_lamp]}"
-    yield TableBlock(caption, tuple(headings), tuple(rows))
+        basis = EMISSION_BASES[emission.basis]
+        headings += [say("{basis}, t CO2e", basis=basis), say("saved, t CO2e")]
+    yield TableBlock(_energy_caption(lot, titles), tuple(headings), tuple(rows))
     factors = tuple(
         _FACTOR.format(
-            basis=emission.basis.capitalize(),
+            basis=capital(EMISSION_BASES[emission.basis]),
             factor=emission.factor.g_per_kwh,
             region=emission.factor.region,
-            year=emission.factor.year or "year not stated",
+            year=emission.factor.year or say("year not stated"),
             source=emission.factor.source,
         )
         for emission in bases
     )
     yield ListBlock((*factors, *(first.notes if first is not None else ())))
+
+
+def _energy_caption(lot: LotResult, titles: Mapping[str, str]) -> str:
+    if not lot.baseline_lamp:
+        return say("Energy and emissions of a year")
+    return say(
+        "Energy and emissions of a year; saved against {lamp}", lamp=titles[lot.baseline_lamp]
+    )

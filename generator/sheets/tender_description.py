@@ -140,7 +140,9 @@ class TenderDocument:
     pdf_name
         File of the same document on paper, from the page; empty without one.
     links
-        Further files that the page links to: words and path from the page.
+        Parts of the page and pages beside it: words and path from the page.
+    files
+        Data files that the page links to: words and path inside the issue.
     """
 
     frame: SheetFrame
@@ -149,6 +151,7 @@ class TenderDocument:
     blocks: tuple[Block, ...]
     pdf_name: str = ""
     links: tuple[Pair, ...] = ()
+    files: tuple[Pair, ...] = ()
 
 
 @dataclass(frozen=True, slots=True)

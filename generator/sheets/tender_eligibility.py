@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 
+from generator.language import joined, say, say_as
 from generator.records.tender import BidResult, Eligibility, LotResult, Outcome
 from generator.records.tender_settings import TenderSettings
 from generator.sheets.tender_description import (
@@ -15,7 +16,13 @@ from generator.sheets.tender_description import (
     TableBlock,
 )
 from generator.sheets.tender_text import NONE, amount, capital, number, worded
-from generator.sheets.tender_words import ASKED_REPORTS, CHECK_TITLES, LOT_OUTCOME, OUTCOME_NOTES
+from generator.sheets.tender_words import (
+    ASKED_REPORTS,
+    CHECK_TITLES,
+    LOT_OUTCOME,
+    OUTCOME_NOTES,
+    OUTCOMES,
+)
 
 __all__ = ["asked_for", "eligibility_blocks", "outcome_table", "question_blocks", "reason_table"]
 
@@ -26,7 +33,8 @@ def asked_for(settings: TenderSettings, titles: Mapping[str, str]) -> tuple[str,
     mandatory = (*tender.mandatory_regimes, *_titled(tender.mandatory_clauses, titles))
     words = [ASKED_REPORTS["report"]]
     if tender.reports_from or tender.reports_to:
-        begin, end = tender.reports_from or "any day", tender.reports_to or "the assessment"
+        begin = tender.reports_from or say("any day")
+        end = tender.reports_to or say("the assessment")
         words.append(ASKED_REPORTS["window"].format(begin=begin, end=end))
     if tender.minimum_sample_units:
         words.append(ASKED_REPORTS["sample"].format(units=tender.minimum_sample_units))
@@ -35,7 +43,7 @@ def asked_for(settings: TenderSettings, titles: Mapping[str, str]) -> tuple[str,
     if tender.accreditation_required:
         words.append(ASKED_REPORTS["accreditation"])
     if mandatory:
-        words.append(ASKED_REPORTS["clauses"].format(clauses="; ".join(mandatory)))
+        words.append(ASKED_REPORTS["clauses"].format(clauses=joined("; ", mandatory)))
     else:
         words.append(ASKED_REPORTS["own"])
     return (*words, ASKED_REPORTS["findings"])
@@ -51,8 +59,10 @@ def outcome_table(lot: LotResult, currency: str) -> TableBlock:
         rows.append(
             (
                 item.shown_as,
-                item.eligibility.outcome.value,
-                f"{rank} (provisional)" if score and score.rank and score.provisional else rank,
+                OUTCOMES[item.eligibility.outcome],
+                say("{rank} (provisional)", rank=rank)
+                if score and score.rank and score.provisional
+                else rank,
                 number(score.total if score else None, 2),
                 amount(item.price),
                 amount(item.cost.total if item.cost else None),
@@ -61,16 +71,16 @@ def outcome_table(lot: LotResult, currency: str) -> TableBlock:
             )
         )
     headings = (
-        "Bid",
-        "Outcome",
-        "Rank",
-        "Points",
-        f"Price, {currency}",
-        f"Life-cycle cost, {currency}",
-        "Reasons",
-        "Questions",
+        say("Bid"),
+        say("Outcome"),
+        say("Rank"),
+        say_as("award", "Points"),
+        say("Price, {currency}", currency=currency),
+        say("Life-cycle cost, {currency}", currency=currency),
+        say("Reasons"),
+        say("Questions"),
     )
-    return TableBlock("The bids of this lot", headings, tuple(rows), (0, 1, 2))
+    return TableBlock(say("The bids of this lot"), headings, tuple(rows), (0, 1, 2))
 
 
 def reason_table(bids: Sequence[BidResult], caption: str, *, named: bool = True) -> TableBlock:
@@ -83,7 +93,13 @@ def reason_table(bids: Sequence[BidResult], caption: str, *, named: bool = True)
         for item in bids
         for reason in item.eligibility.reasons
     )
-    headings = ("Bid", "Requirement", "What was found", "Where it stands", "Clause")[first:]
+    headings = (
+        say("Bid"),
+        say("Requirement"),
+        say("What was found"),
+        say("Where it stands"),
+        say("Clause"),
+    )[first:]
     return TableBlock(caption, headings, rows, tuple(range(5 - first)), wide=2 - first)
 
 
@@ -98,7 +114,7 @@ def question_blocks(eligibility: Eligibility, *, particulars: bool) -> Iterator[
 
 def _titled(checks: Iterable[str], titles: Mapping[str, str]) -> tuple[str, ...]:
     """The titles of some checks; the id where a check has no title."""
-    known = CHECK_TITLES | dict(titles)
+    known = {**CHECK_TITLES, **titles}
     return tuple(capital(known[check]) if check in known else check for check in checks)
 
 
@@ -121,27 +137,30 @@ def eligibility_blocks(
     )
     passed = [item for item in lot.bids if item.eligibility.outcome is Outcome.ADMISSIBLE]
     if passed:
-        yield HeadingBlock("Bids that may be accepted", 4)
+        yield HeadingBlock(say("Bids that may be accepted"), 4)
         yield ListBlock(
             tuple(
-                f"{item.shown_as}. Checks passed: "
-                f"{'; '.join(_titled(item.eligibility.passed, titles))}."
+                say(
+                    "{bid}. Checks passed: {checks}.",
+                    bid=item.shown_as,
+                    checks=joined("; ", _titled(item.eligibility.passed, titles)),
+                )
                 for item in passed
             )
         )
 
 
 def _refused(bids: Sequence[BidResult]) -> Iterator[Block]:
-    yield HeadingBlock("Bids that may not be accepted", 4)
+    yield HeadingBlock(say("Bids that may not be accepted"), 4)
     if not bids:
         yield ParagraphBlock(OUTCOME_NOTES["no_reasons"])
         return
     yield ParagraphBlock(OUTCOME_NOTES["reasons"], "quiet")
-    yield reason_table(bids, "Reasons")
+    yield reason_table(bids, say("Reasons"))
     further = tuple(
         OUTCOME_NOTES["further"].format(
             bid=item.shown_as,
-            titles="; ".join(dict.fromkeys(part.title for part in item.eligibility.questions)),
+            titles=joined("; ", dict.fromkeys(part.title for part in item.eligibility.questions)),
         )
         for item in bids
         if item.eligibility.questions
@@ -151,7 +170,7 @@ def _refused(bids: Sequence[BidResult]) -> Iterator[Block]:
 
 
 def _asked(bids: Sequence[BidResult], under_codes: bool) -> Iterator[Block]:
-    yield HeadingBlock("Questions to bidders", 4)
+    yield HeadingBlock(say("Questions to bidders"), 4)
     if not bids:
         yield ParagraphBlock(OUTCOME_NOTES["no_questions"])
         return

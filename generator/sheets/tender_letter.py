@@ -4,10 +4,12 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 
+from generator.language import joined, say
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext
 from generator.records.tender import BidResult, BidScore, LotResult, Outcome, Tender
-from generator.sheets.tender_award import function_words, points_table
+from generator.sheets.shown_names import ShownNames
+from generator.sheets.tender_award import function_words, points_table, reason_text
 from generator.sheets.tender_description import (
     Block,
     HeadingBlock,
@@ -16,8 +18,8 @@ from generator.sheets.tender_description import (
     TenderDocument,
 )
 from generator.sheets.tender_eligibility import question_blocks, reason_table
-from generator.sheets.tender_report import lot_name, tender_frame, tender_of
-from generator.sheets.tender_text import number, worded
+from generator.sheets.tender_report import lot_heading, tender_frame, tender_of
+from generator.sheets.tender_text import number
 from generator.sheets.tender_trail import bid_trail
 from generator.sheets.tender_words import LETTER
 
@@ -48,7 +50,9 @@ def describe_letters(assessment: Assessment, context: SheetContext) -> dict[str,
     """
     tender = tender_of(assessment)
     codes = sorted(set(tender.codes.values()), key=lambda code: (len(code), code))
-    return {f"bidder-{code.lower()}": _letter(code, assessment, context) for code in codes}
+    names = ShownNames(assessment)
+    letters = {code: _letter(code, assessment, context) for code in codes}
+    return {f"bidder-{code.lower()}": names.masked(letter) for code, letter in letters.items()}
 
 
 def _letter(code: str, assessment: Assessment, context: SheetContext) -> TenderDocument:
@@ -69,9 +73,9 @@ def _letter(code: str, assessment: Assessment, context: SheetContext) -> TenderD
 
 def _addressee(code: str, own: set[str], assessment: Assessment) -> str:
     if assessment.shown_bidders:
-        return f"Bidder {code}"
+        return say("Bidder {letter}", letter=code)
     names = {lamp.bidder for lamp in assessment.campaign.lamps if lamp.lamp_id in own}
-    return next(iter(sorted(name for name in names if name)), f"Bidder {code}")
+    return next(iter(sorted(name for name in names if name)), say("Bidder {letter}", letter=code))
 
 
 def _names(own: set[str], tender: Tender) -> Mapping[str, str]:
@@ -89,12 +93,11 @@ def _blocks(own: set[str], tender: Tender, currency: str) -> Iterator[Block]:
         theirs = [item for item in lot.bids if item.bid.lamp_id in own]
         if not theirs:
             continue
-        title = f": {lot.title}" if lot.title else ""
-        yield HeadingBlock(f"{lot_name(lot)}{title}", 2)
+        yield HeadingBlock(lot_heading(lot), 2)
         for item in theirs:
             yield from _bid_blocks(item, lot, currency, tender)
         if lot.award is not None and lot.award.winners:
-            yield HeadingBlock("The published comparison", 3)
+            yield HeadingBlock(say("The published comparison"), 3)
             yield ListBlock(function_words(lot.award))
             yield points_table(lot.award, names)
             yield ParagraphBlock(LETTER["others"], "quiet")
@@ -111,7 +114,7 @@ def _bid_blocks(item: BidResult, lot: LotResult, currency: str, tender: Tender) 
     }[gate.outcome]
     yield ParagraphBlock(LETTER[key])
     if gate.reasons:
-        yield reason_table([item], "Reasons", named=False)
+        yield reason_table([item], say("Reasons"), named=False)
     if gate.outcome is Outcome.TO_CLARIFY:
         yield from question_blocks(gate, particulars=not tender.under_codes)
     score = _score(item, lot)
@@ -130,15 +133,16 @@ def _score(item: BidResult, lot: LotResult) -> BidScore | None:
 def _standing(score: BidScore, lot: LotResult) -> str:
     ranked = [part for part in lot.award.scores if part.rank is not None] if lot.award else []
     if score.rank is None or score.total is None:
-        return LETTER["unranked"].format(reason=worded(score.reason))
+        return LETTER["unranked"].format(reason=reason_text(score))
     best = ranked[0].total or score.total
     if score.rank == 1:
         words = LETTER["first"].format(points=number(score.total, 2))
         if len(ranked) > 1 and ranked[1].total is not None:
             gap = LETTER["lead"].format(points=number(score.total - ranked[1].total, 2))
-            return f"{words} {gap}"
+            return joined(" ", (words, gap))
         return words
     words = LETTER["rank"].format(
         rank=score.rank, ranked=len(ranked), points=number(score.total, 2)
     )
-    return f"{words} {LETTER['distance'].format(points=number(best - score.total, 2))}"
+    gap = LETTER["distance"].format(points=number(best - score.total, 2))
+    return joined(" ", (words, gap))

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 
+from generator.language import say, say_as
 from generator.records.tender import RelampingPlan
 from generator.sheets.tender_description import Block, HeadingBlock, ListBlock, TableBlock
 from generator.sheets.tender_text import NONE, amount, number
@@ -27,7 +28,7 @@ def plan_blocks(
     currency
         Currency of all money.
     """
-    yield HeadingBlock("Relamping plan", 2, "plan")
+    yield HeadingBlock(say("Relamping plan"), 2, "plan")
     rows = tuple(
         (
             room.title or room.room,
@@ -41,15 +42,15 @@ def plan_blocks(
         for room in plan.rooms
     )
     headings = (
-        "Room",
-        "Year",
-        "Today",
-        "New",
-        "Today, kWh a year",
-        "New, kWh a year",
-        f"Spend, {currency}",
+        say("Room"),
+        say("Year"),
+        say_as("lamp", "Today"),
+        say_as("lamp", "New"),
+        say("Today, kWh a year"),
+        say("New, kWh a year"),
+        say("Spend, {currency}", currency=currency),
     )
-    yield TableBlock("By room", headings, rows, (0, 2, 3))
+    yield TableBlock(say("By room"), headings, rows, (0, 2, 3))
     years = tuple(
         (
             str(year.year),
@@ -62,14 +63,18 @@ def plan_blocks(
         for year in plan.years
     )
     year_headings = (
-        "Year",
-        "Lamps",
-        f"Spend, {currency}",
-        "Saved, kWh",
-        f"Saved, {currency}",
-        f"Saved less spent so far, {currency}",
+        say("Year"),
+        say("Lamps"),
+        say("Spend, {currency}", currency=currency),
+        say("Saved, kWh"),
+        say("Saved, {currency}", currency=currency),
+        say("Saved less spent so far, {currency}", currency=currency),
     )
-    yield TableBlock("By year, undiscounted", year_headings, years)
+    yield TableBlock(say("By year, undiscounted"), year_headings, years)
     quantities = tuple((names[lamp], str(count)) for lamp, count in plan.quantities.items())
-    yield TableBlock("Lamps to order", ("Lamp", "Quantity"), quantities or ((NONE, "0"),))
+    yield TableBlock(
+        say("Lamps to order"),
+        (say("Lamp"), say_as("number", "Quantity")),
+        quantities or ((NONE, "0"),),
+    )
     yield ListBlock(plan.notes)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from decimal import Decimal
 
+from generator.language import say, say_as, told
 from generator.quantities import QUANTITIES
 from generator.records.tender import money
 from generator.sheets.number_format import shown
@@ -26,17 +27,19 @@ __all__ = [
 NONE = "–"
 """Stands where there is no number."""
 
-_CRITERIA = {"life_cycle_cost": "life-cycle cost", "price": "price"}
+_SMALL = 0.001
+
+_CRITERIA = {"life_cycle_cost": say("life-cycle cost"), "price": say_as("criterion", "price")}
 _INPUTS = {
-    "price": "unit price",
-    "power_w": "active power",
-    "standby_power_w": "standby power",
-    "life_h": "life",
-    "flux_lm": "luminous flux",
-    "tariff": "price of energy",
-    "price rise": "rise of the price of energy",
-    "hours": "hours in use",
-    "discount rate": "discount rate",
+    "price": say("unit price"),
+    "power_w": say("active power"),
+    "standby_power_w": say("standby power"),
+    "life_h": say_as("lamp", "life"),
+    "flux_lm": say("luminous flux"),
+    "tariff": say("price of energy"),
+    "price rise": say("rise of the price of energy"),
+    "hours": say("hours in use"),
+    "discount rate": say("discount rate"),
 }
 
 
@@ -56,16 +59,17 @@ def percent(share: float | Decimal, decimals: int = 1) -> str:
 
 
 def capital(text: str) -> str:
-    """Text that begins with a capital letter."""
-    return text[:1].upper() + text[1:]
+    """Text, said in the language that is being spoken, that begins with a capital letter."""
+    said = told(text)
+    return said[:1].upper() + said[1:]
 
 
 def chance(probability: float) -> str:
     """A probability in percent; what is not certain never reads as certain."""
-    if 0 < probability < 0.001:
-        return "< 0.1 %"
-    if 0.999 < probability < 1:
-        return "> 99.9 %"
+    if 0 < probability < _SMALL:
+        return f"< {percent(_SMALL)}"
+    if 1 - _SMALL < probability < 1:
+        return f"> {percent(1 - _SMALL)}"
     return percent(probability)
 
 
@@ -92,11 +96,15 @@ def criterion_value(name: str, value: Decimal | None, unit: str) -> str:
 
 
 def worded(text: str) -> str:
-    """Text of the comparison with names of criteria in words and a true sign of multiplication."""
+    """Text of the comparison with names of criteria in words and a true sign of multiplication.
+
+    Gives plain text in the language that is being spoken.
+    """
+    said = told(text)
     for name in sorted((*_CRITERIA, *QUANTITIES), key=len, reverse=True):
-        if "_" in name and name in text:
-            text = text.replace(name, criterion_label(name))
-    return text.replace(" x ", " × ").replace(" - ", " − ")
+        if "_" in name and name in said:
+            said = said.replace(name, told(criterion_label(name)))
+    return said.replace(" x ", " × ").replace(" - ", " − ")
 
 
 def input_value(name: str, value: Decimal, currency: str) -> str:

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Sequence
 from decimal import Decimal
 
+from generator.language import numeral, say, say_as
 from generator.records.tender import (
     Assumption,
     BidResult,
@@ -31,19 +32,21 @@ from generator.sheets.tender_text import (
     significant,
     worded,
 )
+from generator.sheets.tender_words import ASSUMPTION_NAMES, COST_ITEMS
 
 __all__ = ["assumption_table", "bid_trail", "cash_flow_table", "trail_blocks", "year_table"]
 
-_INTRO = (
+_INTRO = say(
     "Every number below follows from the inputs of the first table. The workbook holds the same "
     "sums for every bid as live formulas."
 )
-_SUM = (
+_SUM = say(
     "The present values add up to {total} {currency}; the rows are rounded for print, the sum is "
     "formed before rounding."
 )
-_OWN_POINTS = "{value} scores {score}; × {weight} % = {points} points"
-_POINTS = "{parts} = {sum}, rounded to {total} points."
+_OWN_POINTS = say("{value} scores {score}; × {weight} % = {points} points")
+_POINTS = say("{parts} = {sum}, rounded to {total} points.")
+_CRITERION = say("{criterion}: {arithmetic}.")
 
 
 def trail_blocks(lot: LotResult, currency: str) -> Iterator[Block]:
@@ -52,7 +55,7 @@ def trail_blocks(lot: LotResult, currency: str) -> Iterator[Block]:
     item = next((item for item in lot.bids if item.cost is not None), None)
     if item is None or (lot.award is not None and not lot.award.winners):
         return
-    yield HeadingBlock(f"One bid followed by hand: {item.shown_as}", 3)
+    yield HeadingBlock(say("One bid followed by hand: {bid}", bid=item.shown_as), 3)
     yield ParagraphBlock(_INTRO, "quiet")
     yield from bid_trail(item, scores.get(item.bid.lamp_id), currency)
 
@@ -83,7 +86,10 @@ def bid_trail(
         points = [part.points or Decimal(0) for part in score.sub_scores]
         yield ListBlock(
             tuple(
-                f"{capital(criterion_label(part.criterion))}: {_arithmetic(part, own_alone)}."
+                _CRITERION.format(
+                    criterion=capital(criterion_label(part.criterion)),
+                    arithmetic=_arithmetic(part, own_alone),
+                )
                 for part in score.sub_scores
             )
         )
@@ -112,42 +118,42 @@ def assumption_table(assumptions: Sequence[Assumption], currency: str) -> TableB
     """The inputs with unit and origin."""
     rows = tuple(
         (
-            item.name.replace("_", " "),
+            ASSUMPTION_NAMES.get(item.name, item.name),
             _value(item),
             currency if item.unit == "money" else item.unit,
             worded(item.origin),
         )
         for item in assumptions
     )
-    headings = ("Input", "Value", "Unit", "Where it comes from")
-    return TableBlock("Inputs", headings, rows, (0, 2, 3))
+    headings = (say("Input"), say("Value"), say("Unit"), say("Where it comes from"))
+    return TableBlock(say("Inputs"), headings, rows, (0, 2, 3))
 
 
 def _value(item: Assumption) -> str:
     digits = len(item.value.as_tuple().digits)
-    return significant(item.value, 6) if digits > 6 else f"{item.value.normalize():f}"
+    return significant(item.value, 6) if digits > 6 else numeral(f"{item.value.normalize():f}")
 
 
 def cash_flow_table(cost: LifeCycleCost, currency: str) -> TableBlock:
     """Every payment: year, moment, item, amount, discount factor, present value."""
     rows = [_flow(flow) for flow in cost.cash_flows]
-    rows.append(("Total", "", "", "", "", amount(cost.total)))
+    rows.append((say("Total"), "", "", "", "", amount(cost.total)))
     headings = (
-        "Year",
-        "Due after, years",
-        "For",
-        f"Payment, {currency}",
-        "Discount factor",
-        f"Present value, {currency}",
+        say("Year"),
+        say("Due after, years"),
+        say_as("payment", "For"),
+        say("Payment, {currency}", currency=currency),
+        say("Discount factor"),
+        say("Present value, {currency}", currency=currency),
     )
-    return TableBlock("Cash flows", headings, tuple(rows), (0, 2), sum_row=True)
+    return TableBlock(say("Cash flows"), headings, tuple(rows), (0, 2), sum_row=True)
 
 
 def _flow(flow: CashFlow) -> tuple[str, ...]:
     return (
         str(flow.year),
         number(flow.moment_years, 2),
-        flow.item.value,
+        COST_ITEMS[flow.item],
         amount(flow.amount),
         number(flow.factor, 6),
         amount(flow.present_value),
@@ -157,4 +163,4 @@ def _flow(flow: CashFlow) -> tuple[str, ...]:
 def year_table(cost: LifeCycleCost, currency: str) -> TableBlock:
     """Present value spent up to the end of each year."""
     rows = tuple((str(year), amount(money(spent))) for year, spent in enumerate(cost.cumulative))
-    return TableBlock("Spent up to the end of each year", ("Year", currency), rows)
+    return TableBlock(say("Spent up to the end of each year"), (say("Year"), currency), rows)

@@ -26,6 +26,9 @@ __all__ = [
 BASE = "base"
 FACES = ("sheet-regular.ttf", "sheet-semibold.ttf", "sheet-condensed.ttf")
 
+_PARTS_OF_LAMP = 4
+"""How many of the shared style sheets a lamp's page uses; those of many lamps come after."""
+
 _TOKEN = re.compile(r"--([a-z-]+):\s*(#[0-9a-f]{6});")
 _VARIABLE = re.compile(r"var\(--([a-z-]+)\)")
 _ROOT = re.compile(r":root\s*\{([^}]*)\}")
@@ -109,14 +112,25 @@ def _role_style(theme: str) -> str:
     )
 
 
-def paper_style(theme: str, overrides: Path | None = None) -> str:
+def paper_style(theme: str, overrides: Path | None = None, *, of_lamp: bool = False) -> str:
     """Give the style sheet of the PDF; faces are named ``asset:/fonts/...``.
 
     Colours are written out: paper has one set of them, and the engine resolves a variable anew
     for every element.
+
+    Parameters
+    ----------
+    theme
+        Folder of the theme.
+    overrides
+        Folder of the campaign with tokens and rules of its own; ``None`` where it has none.
+    of_lamp
+        Whether to leave out the rules that only pages of many lamps use: the engine tries every
+        rule on every element.
     """
-    colours = palette(theme, overrides)
-    style = "\n".join((_text(BASE, "fonts.css"), *_styles("paper"), _last_styles(theme, overrides)))
+    colours, parts = palette(theme, overrides), _styles("paper")
+    shared = parts[:_PARTS_OF_LAMP] if of_lamp else parts
+    style = "\n".join((_text(BASE, "fonts.css"), *shared, _last_styles(theme, overrides)))
     written = _VARIABLE.sub(lambda found: colours.get(found[1], found[0]), style)
     return written.replace('url("fonts/', 'url("asset:/fonts/')
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 import struct
 from functools import cache
 
@@ -43,6 +44,13 @@ def _segments(font: bytes, offset: int) -> set[int]:
     }
 
 
+@cache
+def _elsewhere() -> re.Pattern[str]:
+    """What matches a character that is not covered."""
+    known = "".join(re.escape(char) for char in sorted({*map(chr, _covered()), *_UNSEEN}))
+    return re.compile(f"[^{known}]")
+
+
 def uncovered_characters(text: str) -> tuple[str, ...]:
     """List the characters that the bundled typeface cannot print, each once, in order.
 
@@ -51,9 +59,7 @@ def uncovered_characters(text: str) -> tuple[str, ...]:
     text
         Any text.
     """
-    covered = _covered()
-    missing = (char for char in text if ord(char) not in covered and char not in _UNSEEN)
-    return tuple(dict.fromkeys(missing))
+    return tuple(dict.fromkeys(_elsewhere().findall(text)))
 
 
 def printable(text: str) -> str:

@@ -76,6 +76,13 @@ def sort_button(page, heading):
     return page.locator("#matrix thead button").filter(has_text=heading)
 
 
+def wait_for_rows(page, count):
+    """Rows past the first window follow frame by frame."""
+    page.wait_for_function(
+        "count => document.querySelectorAll('#matrix tbody tr').length === count", arg=count
+    )
+
+
 def status(page):
     return page.get_by_role("status").inner_text()
 
@@ -197,6 +204,7 @@ def test_a_link_restores_the_view(page, visit, index):
     page.get_by_role("checkbox", name="deep red").check()
     page.get_by_role("checkbox", name=re.compile("side by side$")).nth(1).check()
     page.get_by_label("Across").select_option("colour temperature")
+    page.wait_for_url("**#*x=cct_k*")  # the address follows a moment after the rows
     address = page.url
     other = visit(index, address.partition("#")[2])
     for question in (shown_lamps, shown_headings):
@@ -345,11 +353,15 @@ def test_of_many_lamps_the_first_stand_on_the_page_and_all_in_the_csv(visit, tmp
     assert len(shown_lamps(page)) == 50
     assert status(page) == "120 of 120 lamps match; the first 50 stand here."
     sort_button(page, EFFICACY).click()
+    at_once = shown_lamps(page)
+    assert 6 <= len(at_once) <= 50
+    wait_for_rows(page, 50)
     first = shown_lamps(page)
+    assert first[: len(at_once)] == at_once
     page.get_by_role("button", name="Show 50 more").click()
-    assert len(shown_lamps(page)) == 100
+    wait_for_rows(page, 100)
     page.get_by_role("button", name="Show all 120").click()
-    assert len(shown_lamps(page)) == 120
+    wait_for_rows(page, 120)
     assert first == shown_lamps(page)[:50]
     assert page.get_by_role("button", name="Show all").count() == 0
     with page.expect_download() as waiting:
@@ -358,3 +370,89 @@ def test_of_many_lamps_the_first_stand_on_the_page_and_all_in_the_csv(visit, tmp
     assert [row["lamp_id"] for row in rows] == shown_lamps(page)
     numbers = [float(row["efficacy_lm_per_w"]) for row in rows]
     assert numbers == sorted(numbers, reverse=True)
+
+
+def test_rows_that_follow_keep_the_order_and_the_next_step_takes_over(visit, tmp_path):
+    from tests.benchmarks.bench_filter import write_page
+
+    page = visit(write_page(tmp_path, 120))
+    everything = page.evaluate("JSON.parse(document.querySelector('#comparison-data').textContent)")
+    models = {lamp["id"]: lamp["model"] for lamp in everything["lamps"]}
+    find = page.get_by_role("searchbox", name="Find")
+    for text in ("A60", "3", "A60", ""):
+        find.fill(text)
+        asked = [lamp for lamp, model in models.items() if text in model][:50]
+        found = shown_lamps(page)
+        assert found == asked[: len(found)]
+        assert len(found) >= min(6, len(asked))
+    wait_for_rows(page, 50)
+    assert shown_lamps(page) == list(models)[:50]
+    scroller = page.locator(".matrix-scroll")
+    scroller.evaluate("element => element.scrollTo(0, 900)")
+    page.wait_for_timeout(100)
+    find.fill("3")
+    assert scroller.evaluate("element => element.scrollTop") == 0
+
+
+def test_everything_is_printed_whatever_was_on_the_page(visit, tmp_path):
+    from tests.benchmarks.bench_filter import write_page
+
+    page = visit(write_page(tmp_path, 120))
+    page.evaluate("dispatchEvent(new Event('beforeprint'))")
+    assert len(shown_lamps(page)) == 120
+    page.evaluate("dispatchEvent(new Event('afterprint'))")
+    wait_for_rows(page, 50)
+
+
+def test_no_column_moves_when_the_rows_change(page):
+    def edges():
+        return page.locator("#matrix thead th").evaluate_all(
+            "heads => heads.map(head => head.getBoundingClientRect().left)"
+        )
+
+    page.locator("#column-choice > summary").click()
+    page.get_by_role("button", name="All columns").click()
+    before = edges()
+    for text in ("Basic", "no such lamp"):
+        page.get_by_role("searchbox", name="Find").fill(text)
+        assert edges() == before
+    page.get_by_role("searchbox", name="Find").fill("")
+    spilled = page.locator("#matrix tbody td").evaluate_all(
+        "cells => cells.filter(cell => cell.scrollWidth > cell.clientWidth).map("
+        "cell => cell.textContent)"
+    )
+    assert spilled == []
+
+
+def test_numbers_of_the_scripts_have_the_decimal_sign_of_the_page(visit, index, tmp_path):
+    text = index.read_text(encoding="utf-8")
+    data = json.loads(re.search(r'id="comparison-data">(.*?)</script>', text)[1])
+    comma = json.dumps({**data, "decimal": ","}).replace("<", r"\u003c")
+    copied = tmp_path / "index.html"
+    copied.write_text(
+        re.sub(
+            r'(id="comparison-data">).*?(</script>)',
+            lambda found: found[1] + comma + found[2],
+            text,
+        ),
+        encoding="utf-8",
+    )
+    (tmp_path / "assets").symlink_to(index.parent / "assets")
+    page = visit(copied, "range=efficacy_lm_per_w:90.5:200&reference=veldrune-a60-940&x=cct_k")
+    chip = page.locator("#ranges button")
+    assert chip.inner_text() == "luminous efficacy at least 90,5, at most 200 \u00d7"
+    label = "Remove the range: luminous efficacy at least 90,5, at most 200"
+    assert chip.get_attribute("aria-label") == label
+    differences = page.locator("#matrix .difference").all_text_contents()
+    assert any("," in words for words in differences)
+    page.locator("#pair-numbers tbody td").filter(has_text="\u00b1").first.wait_for(
+        state="attached"
+    )
+    numbers = page.locator("#pair-numbers tbody td").all_text_contents()
+    assert any("," in words for words in numbers)
+    assert not any("." in words for words in [*differences, *numbers])
+    with page.expect_download() as waiting:
+        page.get_by_role("button", name="Download as CSV").click()
+    rows = list(csv.DictReader(io.StringIO(Path(waiting.value.path()).read_text("utf-8"))))
+    assert all(90.5 <= float(row["efficacy_lm_per_w"]) <= 200 for row in rows)
+    assert any("." in row["efficacy_lm_per_w"] for row in rows)

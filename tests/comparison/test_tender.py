@@ -2,9 +2,13 @@
 
 from __future__ import annotations
 
+import dataclasses
 import math
+import re
+from collections.abc import Iterator, Mapping
 from dataclasses import replace
 from decimal import Decimal
+from string import Formatter
 from typing import Any
 
 import pytest
@@ -13,6 +17,7 @@ from scipy.optimize import brentq
 
 from generator.comparison.cost.study import break_even
 from generator.errors import DataProblems
+from generator.language.messages import Message, spoken_by, told
 from generator.records.figure import Figure, Grade
 from generator.records.tender import (
     BidResult,
@@ -25,6 +30,7 @@ from generator.records.tender import (
     money,
 )
 from generator.records.tender_settings import TenderSettings
+from generator.records.verdict import VerdictWord
 
 
 def only_lot(tender: Tender) -> LotResult:
@@ -436,3 +442,90 @@ def test_settings_of_a_campaign_without_a_tender_still_read() -> None:
     assert settings.use.tariff_per_kwh == Decimal("0.24")
     assert settings.use.location_based is None
     assert settings.award.criteria[0].method == "relative to best"
+
+
+class Blanked:
+    """Speaks a language in which every letter of a message is the same."""
+
+    def pattern(self, message: Message) -> str:
+        words = message.plural if message.plural and message.counted != 1 else message.singular
+        blanked = ""
+        for text, place, shape, _ in Formatter().parse(words):
+            blanked += re.sub("[A-Za-z]", "\u0436", text)
+            blanked += "" if place is None else f"{{{place}:{shape}}}"
+        return blanked
+
+    def number(self, text: str) -> str:
+        return text.replace(".", ",")
+
+
+def texts_of(record: Any, fields: frozenset[str], name: str = "") -> Iterator[str]:
+    """Every text of some fields, at any depth."""
+    if isinstance(record, str):
+        if name in fields:
+            yield record
+    elif dataclasses.is_dataclass(record):
+        for item in dataclasses.fields(record):
+            yield from texts_of(getattr(record, item.name), fields, item.name)
+    elif isinstance(record, Mapping):
+        for value in record.values():
+            yield from texts_of(value, fields, name)
+    elif isinstance(record, tuple):
+        for value in record:
+            yield from texts_of(value, fields, name)
+
+
+def test_every_text_can_be_said_in_another_language(tender_case: Any, verdict_of: Any) -> None:
+    """Names of data stay: those with an underscore or in brackets, lots, models, clauses, units."""
+    room = {
+        "id": "r",
+        "title": "R",
+        "lot": "rooms",
+        "points": 10,
+        "relamp_year": 1,
+        "existing_lamp": "old",
+        "hours_per_year": 1000,
+    }
+    case = (
+        replace(
+            tender_case,
+            settings={**tender_case.settings, "room": [room]},
+            verdicts=(
+                verdict_of("a", VerdictWord.INCONCLUSIVE),
+                verdict_of("b", VerdictWord.FAIL),
+                verdict_of("c", VerdictWord.NOT_MEASURED, value=None),
+            ),
+        )
+        .with_settings("tender", code_names=True, minimum_sample_units=5)
+        .with_settings("use", market_based=tender_case.settings["use"]["location_based"])
+        .with_settings("award", tie_rule="lower price", abnormally_low_percent=20)
+        .with_bid("a", report_model="Other")
+    )
+    fields = frozenset(
+        {
+            "arithmetic",
+            "coded_names",
+            "existing_titles",
+            "functions",
+            "notes",
+            "origin",
+            "particulars",
+            "reason",
+            "shown_as",
+            "source",
+            "text",
+            "tie_note",
+            "withheld",
+        }
+    )
+    data = (
+        r"not admissible|rooms|Model|Other|Annex|EU|\[use\]|\[tender\]|old|invented for this test"
+    )
+    texts = tuple(texts_of(case.compared(), fields))
+    seen = 0
+    with spoken_by(Blanked()):
+        for text in texts:
+            said = re.sub(data, "", told(text))
+            assert not re.search(r"(?<![\w.])[A-Za-z]{3,}(?![\w.])|\d\.\d", said), said
+            seen += said != text
+    assert seen > 50

@@ -2,15 +2,18 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterable
 from datetime import date
 from decimal import Decimal
+from string import Formatter
 from typing import Any
 
 import numpy as np
 import pytest
 
 from generator.crosschecks import findings_of
+from generator.language.messages import Message, spoken_by, told
 from generator.records.campaign import Campaign
 from generator.records.figure import MEAN, Figure, FigureSet, Grade
 from generator.records.finding import Finding
@@ -22,6 +25,21 @@ from generator.records.raw import (
     SpectrumSet,
 )
 from generator.records.settings import Settings
+
+
+class Blanked:
+    """Speaks a language in which every letter of a message is the same."""
+
+    def pattern(self, message: Message) -> str:
+        words = message.plural if message.plural and message.counted != 1 else message.singular
+        blanked = ""
+        for text, place, shape, _ in Formatter().parse(words):
+            blanked += re.sub("[A-Za-z]", "\u0436", text)
+            blanked += "" if place is None else f"{{{place}:{shape}}}"
+        return blanked
+
+    def number(self, text: str) -> str:
+        return text.replace(".", ",")
 
 
 class Bench:
@@ -128,7 +146,23 @@ class Bench:
         )
 
     def findings(self) -> tuple[Finding, ...]:
-        return findings_of(self.campaign, FigureSet(self.figures))
+        found = findings_of(self.campaign, FigureSet(self.figures))
+        for item in found:
+            self._said_in_another_language(item)
+        return found
+
+    def _said_in_another_language(self, item: Finding) -> None:
+        """Only data and symbols stay as they are: names, keys with an underscore, units."""
+        data = {lamp.bidder for lamp in self.lamps} | {lamp.lamp_id for lamp in self.lamps}
+        data |= {lamp.offer.report_no or "" for lamp in self.lamps}
+        data |= {unit.unit_id for unit in self.units}
+        texts = (item.title, item.compared, item.explanation, item.source, item.deviation_unit)
+        with spoken_by(Blanked()):
+            for text in texts:
+                said = told(text)
+                for name in sorted(data, key=len, reverse=True):
+                    said = said.replace(name, "") if name else said
+                assert not re.search(r"(?<![\w])[A-Za-z]{3,}(?![\w])|\d\.\d", said), said
 
     def checks(self) -> list[str]:
         return [item.check for item in self.findings()]

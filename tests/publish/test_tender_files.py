@@ -24,7 +24,14 @@ from generator.publish.tender_files import tender_files
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext
 from generator.records.tender import Eligibility, Outcome, Question
-from generator.sheets import TenderSheets, describe_letters, describe_tender_report
+from generator.sheets import (
+    TenderDocument,
+    describe_letters,
+    describe_tender_report,
+    page_place,
+    render_html,
+    render_pdf,
+)
 
 SETTINGS = """
 [campaign]
@@ -175,12 +182,24 @@ def write_campaign(folder: Path, *, code_names: bool = False, closed: bool = Fal
     return folder
 
 
-def files_of(assessment: Assessment, *, pdf: bool = False) -> dict[str, bytes]:
+def files_of(assessment: Assessment) -> dict[str, bytes]:
+    """Data files and pages of a tender, by path inside the issue."""
+    sheets = sheets_of(assessment)
+    pages = {f"tender/{name}.html": document for name, document in sheets.items()}
+    written = {
+        name: render_html(page, page_place(name, "en", ("en",))).encode()
+        for name, page in pages.items()
+    }
+    return written | dict(tender_files(assessment))
+
+
+def sheets_of(assessment: Assessment, *, pdf: bool = False) -> dict[str, TenderDocument]:
     context = SheetContext(sources(), with_pdf=pdf)
-    sheets = TenderSheets(
-        describe_tender_report(assessment, context), describe_letters(assessment, context)
-    )
-    return dict(tender_files(assessment, sheets, pdf=pdf, jobs=1))
+    letters = describe_letters(assessment, context)
+    return {
+        "report": describe_tender_report(assessment, context),
+        **{f"letters/{name}": letter for name, letter in letters.items()},
+    }
 
 
 @pytest.fixture(scope="module")
@@ -443,16 +462,14 @@ def test_code_names_until_the_technical_part_is_closed(
 
 @pytest.mark.slow
 def test_report_and_letters_on_paper(tender_assessment: Assessment) -> None:
-    files = files_of(tender_assessment, pdf=True)
-    documents = {name for name in files if name.endswith(".pdf")}
-    assert documents == {
-        "tender/report.pdf",
-        *(f"tender/letters/bidder-{code}.pdf" for code in "abc"),
-    }
-    assert all(files[name].startswith(b"%PDF-") for name in documents)
-    page = files["tender/report.html"].decode()
+    sheets = sheets_of(tender_assessment, pdf=True)
+    assert set(sheets) == {"report", *(f"letters/bidder-{code}" for code in "abc")}
+    assert all(render_pdf(sheet).startswith(b"%PDF-") for sheet in sheets.values())
+    page = render_html(sheets["report"], page_place("tender/report.html", "en", ("en",)))
     assert 'href="report.pdf"' in page
+    assert 'href="../tender/workbook.xlsx"' in page
     assert 'href="../assets/sheet.css"' in page
+    files = files_of(tender_assessment)
     assert 'href="../../assets/sheet.css"' in files["tender/letters/bidder-a.html"].decode()
 
 

@@ -87,11 +87,15 @@ def _verdict(
     lamp_id, clause, title, quantity, unit, value, limit, comparison, margin, word, **more
 ):
     decimal = lambda text: None if text is None else Decimal(text)  # noqa: E731 - short and local
+    regime = more.pop("regime", EU)
+    source = more.pop("source", "Regulation (EU) 2019/2020, Annex II, point 2, Table 4")
+    act, _, rest = source.partition(", ")
+    place, _, amending = rest.partition(", as amended by Regulation (EU) ")
     return Verdict(
         lamp_id=lamp_id,
         clause=clause,
         title=title,
-        regime=more.pop("regime", EU),
+        regime=regime,
         quantity=quantity,
         unit=unit,
         basis=more.pop("basis", Basis.DETERMINED),
@@ -101,8 +105,11 @@ def _verdict(
         comparison=comparison,
         margin=decimal(margin),
         verdict=VerdictWord(word),
-        source=more.pop("source", "Regulation (EU) 2019/2020, Annex II, point 2, Table 4"),
-        status="read",
+        source=source,
+        status="buyer" if regime == "Buyer" else "read",
+        act=act,
+        place=place,
+        amending_act=amending,
         **more,
     )
 
@@ -178,7 +185,8 @@ def _verdicts(lamp_id, ra, flicker_word):
             "at most",
             None,
             "not applicable",
-            note="the lamp is not connected",
+            note="Not applicable: the lamp is not connected.",
+            reason="the lamp is not connected",
         ),
         _verdict(
             lamp_id,
@@ -384,7 +392,6 @@ def _curves(depth):
         harmonics=HarmonicComb(
             np.array([3.0, 5, 7, 9, 11, 13, 15]),
             np.array([32.0, 11, 8, 6, 4, 2, 1]),
-            np.array([27.0, 10, 7, 5, 3, 3, np.nan]) * 1.2,
         ),
         ageing=AgeingCurve(
             np.repeat([0.0, 1000, 2000, 3000], 5),

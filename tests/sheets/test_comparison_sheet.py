@@ -124,7 +124,7 @@ def test_without_spectra_the_page_says_so(invented_assessment, invented_context)
     (drawing,) = sheet.spectra
     assert not drawing.svg
     assert drawing.caption == "Not drawn: the campaign has no spectrum."
-    assert drawing.caption in render_html(sheet, asset_prefix="assets/")
+    assert drawing.caption in render_html(sheet)
 
 
 def test_scatter_needs_two_lamps_with_two_figures(invented_assessment, invented_context):
@@ -152,7 +152,7 @@ def test_scatter_needs_two_lamps_with_two_figures(invented_assessment, invented_
     )
     assert not empty.scatter.svg
     assert empty.scatter.caption.startswith("Not drawn")
-    assert "Not drawn" in render_html(empty, asset_prefix="assets/")
+    assert "Not drawn" in render_html(empty)
 
 
 def test_scatter_keeps_every_bar_and_near_limit_inside():
@@ -180,7 +180,7 @@ def test_cell_ruler_has_a_tick_or_an_arrow_head(margin, parts):
 
 
 def test_page_runs_only_its_own_scripts(invented_comparison):
-    page = render_html(invented_comparison, asset_prefix="assets/")
+    page = render_html(invented_comparison)
     tree = html5lib.parse(page)
     scripts = list(tree.iter(f"{H}script"))
     sources = [script.attrib["src"] for script in scripts if "src" in script.attrib]
@@ -245,7 +245,7 @@ def test_questions_and_risks_stand_on_the_page_and_on_paper(invented_assessment,
     (asked,) = sheet.questions
     assert (asked.lamp_id, asked.model) == ("L-01", "Harbour 806")
     assert asked.findings == ("Declared SVM better than that of every unit (contradiction)",)
-    page, paper = render_html(sheet, asset_prefix="assets/"), render_paper(sheet)
+    page, paper = render_html(sheet), render_paper(sheet)
     assert 'href="lamps/L-01.html#findings"' in page
     for text in (page, paper):
         assert asked.findings[0] in text
@@ -257,7 +257,7 @@ def test_questions_and_risks_stand_on_the_page_and_on_paper(invented_assessment,
 def test_without_questions_and_risks_nothing_is_said_of_them(invented_assessment, invented_context):
     plain = replace(invented_assessment, findings=())
     sheet = describe_comparison(plain, invented_context)
-    page = render_html(sheet, asset_prefix="assets/")
+    page = render_html(sheet)
     assert (sheet.questions, sheet.risks) == ((), None)
     assert not re.search('id="(?:questions|risks)"', page)
 
@@ -266,7 +266,7 @@ def test_a_tender_is_linked_to_its_report(invented_assessment, invented_context)
     link = '<a href="tender/report.html">Tender report</a>'
     tender = replace(invented_assessment, tender=Tender(lots=()))
     pages = [
-        render_html(describe_comparison(item, invented_context), asset_prefix="assets/")
+        render_html(describe_comparison(item, invented_context))
         for item in (invented_assessment, tender)
     ]
     assert [link in page for page in pages] == [False, True]

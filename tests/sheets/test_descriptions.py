@@ -3,7 +3,6 @@
 from dataclasses import replace
 from decimal import Decimal
 
-import numpy as np
 import pytest
 
 from generator.errors import SheetError
@@ -248,44 +247,6 @@ def test_unknown_theme_is_refused():
         palette("no-such-theme")
 
 
-def _current(quantity, value, limit):
-    return _verdict(
-        lamp_id="L-02",
-        clause=quantity,
-        quantity=quantity,
-        unit="%",
-        value=Decimal(value),
-        limit=Decimal(limit),
-        comparison="at most",
-        margin=Decimal(limit) - Decimal(value),
-        verdict=VerdictWord.PASS,
-    )
-
-
-def test_harmonics_are_drawn_against_the_limits_of_verdicts(invented_assessment, invented_context):
-    # Orders 3 and 5 are 32 % and 11 % of the fundamental; 1.7 of 3.4 mA/W is half of the limit.
-    curves = invented_context.curves["L-02"]
-    bare = replace(curves.harmonics, limit_percent=np.full(7, np.nan))
-    context = replace(
-        invented_context,
-        curves={**invented_context.curves, "L-02": replace(curves, harmonics=bare)},
-    )
-
-    def comb(*verdicts):
-        assessment = replace(
-            invented_assessment, verdicts=(*invented_assessment.verdicts, *verdicts)
-        )
-        sheet = describe_lamp(assessment, "L-02", context)
-        return next(item for item in sheet.drawings if item.key == "harmonics")
-
-    assert {row[2] for row in comb().table.rows} == {"none"}
-    drawn = comb(_current("h3_ma_per_w", "1.7", "3.4"), _current("h5_percent", "11", "10"))
-    assert [row[2] for row in drawn.table.rows][:3] == ["64.0", "10.0", "none"]
-    assert "above the limit: order 5" in drawn.caption
-    kept = comb(_current("h3_ma_per_w", "1.7", "3.4"))
-    assert "every limit drawn is kept" in kept.caption
-
-
 def test_spread_has_two_decimals_more_than_the_value_at_most():
     text = figure_text(_figure(spread=Decimal("0.0000042")), "ra")
     assert text.detail == "standard deviation < 0.001; m"
@@ -308,7 +269,5 @@ def test_risks_are_those_of_the_clauses_the_lamp_was_judged_by(
     )
     sheet = describe_lamp(replace(invented_assessment, risks=risks), "L-01", invented_context)
     assert [row.title for row in sheet.statements.risks.largest] == ["eu-ra"]
-    page = render_html(
-        replace(sheet, frame=replace(sheet.frame, theme="laboratory")), asset_prefix=""
-    )
+    page = render_html(replace(sheet, frame=replace(sheet.frame, theme="laboratory")))
     assert "eu-ra (R, 3 lamps) 1.0\u00a0% and 2.0\u00a0%." in page

@@ -6,9 +6,10 @@ import xml.etree.ElementTree as ET
 import numpy as np
 import pytest
 
+from generator.language import say
+from generator.language.messages import spoken_by
 from generator.records.curves import (
     AgeingCurve,
-    HarmonicComb,
     IntensityCurve,
     LightCurve,
     LowRiskLine,
@@ -20,7 +21,6 @@ from generator.sheets.drawings.ageing_chart import ageing_table, draw_ageing_cha
 from generator.sheets.drawings.axes import Scale, label, ticks
 from generator.sheets.drawings.class_arrow import CLASS_COLOURS, draw_class_arrow
 from generator.sheets.drawings.colour_strip import draw_colour_strip
-from generator.sheets.drawings.harmonics_comb import draw_harmonics_comb, harmonics_table
 from generator.sheets.drawings.mains_cycle import draw_mains_cycle, mains_table
 from generator.sheets.drawings.margin_ruler import Distance, draw_margin_ruler, place
 from generator.sheets.drawings.modulation_plane import draw_modulation_plane
@@ -234,16 +234,6 @@ def test_colours_are_roles_and_never_style_attributes():
     assert "style" not in svg
 
 
-def test_a_harmonic_over_its_limit_stands_out():
-    comb = HarmonicComb(
-        np.array([3.0, 5, 7]), np.array([20.0, 12, 5]), np.array([27.0, 10, np.nan])
-    )
-    root = _root(draw_harmonics_comb(comb, "order 5", TENDER))
-    roles = [tooth.attrib["class"] for tooth in root.iter(f"{SVG}rect")]
-    assert roles == ["f-accent", "f-bad", "f-accent"]
-    assert harmonics_table(comb).rows[2] == ("7", "5.0", "none")
-
-
 def test_dot_of_the_modulation_plane_lies_above_the_line_where_it_should():
     line = LowRiskLine(np.array([1.0, 10000.0]), np.array([0.1, 1000.0]), "x")
     heights = []
@@ -296,3 +286,22 @@ def test_colour_strip_draws_what_is_known():
     shifts = [5.0, None] * 8
     root = _root(draw_colour_strip(shifts, [80.0] * 16, "shift", TENDER))
     assert len(root.findall(f".//{SVG}rect")) == 16 + 8 + 16
+
+
+def test_words_and_numbers_of_a_drawing_are_said_in_the_language():
+    class Speaker:
+        def pattern(self, message):
+            return "Lichtstrom & Zeit" if message.singular == "operating time, h" else "…"
+
+        def number(self, text):
+            return text.replace(".", ",")
+
+    curve = AgeingCurve(np.array([0.0, 3000.0]), np.array([1.0, 0.95]))
+    with spoken_by(Speaker()):
+        svg = draw_ageing_chart(curve, say("the finding"), TENDER)
+        rows = ageing_table(curve).rows
+    words = [element.text for element in _root(svg).iter() if element.text]
+    assert "Lichtstrom & Zeit" in words
+    assert "0,95" in words
+    assert "the finding" not in words
+    assert rows == (("0", "1,000"), ("3000", "0,950"))

@@ -10,6 +10,7 @@ from jinja2.sandbox import SecurityError
 
 from generator.records.settings import SheetTable
 from generator.sheets import (
+    PagePlace,
     describe_comparison,
     describe_lamp,
     render_html,
@@ -28,12 +29,12 @@ def invented_pages(invented_assessment, invented_context):
     pages = {
         lamp.lamp_id: render_html(
             describe_lamp(invented_assessment, lamp.lamp_id, invented_context),
-            asset_prefix="../assets/",
+            PagePlace("../"),
         )
         for lamp in invented_assessment.campaign.lamps
     }
     comparison = describe_comparison(invented_assessment, invented_context)
-    return pages | {"index": render_html(comparison, asset_prefix="assets/")}
+    return pages | {"index": render_html(comparison)}
 
 
 def _in_theme(assessment, theme):
@@ -50,7 +51,7 @@ def dressed_pages(invented_assessment, invented_context):
     return {
         theme: render_html(
             describe_lamp(_in_theme(invented_assessment, theme), "L-01", invented_context),
-            asset_prefix="../assets/",
+            PagePlace("../"),
         )
         for theme in themes()
     }
@@ -203,7 +204,7 @@ def test_a_campaign_changes_a_colour_and_a_template_without_copying_the_rest(
     assert theme_overrides(tmp_path, "laboratory") is None
     folder = theme_overrides(tmp_path, "tender")
     context = dataclasses.replace(invented_context, overrides=folder)
-    page = render_html(describe_lamp(invented_assessment, "L-01", context), asset_prefix="")
+    page = render_html(describe_lamp(invented_assessment, "L-01", context))
     assert "<p>Our own word.</p>" in page
     assert 'id="verdicts"' in page
     assert 'fill="#123456"' in page
@@ -225,7 +226,7 @@ def test_a_template_of_a_campaign_runs_in_the_sandbox(
     context = dataclasses.replace(invented_context, overrides=tmp_path)
     sheet = describe_lamp(invented_assessment, "L-01", context)
     with pytest.raises(SecurityError):
-        render_html(sheet, asset_prefix="")
+        render_html(sheet)
 
 
 def test_every_theme_has_the_roles_that_drawings_use():
@@ -271,7 +272,7 @@ def test_an_act_without_a_clause_that_applies_has_no_table(invented_assessment, 
     first, *others = sheet.verdicts
     outside = dataclasses.replace(first, clauses=())
     bare = dataclasses.replace(sheet, verdicts=(outside, *others))
-    for text in (render_html(bare, asset_prefix=""), render_paper(bare)):
+    for text in (render_html(bare), render_paper(bare)):
         assert text.count('<table class="verdicts">') == len(others)
         assert "<tbody>\n</tbody>" not in text
         assert f'<p class="outside act">{first.heading}</p>' in text

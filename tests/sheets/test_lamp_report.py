@@ -66,7 +66,7 @@ def reported_sheets(invented_assessment, invented_context):
     return sheets
 
 
-@pytest.mark.parametrize("write", [lambda s: render_html(s, asset_prefix=""), render_paper])
+@pytest.mark.parametrize("write", [render_html, render_paper])
 def test_a_test_report_says_what_the_standard_asks(reported_sheets, write):
     # ISO/IEC 17025:2017, 7.8.2.1 and 7.8.8.
     page = words(write(reported_sheets["laboratory"]))
@@ -92,7 +92,7 @@ def test_nothing_is_said_that_nobody_stated(invented_assessment, invented_contex
     dressed = dataclasses.replace(campaign, settings=campaign.settings.model_copy(update=update))
     assessment = dataclasses.replace(invented_assessment, campaign=dressed)
     sheet = describe_lamp(assessment, "L-01", invented_context)
-    page = words(render_html(sheet, asset_prefix=""))
+    page = words(render_html(sheet))
     assert "consent of the laboratory" not in page
     assert "Reproduction note" not in page
     assert sheet.report.signatory == ""
@@ -101,7 +101,7 @@ def test_nothing_is_said_that_nobody_stated(invented_assessment, invented_contex
 
 def test_every_theme_lists_what_is_missing(reported_sheets):
     for theme, sheet in reported_sheets.items():
-        page = words(render_html(sheet, asset_prefix=""))
+        page = words(render_html(sheet))
         assert sheet.report.missing == (
             "Laboratory, name and address",
             "Place of work",
@@ -118,7 +118,7 @@ def test_the_report_of_a_lamp_counts_that_lamp_alone(reported_sheets, invented_a
     assert items["Items tested"].count(";") == 0
 
 
-@pytest.mark.parametrize("write", [lambda s: render_html(s, asset_prefix=""), render_paper])
+@pytest.mark.parametrize("write", [render_html, render_paper])
 def test_product_information_carries_its_warning(reported_sheets, write):
     # Regulation (EU) 2019/2015, Annex IX point 2(b): no better than declared.
     for theme, sheet in reported_sheets.items():
@@ -140,4 +140,4 @@ def test_product_information_is_folded_first(reported_sheets):
 def test_no_product_information_where_no_act_asks(invented_assessment, invented_context):
     sheet = describe_lamp(invented_assessment, "L-01", invented_context)
     assert sheet.product is None
-    assert 'id="product"' not in render_html(sheet, asset_prefix="")
+    assert 'id="product"' not in render_html(sheet)

@@ -1,10 +1,13 @@
 """Numbers as text."""
 
+import re
 from datetime import date
 from decimal import Decimal
 
 import pytest
 
+from generator.language import say
+from generator.language.messages import spoken_by
 from generator.sheets.number_format import (
     date_words,
     decimals_for,
@@ -90,3 +93,37 @@ def test_margins_carry_their_sign_and_never_read_nought():
 
 def test_date_in_words():
     assert date_words(date(2021, 9, 1)) == "1\u00a0September 2021"
+
+
+class DecimalComma:
+    """Says every pattern in capitals, places aside, and numbers with a comma."""
+
+    def pattern(self, message):
+        return re.sub(r"\{\w+(?::[^}]*)?\}|[a-z]+", _upper, message.singular)
+
+    def number(self, text):
+        return text.replace(".", ",")
+
+
+def _upper(match):
+    return match[0] if match[0].startswith("{") else match[0].upper()
+
+
+def test_numbers_take_the_notation_of_the_language():
+    with spoken_by(DecimalComma()):
+        assert shown(Decimal("12345.678"), 1) == "12\u00a0345,7"
+        assert exact_text(Decimal("-0.50")) == "\u22120,50"
+        assert shown_margin(Decimal("0.25"), 2) == "+0,25"
+        assert rounded_up(Decimal("0.0301"), 2) == "0,04"
+        assert range_text("0.5 to 82000") == "0,5 TO 82\u00a0000"
+        assert limits_in("0.5 to 82000") == (Decimal("0.5"), Decimal(82000))
+
+
+def test_numbers_of_a_message_are_shortened_before_they_take_the_notation():
+    step = say("the margin is {margin}, the limit {limit}", margin=Decimal("1.23456789"), limit=0.5)
+    known = {Decimal("1.23456789"): "1.2"}
+    assert readable(step, 2) == "the margin is 1.235, the limit 0.5"
+    assert readable(step, 2, known) == "the margin is 1.2, the limit 0.5"
+    with spoken_by(DecimalComma()):
+        assert readable(step, 2) == "THE MARGIN IS 1,235, THE LIMIT 0,5"
+        assert readable("of 1.23456789 in clause 4.1", 2) == "of 1,235 in clause 4.1"

@@ -119,7 +119,7 @@ def test_the_short_form_takes_two_pages_of_a4(lamp_sheet):
 def test_page_and_paper_say_the_same(lamp_sheet, opened):
     words = _words(opened)
     assert "\ufffd" not in words
-    page = render_html(lamp_sheet, asset_prefix="")
+    page = render_html(lamp_sheet)
     said = [item.figure.number for item in lamp_sheet.headlines]
     for group in lamp_sheet.verdicts:
         said += [group.heading]

@@ -15,7 +15,7 @@ from generator.records.lamp import Offer
 from generator.records.product_field import ProductField
 from generator.records.report_settings import ReportTable
 from generator.records.tender import Tender
-from generator.sheets import describe_comparison, describe_lamp, render_html
+from generator.sheets import PagePlace, describe_comparison, describe_lamp, render_html
 from generator.sheets.html_sheet import render_paper
 from generator.sheets.shown_names import ShownNames
 from generator.sheets.themes import themes
@@ -104,7 +104,7 @@ def test_lamp_sheet_tells_nobody(coded, theme, lamp_id):
     assessment, context = coded
     sheet = describe_lamp(assessment, lamp_id, context)
     sheet = replace(sheet, frame=replace(sheet.frame, theme=theme))
-    for page in (render_html(sheet, asset_prefix="../assets/"), render_paper(sheet)):
+    for page in (render_html(sheet, PagePlace("../")), render_paper(sheet)):
         assert told(shown(page)) == []
         code = assessment.shown_bidders[lamp_id]
         assert f"<title>{code} – spec sheet</title>" in page
@@ -114,7 +114,7 @@ def test_lamp_sheet_tells_nobody(coded, theme, lamp_id):
 def test_comparison_tells_nobody(coded):
     assessment, context = coded
     sheet = describe_comparison(assessment, context)
-    page, paper = render_html(sheet, asset_prefix="assets/"), render_paper(sheet)
+    page, paper = render_html(sheet), render_paper(sheet)
     assert told(shown(page)) == []
     assert told(shown(paper)) == []
     assert sheet.bidders == ("Bidder B", "Bidder A", "Bidder C")

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from decimal import Decimal
 
+from generator.language import say
 from generator.records.tender import LowOffer, Question
 
 __all__ = ["FEWEST_OTHERS", "low_offers"]
@@ -12,7 +13,7 @@ __all__ = ["FEWEST_OTHERS", "low_offers"]
 FEWEST_OTHERS = 2
 """Other prices without which there is no mean to compare with; common practice, no source."""
 
-_TEXT = (
+_TEXT = say(
     "The price of your offer is well below the mean of the other offers for this lot. Please "
     "explain the price, for instance by the way the lamps are made, the conditions under which "
     "you buy them, or how they are delivered, and enclose what supports the explanation."
@@ -49,10 +50,16 @@ def low_offers(
         if below >= threshold_percent:
             question = Question(
                 "abnormally-low",
-                "Price to be explained",
+                say("Price to be explained"),
                 _TEXT,
-                f"{price} against a mean of {mean:.2f}: {below:.1f} % below, "
-                f"to be explained from {threshold_percent} %",
+                say(
+                    "{price} against a mean of {mean:.2f}: {below:.1f} % below, to be explained "
+                    "from {threshold} %",
+                    price=price,
+                    mean=mean,
+                    below=below,
+                    threshold=threshold_percent,
+                ),
             )
             found.append(LowOffer(lamp_id, price, mean, below, question))
     return tuple(sorted(found, key=lambda item: (item.price, item.lamp_id)))

@@ -8,10 +8,21 @@ from decimal import ROUND_HALF_UP, Decimal
 
 from generator.comparison.award.abnormally_low import low_offers
 from generator.comparison.award.scoring import FULL_SCORE, exact_function, function_text, score
+from generator.language import Numeral, joined, numeral, say
 from generator.records.tender import AwardResult, BidScore, SubScore
 from generator.records.tender_settings import TenderAward, TenderCriterion
 
 __all__ = ["Candidate", "award", "best_value"]
+
+_SUM = say("{sum} = {score}")
+_HELD = say("{sum}, held within 0 to {full} = {score}")
+_TIED = say("equal total; tie rule: {rule}")
+_STILL_TIED = say("equal total; tie rule: {rule}; still equal, the rank is shared")
+_TIE_RULES = {
+    "lower life-cycle cost": say("lower life-cycle cost"),
+    "lower price": say("lower price"),
+    "shared rank": say("shared rank"),
+}
 
 
 @dataclass(frozen=True, slots=True)
@@ -105,7 +116,9 @@ def _scored(item: Candidate, candidates: Sequence[Candidate], settings: TenderAw
     if not gaps:
         step = Decimal(1).scaleb(-settings.decimals)
         total = sum(points, Decimal(0)).quantize(step, rounding=ROUND_HALF_UP)
-    reason = item.barred or (f"no value for {', '.join(gaps)}" if gaps else "")
+    reason = item.barred or (
+        say("no value for {criteria}", criteria=", ".join(gaps)) if gaps else ""
+    )
     return BidScore(item.lamp_id, parts, total, None, provisional=item.provisional, reason=reason)
 
 
@@ -114,45 +127,42 @@ def _sub_score(criterion: TenderCriterion, item: Candidate, best: Decimal | None
     unit = item.units.get(name, "")
     value = item.values.get(name)
     if value is None or item.barred or best is None:
-        text = item.barred or "no value"
+        text = item.barred or say("no value")
         return SubScore(name, value, unit, None, weight, None, text)
     reached = score(exact_function(criterion), value, best)
     points = reached * weight / FULL_SCORE
-    origin = "; the value is declared, not measured" if name in item.declared else ""
-    return SubScore(
-        name,
-        value,
-        unit,
-        reached,
-        weight,
-        points,
-        f"{_arithmetic(criterion, value, best, reached)}; "
-        f"x {_shown(weight)} % = {_shown(points)} points{origin}",
+    arithmetic = say(
+        "{score}; x {weight} % = {points} points",
+        score=_arithmetic(criterion, value, best, reached),
+        weight=_shown(weight),
+        points=_shown(points),
     )
+    if name in item.declared:
+        arithmetic = say("{arithmetic}; the value is declared, not measured", arithmetic=arithmetic)
+    return SubScore(name, value, unit, reached, weight, points, arithmetic)
 
 
 def _arithmetic(criterion: TenderCriterion, value: Decimal, best: Decimal, reached: Decimal) -> str:
-    given = _shown(value)
+    given, score_text = _shown(value), _shown(reached)
     if criterion.method == "linear":
-        full, none = criterion.full_score_at, criterion.zero_score_at
-        sum_text = f"{FULL_SCORE} x ({given} - {none}) / ({full} - {none})"
-        if reached in (0, FULL_SCORE):
-            sum_text += f", held within 0 to {FULL_SCORE}"
-    elif criterion.method == "steps":
-        return f"highest step reached by {given}: {_shown(reached)}"
-    elif value == best:
-        return f"{given} is the best value: {_shown(reached)}"
-    elif criterion.better == "higher":
-        sum_text = f"{FULL_SCORE} x {given} / {_shown(best)}"
-    else:
-        sum_text = f"{FULL_SCORE} x {_shown(best)} / {given}"
-    return f"{sum_text} = {_shown(reached)}"
+        full, none = numeral(f"{criterion.full_score_at}"), numeral(f"{criterion.zero_score_at}")
+        sum_text = joined("", (f"{FULL_SCORE} x (", given, " - ", none, ") / (", full, " - ", none))
+        held = reached in (0, FULL_SCORE)
+        pattern = _HELD if held else _SUM
+        return pattern.format(sum=joined("", (sum_text, ")")), full=FULL_SCORE, score=score_text)
+    if criterion.method == "steps":
+        return say("highest step reached by {value}: {score}", value=given, score=score_text)
+    if value == best:
+        return say("{value} is the best value: {score}", value=given, score=score_text)
+    over, under = (given, _shown(best)) if criterion.better == "higher" else (_shown(best), given)
+    ratio = joined("", (f"{FULL_SCORE} x ", over, " / ", under))
+    return _SUM.format(sum=ratio, score=score_text)
 
 
-def _shown(number: Decimal) -> str:
+def _shown(number: Decimal) -> Numeral:
     """A number with four decimals at the most."""
     text = f"{number.quantize(Decimal('0.0001'), rounding=ROUND_HALF_UP):f}"
-    return text.rstrip("0").rstrip(".") if "." in text else text
+    return numeral(text.rstrip("0").rstrip(".") if "." in text else text)
 
 
 def _tie_value(item: Candidate, settings: TenderAward) -> Decimal:
@@ -184,9 +194,9 @@ def _placed(
         for other in ranked
         if other.total == item.total and other.lamp_id != item.lamp_id
     )
-    note = ""
+    note: str = ""
     if tied:
         still = any(keys[other] == own for other in tied)
-        note = f"equal total; tie rule: {settings.tie_rule}"
-        note += "; still equal, the rank is shared" if still else ""
+        pattern = _STILL_TIED if still else _TIED
+        note = pattern.format(rule=_TIE_RULES[settings.tie_rule])
     return replace(item, rank=rank, tied_with=tied, tie_note=note)

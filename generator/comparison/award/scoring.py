@@ -10,6 +10,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from generator.comparison.cost.formula import Number
+from generator.language import Numeral, joined, numeral, say
 from generator.records.tender_settings import TenderCriterion
 
 __all__ = [
@@ -22,6 +23,21 @@ __all__ = [
 ]
 
 FULL_SCORE = 100
+
+_STEP = {
+    "higher": say("{score} for at least {limit}"),
+    "lower": say("{score} for at most {limit}"),
+}
+_RATIO = {
+    "higher": say(
+        "{criterion}: {full} x value / best, 100 for the best and 0 where there is no ratio; "
+        "weight {weight} %"
+    ),
+    "lower": say(
+        "{criterion}: {full} x best / value, 100 for the best and 0 where there is no ratio; "
+        "weight {weight} %"
+    ),
+}
 
 
 @dataclass(frozen=True, slots=True)
@@ -113,18 +129,35 @@ def _smaller(a: Number, b: Number) -> Number:
 
 def function_text(criterion: TenderCriterion) -> str:
     """The scoring function in words, as it is published with the tender."""
-    weight = f"weight {criterion.weight_percent} %"
-    name = criterion.quantity
+    name, weight = criterion.quantity, _plain(criterion.weight_percent)
     if criterion.method == "linear":
-        return (
-            f"{name}: {FULL_SCORE} at {criterion.full_score_at}, 0 at {criterion.zero_score_at}, "
-            f"linear between, held at both ends; {weight}"
+        return say(
+            "{criterion}: {full} at {best}, 0 at {none}, linear between, held at both ends; "
+            "weight {weight} %",
+            criterion=name,
+            full=FULL_SCORE,
+            best=_plain(criterion.full_score_at),
+            none=_plain(criterion.zero_score_at),
+            weight=weight,
         )
     if criterion.method == "steps":
-        word = "at least" if criterion.better == "higher" else "at most"
-        steps = ", ".join(f"{step.score} for {word} {step.at}" for step in criterion.steps)
-        return f"{name}: {steps}, otherwise 0, the highest score reached counts; {weight}"
-    ratio = "value / best" if criterion.better == "higher" else "best / value"
-    return (
-        f"{name}: {FULL_SCORE} x {ratio}, 100 for the best and 0 where there is no ratio; {weight}"
-    )
+        pattern = _STEP[criterion.better]
+        return say(
+            "{criterion}: {steps}, otherwise 0, the highest score reached counts; "
+            "weight {weight} %",
+            criterion=name,
+            steps=joined(
+                ", ",
+                (
+                    pattern.format(score=_plain(step.score), limit=_plain(step.at))
+                    for step in criterion.steps
+                ),
+            ),
+            weight=weight,
+        )
+    return _RATIO[criterion.better].format(criterion=name, full=FULL_SCORE, weight=weight)
+
+
+def _plain(number: Decimal | None) -> Numeral:
+    """A number as the tender states it."""
+    return numeral(f"{number}")

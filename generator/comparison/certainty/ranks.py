@@ -11,6 +11,7 @@ from numpy.typing import NDArray
 from generator.comparison.certainty.draws import conforming, drawn_inputs
 from generator.comparison.certainty.scene import Moved, Scene, SceneResult, evaluated
 from generator.comparison.certainty.swaps import FURTHEST_PERCENT, swap_changes
+from generator.language import numeral, say
 from generator.records.tender import (
     BidCertainty,
     Certainty,
@@ -27,13 +28,28 @@ __all__ = ["Gated", "certainty"]
 Array = NDArray[np.float64]
 _SMALLEST_SHARE = 0.005
 _NOTES = (
-    "Measured figures vary by their uncertainty, which holds the spread of the units.",
-    "Where no uncertainty is known, they vary by the spread over the root of the number of units.",
-    "Life, tariff and price rise vary as [use] states.",
-    "Not varied: declared values, prices offered, weights. Bids vary independently of each other.",
-    "Conformity is that of the true value: it meets a limit or does not, and never stays open.",
-    "What the shares of the inputs leave of the whole comes from steps and from inputs together.",
-    "Swaps are sought from {} % to +{} % of each input.".format(*FURTHEST_PERCENT),
+    say("Measured figures vary by their uncertainty, which holds the spread of the units."),
+    say(
+        "Where no uncertainty is known, they vary by the spread over the root of the number of "
+        "units."
+    ),
+    say("Life, tariff and price rise vary as [use] states."),
+    say(
+        "Not varied: declared values, prices offered, weights. Bids vary independently of each "
+        "other."
+    ),
+    say(
+        "Conformity is that of the true value: it meets a limit or does not, and never stays open."
+    ),
+    say(
+        "What the shares of the inputs leave of the whole comes from steps and from inputs "
+        "together."
+    ),
+    say(
+        "Swaps are sought from {lowest} % to {highest} % of each input.",
+        lowest=numeral(f"{FURTHEST_PERCENT[0]:+d}"),
+        highest=numeral(f"{FURTHEST_PERCENT[1]:+d}"),
+    ),
 )
 
 

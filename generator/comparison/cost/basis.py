@@ -11,12 +11,15 @@ import numpy as np
 from numpy.typing import NDArray
 
 from generator.comparison.cost.formula import HOURS_OF_A_YEAR, CostInputs, Number, price_path
-from generator.records.figure import Figure, FigureSet
+from generator.language import joined, say, say_as
+from generator.records.figure import GRADE_WORDS, Figure, FigureSet
 from generator.records.lamp import Lamp
 from generator.records.tender import Assumption
 from generator.records.tender_settings import ExistingLamp, TenderUse
 
 __all__ = [
+    "ACTIVE_POWER",
+    "STANDBY_POWER",
     "LampBasis",
     "LampNumbers",
     "UseNumbers",
@@ -32,6 +35,10 @@ __all__ = [
 ]
 
 Array = NDArray[np.float64]
+
+ACTIVE_POWER = say("active power")
+STANDBY_POWER = say("standby power")
+"""Assumptions that the energy of a year rests on, by name."""
 
 LIFE_QUANTITIES = ("l70_projected_h", "l70b50_h")
 """Projected life before declared life."""
@@ -136,11 +143,13 @@ def lamp_basis(lamp: Lamp, figures: FigureSet, use: TenderUse) -> LampBasis:
     notes = []
     if "standby_power_w" not in numbers and not lamp.connected:
         numbers["standby_power_w"] = Decimal(0)
-        notes.append("No standby power is given for this lamp, which is not connected: none taken.")
+        notes.append(
+            say("No standby power is given for this lamp, which is not connected: none taken.")
+        )
     if use.survival_stated_at_h is None:
         numbers["survival_factor"] = Decimal(1)
         found.pop("survival_factor", None)
-        notes.append("Failures before the end of life are not counted.")
+        notes.append(say("Failures before the end of life are not counted."))
     if lamp.offer.unit_price is not None:
         numbers["price"] = lamp.offer.unit_price
     return _basis(lamp.lamp_id, numbers, found, notes)
@@ -157,22 +166,22 @@ def existing_basis(lamp: ExistingLamp) -> LampBasis:
         "survival_factor": Decimal(1),
     }
     numbers = {name: value for name, value in given.items() if value is not None}
-    return _basis(lamp.id, numbers, {}, ["Existing lamp, as the tender states it."])
+    return _basis(lamp.id, numbers, {}, [say("Existing lamp, as the tender states it.")])
 
 
 _WORDS = {
-    "price": ("unit price", "money"),
-    "power_w": ("active power", "W"),
-    "standby_power_w": ("standby power", "W"),
-    "life_h": ("projected or declared life", "h"),
-    "flux_lm": ("luminous flux", "lm"),
-    "survival_factor": ("survival factor", ""),
+    "price": (say("unit price"), "money"),
+    "power_w": (ACTIVE_POWER, "W"),
+    "standby_power_w": (STANDBY_POWER, "W"),
+    "life_h": (say("projected or declared life"), "h"),
+    "flux_lm": (say("luminous flux"), "lm"),
+    "survival_factor": (say("survival factor"), ""),
 }
 _MAY_BE_ZERO = ("price", "standby_power_w")
 
 
 def _basis(
-    lamp_id: str, numbers: dict[str, Decimal], found: dict[str, Figure], notes: list[str]
+    lamp_id: str, numbers: dict[str, Decimal], found: dict[str, Figure], notes: Sequence[str]
 ) -> LampBasis:
     usable = {
         name: value
@@ -196,8 +205,8 @@ def _basis(
 def _origin(name: str, found: dict[str, Figure]) -> str:
     figure = found.get(name)
     if figure is not None:
-        return f"{figure.grade}, {figure.quantity}"
-    return "offer" if name == "price" else "stated or taken, see notes"
+        return joined(", ", (GRADE_WORDS[figure.grade], figure.quantity))
+    return say_as("origin", "offer") if name == "price" else say("stated or taken, see notes")
 
 
 def _first(figures: FigureSet, lamp_id: str, quantities: Sequence[str]) -> Figure | None:
@@ -270,7 +279,7 @@ def use_assumptions(use: TenderUse) -> tuple[Assumption, ...]:
         ("discount_rate_percent", "%"),
         ("installation_cost_per_lamp", currency),
         ("replacement_labour_per_lamp", currency),
-        ("maintenance_cost_per_lamp_year", f"{currency}/year"),
+        ("maintenance_cost_per_lamp_year", say("{currency}/year", currency=currency)),
         ("end_of_life_cost_per_lamp", currency),
         ("survival_stated_at_h", "h"),
         ("carbon_price_per_t", f"{currency}/t"),
@@ -283,7 +292,12 @@ def use_assumptions(use: TenderUse) -> tuple[Assumption, ...]:
             if getattr(use, key) is not None
         ),
         *(
-            Assumption(f"tariff of year {k}", price, f"{currency}/kWh", "use.tariff_path_per_kwh")
+            Assumption(
+                say("tariff of year {year}", year=k),
+                price,
+                f"{currency}/kWh",
+                "use.tariff_path_per_kwh",
+            )
             for k, price in enumerate(path, start=1)
         ),
     )

@@ -15,6 +15,7 @@ from generator.comparison.cost.basis import (
     use_numbers,
 )
 from generator.comparison.cost.formula import cash_flows, life_cycle_cost, maintained_share
+from generator.language import say
 from generator.records.tender import (
     BreakEven,
     CashFlow,
@@ -27,10 +28,14 @@ from generator.records.tender_settings import TenderLot, TenderUse
 
 __all__ = ["break_even", "cost_study", "equal_light", "lamp_count", "light_needed_lm", "tornado"]
 
-FORMULA = (
+FORMULA = say(
     "Present value of every payment: yearly payments at the end of the year, replacements when "
     "the life ends within the study, no residual value; amounts are summed unrounded."
 )
+_PRICES = {
+    "real": say("Prices and rates are real."),
+    "nominal": say("Prices and rates are nominal."),
+}
 
 
 def cost_study(basis: LampBasis, use: TenderUse, lamps: int) -> LifeCycleCost | None:
@@ -74,7 +79,7 @@ def cost_study(basis: LampBasis, use: TenderUse, lamps: int) -> LifeCycleCost | 
         prices=use.prices,
         cash_flows=tuple(rows),
         assumptions=(*basis.assumptions, *use_assumptions(use)),
-        notes=(f"Prices and rates are {use.prices}.", FORMULA, *basis.notes),
+        notes=(_PRICES[use.prices], FORMULA, *basis.notes),
     )
 
 

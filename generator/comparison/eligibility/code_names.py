@@ -6,6 +6,7 @@ import hashlib
 from collections.abc import Mapping, Sequence
 from types import MappingProxyType
 
+from generator.language import say
 from generator.records.lamp import Lamp
 from generator.records.tender_settings import TenderTable
 
@@ -52,11 +53,12 @@ def coded_names(lamps: Sequence[Lamp], tender: TenderTable) -> Mapping[str, str]
         lamp_id -> for instance ``Bidder B, lamp 2``.
     """
     codes = bidder_codes(lamps, tender)
-    shown, counted = {}, dict.fromkeys(codes.values(), 0)
+    shown: dict[str, str] = {}
+    counted = dict.fromkeys(codes.values(), 0)
     for lamp_id in sorted(codes, key=lambda lamp_id: _digest(lamp_id, tender.seed)):
         code = codes[lamp_id]
         counted[code] += 1
-        shown[lamp_id] = f"Bidder {code}, lamp {counted[code]}"
+        shown[lamp_id] = say("Bidder {code}, lamp {number}", code=code, number=counted[code])
     return MappingProxyType(shown)
 
 

@@ -6,6 +6,7 @@ from collections.abc import Sequence
 from datetime import date
 
 from generator.comparison.eligibility.gate_findings import GateFindings
+from generator.language import joined, say, say_as
 from generator.records.finding import Finding, Severity
 from generator.records.lamp import Lamp
 from generator.records.tender import Bid
@@ -13,7 +14,12 @@ from generator.records.tender_settings import TenderLot, TenderTable
 
 __all__ = ["check_evidence", "check_findings", "check_offer"]
 
-_SOURCE = "tender documents, [tender]"
+_SOURCE = say("tender documents, {key}", key="[tender] reports_from/to")
+_QUESTIONED = say(
+    "Numbers in the bid do not agree with one another: {title}. Please explain the difference, or "
+    "supply the number as it should stand."
+)
+_CAP = say_as("lamp", "Cap")
 _ASKED_ABOUT = (Severity.IMPOSSIBLE, Severity.CONTRADICTION, Severity.DOUBT)
 
 
@@ -38,9 +44,11 @@ def check_evidence(
     if not lamp.offer.report_no:
         findings.ask(
             "evidence-report",
-            "Test report",
-            "The bid names no test report for the offered lamp. Please supply the report with its "
-            "number, date, laboratory and accreditation.",
+            say("Test report"),
+            say(
+                "The bid names no test report for the offered lamp. Please supply the report with "
+                "its number, date, laboratory and accreditation."
+            ),
         )
         return
     findings.hold("evidence-report")
@@ -55,32 +63,50 @@ def _same(name: str) -> str:
 
 
 def _check_model(lamp: Lamp, bid: Bid, findings: GateFindings) -> None:
-    clause, title = "evidence-model", "Model named in the report"
+    clause, title = "evidence-model", say("Model named in the report")
     if not bid.report_model:
         findings.ask(
             clause,
             title,
-            "It cannot be seen which model the test report is about. Please state the model that "
-            "the report names, and enclose the page that names it.",
+            say(
+                "It cannot be seen which model the test report is about. Please state the model "
+                "that the report names, and enclose the page that names it."
+            ),
         )
     elif _same(bid.report_model) != _same(lamp.model):
         findings.ask(
             clause,
             title,
-            "The test report names a model other than the offered one. Please supply a report on "
-            "the offered model, or show that both are the same in light, colour and circuit.",
-            f"report: {bid.report_model}; offer: {lamp.model}",
+            say(
+                "The test report names a model other than the offered one. Please supply a report "
+                "on the offered model, or show that both are the same in light, colour and "
+                "circuit."
+            ),
+            say("report: {report}; offer: {offer}", report=bid.report_model, offer=lamp.model),
         )
     else:
         findings.hold(clause)
 
 
 def _check_laboratory(bid: Bid, tender: TenderTable, findings: GateFindings) -> None:
-    for clause, title, given, required in (
-        ("evidence-laboratory", "Laboratory", bid.laboratory, tender.laboratory_required),
+    for clause, title, question, given, required in (
+        (
+            "evidence-laboratory",
+            say("Laboratory"),
+            say(
+                "The bid does not state the laboratory behind the test report. Please state it "
+                "and enclose the document that shows it."
+            ),
+            bid.laboratory,
+            tender.laboratory_required,
+        ),
         (
             "evidence-accreditation",
-            "Accreditation",
+            say("Accreditation"),
+            say(
+                "The bid does not state the accreditation behind the test report. Please state it "
+                "and enclose the document that shows it."
+            ),
             bid.accreditation,
             tender.accreditation_required,
         ),
@@ -88,40 +114,46 @@ def _check_laboratory(bid: Bid, tender: TenderTable, findings: GateFindings) -> 
         if given:
             findings.hold(clause)
         elif required:
-            findings.ask(
-                clause,
-                title,
-                f"The bid does not state the {title.lower()} behind the test report. Please state "
-                "it and enclose the document that shows it.",
-            )
+            findings.ask(clause, title, question)
 
 
 def _check_date(
     report_date: date | None, tender: TenderTable, on: date, findings: GateFindings
 ) -> None:
-    clause, title = "evidence-date", "Date of the report"
+    clause, title = "evidence-date", say("Date of the report")
     begin, end = tender.reports_from, tender.reports_to
     if report_date is None:
         findings.ask(
             clause,
             title,
-            "The bid does not state the date of the test report. Please state it and enclose the "
-            "page that shows it.",
+            say(
+                "The bid does not state the date of the test report. Please state it and enclose "
+                "the page that shows it."
+            ),
         )
     elif report_date > on:
         findings.ask(
             clause,
             title,
-            f"The test report is dated {report_date.isoformat()}, after the date of this "
-            f"assessment ({on.isoformat()}). Please check the date and state the right one.",
+            say(
+                "The test report is dated {dated}, after the date of this assessment "
+                "({assessed}). Please check the date and state the right one.",
+                dated=report_date.isoformat(),
+                assessed=on.isoformat(),
+            ),
         )
     elif (begin is not None and report_date < begin) or (end is not None and report_date > end):
-        window = f"{begin or 'any date'} to {end or 'any date'}"
+        any_date = say("any date")
         findings.exclude(
             clause,
             title,
-            f"Dated {report_date}; asked for: {window}.",
-            f"{_SOURCE} reports_from/to",
+            say(
+                "Dated {dated}; asked for: {begin} to {end}.",
+                dated=report_date.isoformat(),
+                begin=begin.isoformat() if begin else any_date,
+                end=end.isoformat() if end else any_date,
+            ),
+            _SOURCE,
         )
     else:
         findings.hold(clause)
@@ -136,9 +168,13 @@ def _check_sample(units: int, tender: TenderTable, findings: GateFindings) -> No
         return
     findings.ask(
         "evidence-sample",
-        "Size of the sample",
-        f"The measurements cover {units} units; the tender asks for {least} or more. Please "
-        "supply measurements of the units that are missing.",
+        say("Size of the sample"),
+        say(
+            "The measurements cover {units} units; the tender asks for {least} or more. Please "
+            "supply measurements of the units that are missing.",
+            units=units,
+            least=least,
+        ),
     )
 
 
@@ -147,32 +183,41 @@ def check_offer(lamp: Lamp, lot: TenderLot, quantity: int, findings: GateFinding
     if lamp.offer.unit_price is None:
         findings.ask(
             "offer-price",
-            "Unit price",
-            "No unit price was found in the bid. Please state where in the bid it stands.",
+            say("Unit price"),
+            say("No unit price was found in the bid. Please state where in the bid it stands."),
         )
     elif not lamp.offer.currency:
         findings.ask(
             "offer-currency",
-            "Currency of the price",
-            "The bid states a unit price without its currency. Please state the currency.",
+            say("Currency of the price"),
+            say("The bid states a unit price without its currency. Please state the currency."),
         )
     offered = lamp.offer.quantity
     if lot.quantity is not None and offered is not None and offered < quantity:
         findings.ask(
             "offer-quantity",
-            "Quantity",
-            f"The bid offers {offered} lamps; the lot asks for {quantity}. Please confirm that "
-            "the price holds for the whole quantity.",
+            say_as("lamps", "Quantity"),
+            say(
+                "The bid offers {offered} lamps; the lot asks for {quantity}. Please confirm that "
+                "the price holds for the whole quantity.",
+                offered=offered,
+                quantity=quantity,
+            ),
         )
     if lot.cap is None:
         return
     if not lamp.cap:
-        findings.ask("lot-cap", "Cap", "Please state the cap of the offered lamp.")
+        findings.ask("lot-cap", _CAP, say("Please state the cap of the offered lamp."))
     elif _same(lamp.cap) != _same(lot.cap):
-        text = f"Cap {lamp.cap}; asked for: {lot.cap}."
-        findings.exclude("lot-cap", "Cap", text, f"lot {lot.id}, cap")
+        text = say("Cap {found}; asked for: {asked}.", found=lamp.cap, asked=lot.cap)
+        findings.exclude("lot-cap", _CAP, text, say("lot {lot}, cap", lot=lot.id))
     else:
         findings.hold("lot-cap")
+
+
+def _ended(text: str) -> str:
+    """A text with a full stop at its end."""
+    return text if text.endswith(".") else joined("", (text, "."))
 
 
 def check_findings(items: Sequence[Finding], findings: GateFindings) -> None:
@@ -183,7 +228,6 @@ def check_findings(items: Sequence[Finding], findings: GateFindings) -> None:
             findings.ask(
                 f"finding-{item.check}",
                 item.title,
-                f"Numbers in the bid do not agree with one another: {item.title}. Please explain "
-                "the difference, or supply the number as it should stand.",
-                f"{item.compared.rstrip('.')}. {item.explanation}",
+                _QUESTIONED.format(title=item.title),
+                joined(" ", (_ended(item.compared), item.explanation)),
             )

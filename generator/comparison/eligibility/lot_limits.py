@@ -6,8 +6,10 @@ from decimal import Decimal
 
 from generator.comparison.eligibility.gate_findings import GateFindings
 from generator.comparison.eligibility.value_text import value_text
+from generator.language import joined, numeral, say
 from generator.quantities import quantity
-from generator.records.figure import FigureSet
+from generator.records.clause_words import compared_text, with_unit
+from generator.records.figure import GRADE_WORDS, FigureSet
 from generator.records.lamp import Lamp
 from generator.records.tender_settings import TenderLot
 
@@ -40,20 +42,29 @@ def check_lot_limits(
         value = figure.number if figure is not None else None
         span = _span(low, high, entry.unit)
         if figure is None or value is None:
-            text = f"Please state the {entry.label} of the offered lamp; the lot asks for {span}."
+            text = say(
+                "Please state the {quantity} of the offered lamp; the lot asks for {span}.",
+                quantity=entry.label,
+                span=span,
+            )
             findings.ask(clause, entry.label, text)
         elif (low is not None and value < low) or (high is not None and value > high):
-            found = value_text(value, name, low, high)
-            text = f"{entry.label}, {figure.grade}: {found}; asked for: {span}."
-            findings.exclude(clause, entry.label, text, f"lot {lot.id}")
+            text = say(
+                "{quantity}, {grade}: {found}; asked for: {asked}.",
+                quantity=entry.label,
+                grade=GRADE_WORDS[figure.grade],
+                found=value_text(value, name, low, high),
+                asked=span,
+            )
+            findings.exclude(clause, entry.label, text, say("lot {lot}", lot=lot.id))
         else:
             findings.hold(clause)
 
 
 def _span(low: Decimal | None, high: Decimal | None, unit: str) -> str:
-    parts = []
-    if low is not None:
-        parts.append(f"at least {low} {unit}")
-    if high is not None:
-        parts.append(f"at most {high} {unit}")
-    return " and ".join(parts)
+    parts = [
+        compared_text(comparison, with_unit(numeral(f"{limit}"), unit))
+        for comparison, limit in (("at least", low), ("at most", high))
+        if limit is not None
+    ]
+    return joined(say(" and "), parts)

@@ -6,12 +6,42 @@ from collections.abc import Sequence
 
 from generator.comparison.eligibility.gate_findings import GateFindings
 from generator.comparison.eligibility.value_text import value_text
+from generator.language import numeral, say
 from generator.quantities import QUANTITIES
 from generator.records.clause import BUYER
+from generator.records.clause_words import compared_text, with_unit
 from generator.records.tender_settings import TenderLot, TenderTable
-from generator.records.verdict import Basis, Verdict, VerdictWord
+from generator.records.verdict import BASIS_WORDS, Basis, Verdict, VerdictWord
 
 __all__ = ["check_clauses", "mandatory"]
+
+_OPEN = (
+    say(
+        "The {quantity} of the offered lamp lies so near the requirement ({limit}) that the "
+        "measurement leaves open whether it is met. Please supply measurements of a smaller "
+        "uncertainty or of more units. The requirement stands in {source}."
+    ),
+    say(
+        "The {quantity} of the offered lamp lies so near the requirement that the measurement "
+        "leaves open whether it is met. Please supply measurements of a smaller uncertainty or of "
+        "more units. The requirement stands in {source}."
+    ),
+)
+"""What is asked where a value is too near its limit: with the limit, and without one."""
+
+_WITHOUT_VALUE = (
+    say(
+        "The bid contains no value for the {quantity} of the offered lamp that could be held "
+        "against the requirement ({limit}). Please supply a test report that states it with its "
+        "uncertainty. The requirement stands in {source}."
+    ),
+    say(
+        "The bid contains no value for the {quantity} of the offered lamp that could be held "
+        "against the requirement. Please supply a test report that states it with its "
+        "uncertainty. The requirement stands in {source}."
+    ),
+)
+"""What is asked where there is no value: with the limit, and without one."""
 
 
 def mandatory(
@@ -60,9 +90,12 @@ def check_clauses(clauses: dict[str, list[Verdict]], findings: GateFindings) -> 
         if not verdicts:
             findings.ask(
                 clause,
-                "Clause not judged",
-                f"The requirement {clause} could not be judged from what your bid contains. "
-                "Please show how the offered lamp meets it.",
+                say("Clause not judged"),
+                say(
+                    "The requirement {clause} could not be judged from what your bid contains. "
+                    "Please show how the offered lamp meets it.",
+                    clause=clause,
+                ),
             )
             continue
         _check_clause(clause, verdicts, findings)
@@ -92,28 +125,25 @@ def _limit(item: Verdict) -> str:
     """The limit in words; empty where there is none to name."""
     if item.limit is None:
         return ""
-    return f"{item.comparison} {item.limit} {item.unit}".strip()
+    limit = item.limit if isinstance(item.limit, str) else numeral(f"{item.limit}")
+    return compared_text(item.comparison, with_unit(limit, item.unit))
 
 
 def _failure(item: Verdict) -> str:
-    found = "no value"
+    found: str = say("no value")
     if item.value is not None:
         found = value_text(item.value, item.quantity, item.limit)
-    limit = _limit(item) or "the limit"
-    return f"{_label(item)}, {item.basis}: {found}; asked for: {limit}."
+    return say(
+        "{quantity}, {basis}: {found}; asked for: {asked}.",
+        quantity=_label(item),
+        basis=BASIS_WORDS[item.basis],
+        found=found,
+        asked=_limit(item) or say("the limit"),
+    )
 
 
 def _question(item: Verdict) -> str:
-    label, limit = _label(item), _limit(item)
-    asked = f" ({limit})" if limit else ""
-    if item.verdict is VerdictWord.INCONCLUSIVE:
-        return (
-            f"The {label} of the offered lamp lies so near the requirement{asked} that the "
-            "measurement leaves open whether it is met. Please supply measurements of a smaller "
-            f"uncertainty or of more units. The requirement stands in {item.source}."
-        )
-    return (
-        f"The bid contains no value for the {label} of the offered lamp that could be held "
-        f"against the requirement{asked}. Please supply a test report that states it with its "
-        f"uncertainty. The requirement stands in {item.source}."
-    )
+    limit = _limit(item)
+    patterns = _OPEN if item.verdict is VerdictWord.INCONCLUSIVE else _WITHOUT_VALUE
+    pattern = patterns[0] if limit else patterns[1]
+    return pattern.format(quantity=_label(item), limit=limit, source=item.source)

@@ -6,6 +6,7 @@ import difflib
 from collections.abc import Iterable
 
 from generator.errors import Level, Problem
+from generator.language import say_counted
 
 __all__ = ["MOST_PROBLEMS", "ProblemList", "nearest", "shown"]
 
@@ -33,6 +34,8 @@ def shown(text: str) -> str:
 
 
 def _printable(text: str) -> str:
+    if text.isprintable():
+        return text
     return "".join(c if c.isprintable() else ascii(c)[1:-1] for c in text)
 
 
@@ -128,5 +131,8 @@ class ProblemList:
             return tuple(self._problems)
         level: Level = "error" if "error" in self._left_out else "warning"
         count = len(self._left_out)
-        rest = Problem(level, self.file, None, None, "", "", f"{count} more problems in this file.")
+        text = say_counted(
+            "{count} more problem in this file.", "{count} more problems in this file.", count
+        )
+        rest = Problem(level, self.file, None, None, "", "", text)
         return (*self._problems, rest)

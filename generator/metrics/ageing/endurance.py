@@ -7,12 +7,16 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, say, say_counted
 from generator.metrics.ageing.exponential import (
-    MINIMUM_DURATION_H,
     PROJECTION_METHOD,
     READING_WINDOW_H,
 )
-from generator.metrics.ageing.projection import MaintenanceCurve, maintenance_curve
+from generator.metrics.ageing.projection import (
+    MaintenanceCurve,
+    maintenance_curve,
+    too_short_to_project,
+)
 from generator.records.figure import SeriesFigures
 
 __all__ = ["ENDURANCE_H", "AgeingFigures", "ageing_figures", "u_v_prime_shift"]
@@ -29,12 +33,12 @@ _METHODS = {
     "l70_projected_h": PROJECTION_METHOD,
 }
 
-_FAILED = "the unit had failed"
-_NOT_LOOKED_AT = "whether the unit still worked was not looked at"
-_NO_INITIAL = "no flux at 0 h"
-_NO_FINAL = "the unit still worked, but its flux was not read"
-_NO_COLOUR = "chromaticity not read at the start and at the end"
-_NO_SURVIVOR = "no unit survived with its flux read"
+_FAILED = say("the unit had failed")
+_NOT_LOOKED_AT = say("whether the unit still worked was not looked at")
+_NO_INITIAL = say("no flux at 0 h")
+_NO_FINAL = say("the unit still worked, but its flux was not read")
+_NO_COLOUR = say("chromaticity not read at the start and at the end")
+_NO_SURVIVOR = say("no unit survived with its flux read")
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -163,10 +167,13 @@ def _unit_figures(
     alive = status == 1
     factor = np.where(alive, maintenance, np.nan)
     moved = np.where(alive, shift, np.nan)
-    why_flux = np.where(initial_lm > 0, _NO_FINAL, _NO_INITIAL)
-    lost = np.where(status == 0, _FAILED, _NOT_LOOKED_AT)
-    why_flux = np.where(alive, why_flux, lost)
-    why_colour = np.where(alive, _NO_COLOUR, lost)
+    lost = np.full(alive.shape, "", dtype=object)
+    lost[:] = _NOT_LOOKED_AT
+    lost[status == 0] = _FAILED
+    why_flux, why_colour = lost.copy(), lost
+    why_flux[alive] = _NO_INITIAL
+    why_flux[alive & (initial_lm > 0)] = _NO_FINAL
+    why_colour[alive] = _NO_COLOUR
     return SeriesFigures(
         {"lumen_maintenance_factor": factor, "chromaticity_shift": moved},
         {
@@ -174,13 +181,13 @@ def _unit_figures(
             "chromaticity_shift": _texts(moved, why_colour),
         },
         {name: _METHODS[name] for name in ("lumen_maintenance_factor", "chromaticity_shift")},
-        ((f"read at {read_at_h:g} h",),) * alive.size,
+        ((_read_at(read_at_h),),) * alive.size,
     )
 
 
-def _texts(numbers: Array, reasons: NDArray[np.str_]) -> tuple[str, ...]:
+def _texts(numbers: Array, reasons: NDArray[np.object_]) -> tuple[str, ...]:
     return tuple(
-        "" if np.isfinite(number) else str(reason)
+        "" if np.isfinite(number) else reason
         for number, reason in zip(numbers, reasons, strict=True)
     )
 
@@ -200,7 +207,14 @@ def _lamp_figures(
     unknown = int(np.sum(np.isnan(status)))
     values["survival_factor"] = np.array([np.nan if unknown else np.mean(status == 1)])
     reasons["survival_factor"] = (
-        f"{unknown} units were not looked at after {read_at_h:g} h" if unknown else "",
+        say_counted(
+            "{count} unit was not looked at after {hours:g} h",
+            "{count} units were not looked at after {hours:g} h",
+            unknown,
+            hours=read_at_h,
+        )
+        if unknown
+        else "",
     )
     values["l70_projected_h"] = np.array([curve.reported_h])
     reasons["l70_projected_h"] = (curve.reason,)
@@ -211,41 +225,69 @@ def _lamp_figures(
         values,
         reasons,
         _METHODS,
-        ((f"read at {read_at_h:g} h", *remarks),),
+        ((_read_at(read_at_h), *remarks),),
         {"l70_projected_h": np.array([half if stated else np.nan])},
     )
 
 
 def _unread(units: SeriesFigures, status: Array) -> tuple[str, ...]:
     missing = int(np.sum((status == 1) & np.isnan(units.values["lumen_maintenance_factor"])))
-    return (f"{missing} survivors are not in the mean: flux not read",) if missing else ()
+    if not missing:
+        return ()
+    return (
+        say_counted(
+            "{count} survivor is not in the mean: flux not read",
+            "{count} survivors are not in the mean: flux not read",
+            missing,
+        ),
+    )
+
+
+def _read_at(hours_h: float) -> str:
+    return say("read at {hours} h", hours=numeral(f"{hours_h:g}"))
 
 
 def _projection_remarks(curve: MaintenanceCurve) -> tuple[str, ...]:
     if curve.fit is None:
         return ()
-    span = f"fitted from {curve.fit_from_h:g} h to {curve.fit_to_h:g} h, {curve.units_count} units"
+    span = say_counted(
+        "fitted from {first:g} h to {last:g} h, {count} unit",
+        "fitted from {first:g} h to {last:g} h, {count} units",
+        curve.units_count,
+        first=curve.fit_from_h,
+        last=curve.fit_to_h,
+    )
     if curve.beyond_limit:
-        return (f"projected life greater than {curve.limit_h:g} h, the limit of projection", span)
-    latest = f"{curve.l70_high_h:.0f} h" if np.isfinite(curve.l70_high_h) else "no upper end"
-    return (f"projected life between {curve.l70_low_h:.0f} h and {latest} (95 %)", span)
+        beyond = say(
+            "projected life greater than {limit:g} h, the limit of projection", limit=curve.limit_h
+        )
+        return (beyond, span)
+    if np.isfinite(curve.l70_high_h):
+        life = say(
+            "projected life between {low:.0f} h and {high:.0f} h (95 %)",
+            low=curve.l70_low_h,
+            high=curve.l70_high_h,
+        )
+    else:
+        life = say(
+            "projected life between {low:.0f} h and no upper end (95 %)", low=curve.l70_low_h
+        )
+    return (life, span)
 
 
 def _without_factors(
     hours_h: Array, units: int, endurance_h: float, too_short: bool
 ) -> AgeingFigures:
+    last_h = float(hours_h[-1])
+    reason = say("the test has no reading at 0 h")
     if too_short:
-        reason = (
-            f"the test ends at {hours_h[-1]:g} h, before the {endurance_h:g} h it is defined at"
+        reason = say(
+            "the test ends at {last:g} h, before the {due:g} h it is defined at",
+            last=last_h,
+            due=endurance_h,
         )
-    else:
-        reason = "the test has no reading at 0 h"
     named = tuple(_METHODS)
-    projection = (
-        f"no projection from {hours_h[-1]:g} h: TM-21 asks for {MINIMUM_DURATION_H:g} h or more"
-        if too_short
-        else reason
-    )
+    projection = too_short_to_project(last_h) if too_short else reason
     lamp_reasons = dict.fromkeys(named, (reason,)) | {"l70_projected_h": (projection,)}
     per_unit = ("lumen_maintenance_factor", "chromaticity_shift")
     return AgeingFigures(

@@ -8,6 +8,7 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say, say_counted
 from generator.metrics.ageing.exponential import (
     LIFE_SHARE,
     MINIMUM_DURATION_H,
@@ -21,7 +22,7 @@ from generator.metrics.ageing.exponential import (
     projection_limit_h,
 )
 
-__all__ = ["MaintenanceCurve", "maintenance_curve"]
+__all__ = ["MaintenanceCurve", "maintenance_curve", "too_short_to_project"]
 
 Array = NDArray[np.float64]
 
@@ -94,7 +95,7 @@ def maintenance_curve(hours_h: Array, maintenance: Array) -> MaintenanceCurve:
     count = int(np.sum(whole))
     if count == 0:
         return MaintenanceCurve(
-            hours_h, np.full(hours_h.shape, np.nan), 0, "no unit read throughout"
+            hours_h, np.full(hours_h.shape, np.nan), 0, say("no unit read throughout")
         )
     mean = np.mean(maintenance[whole], axis=0)
     first, last = fit_range_h(float(hours_h[-1]))
@@ -119,13 +120,41 @@ def maintenance_curve(hours_h: Array, maintenance: Array) -> MaintenanceCurve:
     )
 
 
+def too_short_to_project(duration_h: float) -> str:
+    """Say that a test is too short to be projected.
+
+    Parameters
+    ----------
+    duration_h
+        Hour of its last reading [h].
+
+    Returns
+    -------
+    str
+        The reason. Source: ies_tm_21, clause 5.2.
+    """
+    return say(
+        "no projection from {duration:g} h: TM-21 asks for {least:g} h or more",
+        duration=duration_h,
+        least=MINIMUM_DURATION_H,
+    )
+
+
 def _obstacle(hours_h: Array, inside: NDArray[np.bool_], count: int) -> str:
     """Why the readings may not be projected; empty where they may."""
     duration = float(hours_h[-1])
     if duration < MINIMUM_DURATION_H - READING_WINDOW_H:
-        return f"no projection from {duration:g} h: TM-21 asks for {MINIMUM_DURATION_H:g} h or more"
+        return too_short_to_project(duration)
     if count < MINIMUM_UNITS:
-        return f"no projection from {count} units: TM-21 asks for {MINIMUM_UNITS} or more"
+        return say_counted(
+            "no projection from {count} unit: TM-21 asks for {least} or more",
+            "no projection from {count} units: TM-21 asks for {least} or more",
+            count,
+            least=MINIMUM_UNITS,
+        )
     if np.any(np.diff(hours_h[inside]) > READING_INTERVAL_H + 2 * READING_WINDOW_H):
-        return f"no projection: readings in the fit are more than {READING_INTERVAL_H:g} h apart"
+        return say(
+            "no projection: readings in the fit are more than {interval:g} h apart",
+            interval=READING_INTERVAL_H,
+        )
     return ""

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator, Sequence
 from dataclasses import replace
 
+from generator.language import numeral, say
 from generator.metrics.assembly.derived import derived_figures
 from generator.metrics.assembly.headline import NOT_MEASURED, headline_of
 from generator.metrics.assembly.means import mean_figures
@@ -84,7 +85,12 @@ def _settled(figures: Iterable[Figure]) -> Iterator[Figure]:
             continue
         for alike in grouped(given, lambda figure: figure.grade).values():
             rivals = tuple(
-                f"{rival.number:.5g} {QUANTITIES[rival.quantity].unit} from {rival.origin[0]}"
+                say(
+                    "{value} {unit} from {place}",
+                    value=numeral(f"{rival.number:.5g}"),
+                    unit=QUANTITIES[rival.quantity].unit,
+                    place=rival.origin[0],
+                )
                 for rival in alike[1:]
             )
             yield replace(alike[0], remarks=alike[0].remarks + rivals)

@@ -9,6 +9,7 @@ import numpy as np
 from numpy.typing import NDArray
 
 from generator.datasets.centres import Centre, CentreSystem
+from generator.language import say
 from generator.metrics.assembly.exact_numbers import exact_quotient
 from generator.metrics.assembly.stated_uncertainty import Stated, relative_expanded
 from generator.metrics.colour import nominal_centre, sdcm
@@ -28,12 +29,12 @@ _QUOTIENTS = {
     "efficacy_lm_per_w": ("luminous_flux_lm", "power_w"),
     "radiant_efficiency": ("radiant_flux_w", "power_w"),
 }
-_REPORTED_QUOTIENT = "quotient of reported figures"
+_REPORTED_QUOTIENT = say("quotient of reported figures")
 _TOTAL = "useful_flux_non_directional_eu_2019_2015"
 _CONE = "useful_flux_directional_eu_2019_2015"
-_DIRECTION_UNKNOWN = "whether the lamp is directional is not stated"
-_NO_CENTRE = "no colour temperature is declared from which to count steps"
-_FAR_CENTRE = "no nominal centre lies within 100 K of the declared colour temperature"
+_DIRECTION_UNKNOWN = say("whether the lamp is directional is not stated")
+_NO_CENTRE = say("no colour temperature is declared from which to count steps")
+_FAR_CENTRE = say("no nominal centre lies within 100 K of the declared colour temperature")
 _DIFFERENCE = 1e-6
 _CENTRE_SYSTEMS: tuple[CentreSystem, ...] = ("iec_60081", "ansi_c78_377_2017")
 
@@ -98,7 +99,7 @@ def _withheld(quantity: str, cause: Figure, reason: str = "") -> Figure:
         quantity=quantity,
         value=None,
         expanded_uncertainty=None,
-        reason=reason or f"{name}: {cause.reason}",
+        reason=reason or say("{quantity}: {reason}", quantity=name, reason=cause.reason),
         remarks=(),
     )
 
@@ -111,7 +112,9 @@ def _quotient(quantity: str, own: UnitFigures, dividend: str, divisor: str) -> F
         if part.number is None:
             return _withheld(quantity, part)
     if above.number is None or not below.number:
-        return _withheld(quantity, below, f"{catalogue_entry(divisor).label} is zero")
+        return _withheld(
+            quantity, below, say("{quantity} is zero", quantity=catalogue_entry(divisor).label)
+        )
     value = exact_quotient(above.number, below.number)
     computed = Grade.COMPUTED in (above.grade, below.grade)
     share = relative_expanded([(above, 1), (below, -1)])
@@ -212,7 +215,7 @@ def _steps_from(centre: Centre, measured: Sequence[tuple[Figure, Figure]]) -> It
             centre.method,
             expanded_uncertainty=exact(expanded[index]) if np.isfinite(expanded[index]) else None,
             origin=tuple(dict.fromkeys(x.origin + y.origin)),
-            remarks=(f"from {centre.label}",),
+            remarks=(say("from {centre}", centre=centre.label),),
         )
 
 

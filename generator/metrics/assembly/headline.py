@@ -2,6 +2,8 @@
 
 from __future__ import annotations
 
+from generator.language import say
+
 __all__ = ["DIRECTIONAL_HEADLINE", "HEADLINE", "NOT_MEASURED", "headline_of"]
 
 HEADLINE = (
@@ -29,7 +31,7 @@ HEADLINE = (
 DIRECTIONAL_HEADLINE = ("beam_angle_deg", "peak_intensity_cd")
 """The same, for directional lamps."""
 
-NOT_MEASURED = "not measured"
+NOT_MEASURED = say("not measured")
 """The reason of a figure nothing was measured for."""
 
 

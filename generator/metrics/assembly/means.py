@@ -4,15 +4,20 @@ from __future__ import annotations
 
 import re
 from collections import Counter
-from collections.abc import Iterable, Iterator, Sequence
+from collections.abc import Callable, Hashable, Iterable, Iterator, Sequence
+from itertools import chain
 
 import numpy as np
 
+from generator.language import Message, Numeral, joined, numeral, say
 from generator.metrics.assembly.exact_numbers import exact_mean
 from generator.metrics.uncertainty import mean_with_spread
 from generator.records.figure import MEAN, Figure, Grade, exact
 
 __all__ = ["mean_figures"]
+
+Shared = dict[tuple[tuple[str, ...], ...], tuple[str, ...]]
+"""Remarks of units -> remarks of their mean: most quantities of a lamp have the same."""
 
 _NUMBER = re.compile(r"\d+(?:\.\d+)?")
 
@@ -36,16 +41,16 @@ def mean_figures(figures: Iterable[Figure]) -> Iterator[Figure]:
     groups: dict[tuple[str, Grade], list[Figure]] = {}
     for figure in figures:
         groups.setdefault((figure.quantity, figure.grade), []).append(figure)
+    shared: Shared = {}
     for group in groups.values():
-        yield _mean(group)
+        yield _mean(group, shared)
 
 
-def _mean(group: Sequence[Figure]) -> Figure:
+def _mean(group: Sequence[Figure], shared: Shared) -> Figure:
     first = group[0]
     given = [figure for figure in group if figure.number is not None]
     origin = tuple(dict.fromkeys(place for figure in group for place in figure.origin))
     if not given:
-        reasons = tuple(dict.fromkeys(figure.reason for figure in group))
         return Figure(
             first.lamp_id,
             MEAN,
@@ -54,9 +59,9 @@ def _mean(group: Sequence[Figure]) -> Figure:
             first.grade,
             _methods(group),
             units_count=0,
-            reason="; ".join(reasons),
+            reason=_listed(figure.reason for figure in group),
             origin=origin,
-            remarks=_shared_remarks(group),
+            remarks=_shared_remarks(group, shared),
         )
     numbers = [figure.number for figure in given if figure.number is not None]
     mean = exact_mean(numbers)
@@ -74,7 +79,7 @@ def _mean(group: Sequence[Figure]) -> Figure:
         spread=None if spread is None else exact(spread),
         units_count=len(given),
         origin=origin,
-        remarks=(*_shared_remarks(given), *_extremes(given), *_gaps(group)),
+        remarks=(*_shared_remarks(given, shared), *_extremes(given), *_gaps(group)),
     )
 
 
@@ -89,34 +94,72 @@ def _common(given: Sequence[Figure]) -> float | None:
 
 
 def _methods(group: Sequence[Figure]) -> str:
-    return "; ".join(dict.fromkeys(figure.method for figure in group))
+    return _listed(figure.method for figure in group)
 
 
-def _shared_remarks(group: Sequence[Figure]) -> tuple[str, ...]:
+def _listed(texts: Iterable[str]) -> str:
+    """Different texts one after another; a single one as it is."""
+    found = tuple(dict.fromkeys(texts))
+    return found[0] if len(found) == 1 else joined("; ", found)
+
+
+def _shared_remarks(group: Sequence[Figure], shared: Shared) -> tuple[str, ...]:
     """Remarks of the units, those that differ only in their numbers as one."""
-    kinds: dict[str, list[str]] = {}
-    for figure in group:
-        for text in dict.fromkeys(figure.remarks):
-            kinds.setdefault(_NUMBER.sub("#", text), []).append(text)
-    total = len(group)
-    return tuple(_one_remark(texts, total) for texts in kinds.values())
+    every = tuple(figure.remarks for figure in group)
+    if every not in shared:
+        kinds: dict[Hashable, list[str]] = {}
+        for remarks in every:
+            for text in dict.fromkeys(remarks):
+                kinds.setdefault(_kind(text), []).append(text)
+        shared[every] = tuple(_one_remark(texts, len(every)) for texts in kinds.values())
+    return shared[every]
 
 
 def _one_remark(texts: Sequence[str], total: int) -> str:
-    count = "" if len(texts) == total else f" ({len(texts)} of {total} units)"
-    return f"{_with_ranges(texts)}{count}"
+    remark = _with_ranges(texts)
+    if len(texts) == total:
+        return remark
+    return say("{remark} ({count} of {total} units)", remark=remark, count=len(texts), total=total)
+
+
+def _kind(text: str) -> Hashable:
+    """What texts have in common that differ in their numbers alone."""
+    if not isinstance(text, Message):
+        return _NUMBER.sub("#", text)
+    values = text.values.items()
+    return (
+        (text.singular, text.context),
+        tuple((key, _kind(one) if isinstance(one, str) else one) for key, one in values),
+    )
 
 
 def _with_ranges(texts: Sequence[str]) -> str:
     """Texts that differ only in their numbers as one, with ranges for what varies."""
+    first = texts[0]
+    if all(text == first for text in texts):
+        return first
+    if isinstance(first, Message):
+        every = [text.values for text in texts if isinstance(text, Message)]
+        return first.format(
+            **{
+                key: _with_ranges([one[key] for one in every])
+                for key, value in first.values.items()
+                if isinstance(value, str)
+            }
+        )
+    written = numeral if isinstance(first, Numeral) else str
     numbers = zip(*(_NUMBER.findall(text) for text in texts), strict=True)
-    ranges = iter([_range(column) for column in numbers])
-    return _NUMBER.sub(lambda _: next(ranges), texts[0])
+    ranges = [_range(column, written) for column in numbers]
+    between = _NUMBER.split(first)
+    parts = [between[0], *chain.from_iterable(zip(ranges, between[1:], strict=True))]
+    return joined("", [part for part in parts if part])
 
 
-def _range(numbers: Sequence[str]) -> str:
+def _range(numbers: Sequence[str], written: Callable[[str], str]) -> str:
     least, most = min(numbers, key=float), max(numbers, key=float)
-    return least if least == most else f"{least} to {most}"
+    if least == most:
+        return written(least)
+    return say("{low} to {high}", low=written(least), high=written(most))
 
 
 def _extremes(given: Sequence[Figure]) -> tuple[str, ...]:
@@ -124,12 +167,24 @@ def _extremes(given: Sequence[Figure]) -> tuple[str, ...]:
     if given[0].quantity != "sdcm" or len(given) < 2:
         return ()
     farthest = max(given, key=lambda figure: figure.number or 0)
-    return (f"farthest unit: {farthest.unit_id} with {farthest.number:.1f} steps",)
+    return (
+        say(
+            "farthest unit: {unit} with {steps:.1f} steps",
+            unit=farthest.unit_id,
+            steps=farthest.number,
+        ),
+    )
 
 
 def _gaps(group: Sequence[Figure]) -> tuple[str, ...]:
     counts = Counter(figure.reason for figure in group if figure.number is None)
     total = len(group)
     return tuple(
-        f"not given for {count} of {total} units: {reason}" for reason, count in counts.items()
+        say(
+            "not given for {count} of {total} units: {reason}",
+            count=count,
+            total=total,
+            reason=reason,
+        )
+        for reason, count in counts.items()
     )

@@ -10,6 +10,7 @@ from typing import TypeVar
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import Message, say
 from generator.metrics.ageing import AgeingFigures, ageing_figures
 from generator.metrics.assembly.raw_uncertainty import (
     with_ageing_uncertainty,
@@ -19,9 +20,18 @@ from generator.metrics.assembly.raw_uncertainty import (
     with_spectral_uncertainty,
 )
 from generator.metrics.assembly.stated_uncertainty import Stated, uncertainty_of_spectra
-from generator.metrics.colour import spectral_figures
+from generator.metrics.colour import REFERENCE_OF_RA, spectral_figures
 from generator.metrics.electrical import mains_figures
-from generator.metrics.modulation import light_figures
+from generator.metrics.modulation import (
+    DARK_FLICKER,
+    NOISE_IN_FLICKER,
+    NOISE_IN_PST_LM,
+    NOISE_IN_SVM,
+    SHORT_FOR_PST_LM,
+    SHORT_RECORD,
+    SPARSE_RECORD,
+    light_figures,
+)
 from generator.quantities import quantity as catalogue_entry
 from generator.records.campaign import Campaign
 from generator.records.figure import MEAN, Figure, Grade, SeriesFigures, exact
@@ -34,17 +44,17 @@ Item = TypeVar("Item")
 
 _SAMPLES_AT_ONCE = 4_000_000
 _LONG_RECORD = ("pst_lm",)
-_UNEXPLAINED = "this record does not give it"
+_UNEXPLAINED = say("this record does not give it")
 _FLOOR_DECIMALS = 12
-_REMARKS_OF_GROUPS = {"reference of Ra": "rendering"}
+_REMARKS_OF_GROUPS = {remark.singular: "rendering" for remark in REFERENCE_OF_RA.values()}
 _REMARKS_OF_QUANTITIES = {
-    "noise may raise percent flicker": "percent_flicker",
-    "noise about zero light": "percent_flicker",
-    "noise adds": "svm",
-    "noise alone would give a PstLM": "pst_lm",
-    "PstLM rests on": "pst_lm",
+    NOISE_IN_FLICKER.singular: "percent_flicker",
+    DARK_FLICKER.singular: "percent_flicker",
+    NOISE_IN_SVM.singular: "svm",
+    NOISE_IN_PST_LM.singular: "pst_lm",
+    SHORT_FOR_PST_LM.singular: "pst_lm",
 }
-_NOT_OF_PST_LM = ("sampled at", "the light record is")
+_NOT_OF_PST_LM = {SPARSE_RECORD.singular, SHORT_RECORD.singular}
 _LAMP_AGEING = ("survival_factor", "l70_projected_h")
 
 
@@ -274,10 +284,9 @@ def _settled(number: float) -> Decimal:
 
 def _bears_on(remark: str, quantity: str) -> bool:
     """Whether a remark on a record is to be read with a figure; most bear on all."""
-    for start, group in _REMARKS_OF_GROUPS.items():
-        if remark.startswith(start):
-            return catalogue_entry(quantity).group == group
-    for start, only in _REMARKS_OF_QUANTITIES.items():
-        if remark.startswith(start):
-            return quantity == only
-    return quantity not in _LONG_RECORD or not remark.startswith(_NOT_OF_PST_LM)
+    key = remark.singular if isinstance(remark, Message) else ""
+    if key in _REMARKS_OF_GROUPS:
+        return catalogue_entry(quantity).group == _REMARKS_OF_GROUPS[key]
+    if key in _REMARKS_OF_QUANTITIES:
+        return quantity == _REMARKS_OF_QUANTITIES[key]
+    return quantity not in _LONG_RECORD or key not in _NOT_OF_PST_LM

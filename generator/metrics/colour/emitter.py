@@ -7,6 +7,7 @@ from dataclasses import dataclass, replace
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say
 from generator.metrics.colour.sampling import (
     Sampling,
     normalised,
@@ -30,6 +31,13 @@ _LEAST_DEPTH = 0.75
 _FLANK_REST = 0.1
 _EMITTER_HALF_WIDTH_NM = (5.0, 22.5)
 _PHOSPHOR_WIDTH_NM = 60
+
+
+_NO_PEAK = say("no peak between 400 nm and 490 nm")
+_NO_VALLEY = say("no clear valley between emitter and phosphor")
+_NO_LED = say("the peak between 400 nm and 490 nm has not the width of an LED")
+_NO_PHOSPHOR = say("more than one narrow band: no phosphor can be told apart")
+_UNUSABLE = say("the spectrum cannot be used")
 
 
 @dataclass(frozen=True, slots=True, eq=False)
@@ -137,13 +145,13 @@ def split_of_grid(how: Sampling, spectra: Array, usable: NDArray[np.bool_]) -> E
     """
     grid, fine = _fine_band(how, spectra)
     if grid.size < 2 or grid[0] > _EMITTER_NM[0] - 5 or grid[-1] < _PHOSPHOR_TO_NM - 20:
-        return _undefined(grid, fine, "the spectrum does not cover the visible range")
+        return _undefined(grid, fine, say("the spectrum does not cover the visible range"))
     top, valley = _peak_and_valley(grid, fine)
     peak_nm = grid[top] + _vertex(fine, top)
     emitter = _mirrored(grid, fine, peak_nm, top)
     rest = fine - emitter
     reason = _reasons(grid, fine, rest, top, valley)
-    reason = np.where(usable, reason, "the spectrum cannot be used")
+    reason[~usable] = _UNUSABLE
     defined = reason == ""
     missing = np.where(defined, 1.0, np.nan)
     total = fine.sum(axis=1)
@@ -217,7 +225,7 @@ def _mirrored(grid: Array, spectra: Array, peak_nm: Array, top: Index) -> Array:
 
 def _reasons(
     grid: Array, spectra: Array, rest: Array, top: Index, valley: Index
-) -> NDArray[np.str_]:
+) -> NDArray[np.object_]:
     """Why the split is not defined, per spectrum; empty text where it is."""
     row = np.arange(len(spectra))
     height = spectra[row, top]
@@ -231,21 +239,18 @@ def _reasons(
     rest_width = (rest >= 0.5 * rest_height[:, None]).sum(axis=1)
     at_edge = (grid[top] <= _EMITTER_NM[0]) | (grid[top] >= _EMITTER_NM[1])
     narrow, wide = _EMITTER_HALF_WIDTH_NM
-    return np.select(
-        [
-            at_edge | (height < _LEAST_PEAK),
-            low > _LEAST_DEPTH * np.minimum(height, phosphor),
+    reason = np.full(len(spectra), "", dtype=object)
+    for holds, text in (
+        (rest_width < _PHOSPHOR_WIDTH_NM, _NO_PHOSPHOR),
+        (
             (half_width < narrow) | (half_width > wide) | (spectra[:, 0] > _FLANK_REST * height),
-            rest_width < _PHOSPHOR_WIDTH_NM,
-        ],
-        [
-            "no peak between 400 nm and 490 nm",
-            "no clear valley between emitter and phosphor",
-            "the peak between 400 nm and 490 nm has not the width of an LED",
-            "more than one narrow band: no phosphor can be told apart",
-        ],
-        "",
-    )
+            _NO_LED,
+        ),
+        (low > _LEAST_DEPTH * np.minimum(height, phosphor), _NO_VALLEY),
+        (at_edge | (height < _LEAST_PEAK), _NO_PEAK),
+    ):
+        reason[holds] = text
+    return reason
 
 
 def _undefined(grid: Array, spectra: Array, reason: str) -> EmitterSplit:

@@ -3,11 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Callable
+from functools import lru_cache
 from itertools import chain
 
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, say
 from generator.metrics.colour.chromaticity import (
     chromaticity_uv_1960,
     chromaticity_uv_prime,
@@ -44,13 +46,14 @@ from generator.metrics.colour.weighting import (
 )
 from generator.records.figure import SeriesFigures
 
-__all__ = ["METHODS", "spectral_figures"]
+__all__ = ["METHODS", "REFERENCE_OF_RA", "spectral_figures"]
 
 Array = NDArray[np.float64]
 Mask = NDArray[np.bool_]
 Texts = NDArray[np.object_]
 
 _CHUNK = 256
+_MESSAGES_KEPT = 1024  # the draws of one lamp say the same thing many times
 _LEAST_RANGE_NM = (400, 700)
 _LARGEST_STEP_NM = {"chromaticity": 20.0, "rendering": 10.0, "fidelity": 5.0}
 _LARGEST_DUV = 0.05
@@ -60,6 +63,22 @@ _REFERENCE_DISTANCE = 0.0054
 _LEAST_DOMINANT_PURITY = 0.002
 _NEGATIVE_SHARE = 0.001
 _MOST_NEGATIVE_SHARE = 0.25
+
+_NO_SPECTRUM = say("the spectrum has values that are not finite, or no positive sum")
+_NOISE = say("values down to {share} % of the peak: this is noise, no spectrum")
+_NEGATIVE = say("negative values down to {share} % of the peak were kept")
+_TOO_LARGE = say("the flux is too large for a number")
+_MONOCHROMATIC = say("nearly monochromatic: excitation purity {purity:.2f}")
+_OUTSIDE = say(
+    "colour temperature outside {low:.0f} K to {high:.0f} K",
+    low=CCT_RANGE_K[0],
+    high=CCT_RANGE_K[1],
+)
+_TOO_FAR = say("too far from the Planckian locus: Duv {duv}, limit {limit}")
+_FAR_REFERENCE = say(
+    "chromaticity {apart} in u, v from that reference, more than {limit}: Ra and R1 to R15 are of "
+    "limited meaning"
+)
 
 _CHROMATICITY = ("x", "y", "u_prime", "v_prime")
 _DOMINANT = ("dominant_wavelength_nm", "excitation_purity")
@@ -99,6 +118,13 @@ METHODS: dict[str, str] = {
     **dict.fromkeys(_EMITTER, "emitter_mirror_lampassay_1"),
 }
 """Method id of every quantity given here."""
+
+
+REFERENCE_OF_RA = {
+    "Planckian": say("reference of Ra: Planckian {cct} K"),
+    "daylight": say("reference of Ra: daylight {cct} K"),
+}
+"""Kind of the reference illuminant -> what is said of it; bears on colour rendering alone."""
 
 
 class _Batch:
@@ -182,11 +208,11 @@ def _figures(wavelength: Array, values: Array, how: Sampling, absolute: bool) ->
     on_grid = on_whole_nanometres(wavelength, spectra, how)
     sums = spectral_sums(on_grid, how.start_nm, how.stop_nm, how.step_nm)
     reason = batch.no_reason()
-    _because(reason, ~usable, "the spectrum has values that are not finite, or no positive sum")
+    _because(reason, ~usable, _NO_SPECTRUM)
     _because(
         reason,
         lowest < -_MOST_NEGATIVE_SHARE,
-        lambda i: f"values down to {100 * lowest[i]:.0f} % of the peak: this is noise, no spectrum",
+        lambda i: _NOISE.format(share=numeral(f"{100 * lowest[i]:.0f}")),
     )
     batch.give(("peak_wavelength_nm",), wavelength[spectra.argmax(axis=1)][None], reason)
     visible = reason.copy()
@@ -220,10 +246,10 @@ def _power(
         radiant = peak * sums.total
         luminous = LUMINOUS_EFFICACY_LM_PER_W * peak * sums.tristimulus[:, 1]
     if not absolute:
-        _because(flux, np.full(batch.count, True), "the spectrum is relative")
+        _because(flux, np.full(batch.count, True), say("the spectrum is relative"))
     huge = ~(np.isfinite(luminous) & np.isfinite(radiant))
     for which in (flux, light):
-        _because(which, huge, "the flux is too large for a number")
+        _because(which, huge, _TOO_LARGE)
     batch.give(("radiant_flux_w",), radiant[None], flux)
     if absolute:
         batch.give(("luminous_flux_lm",), luminous[None], light)
@@ -233,14 +259,20 @@ def _range_reasons(reason: Texts, sums: SpectralSums, how: Sampling) -> None:
     everywhere = np.full(len(reason), True)
     low, high = _LEAST_RANGE_NM
     if how.start_nm > low or how.stop_nm < high:
-        text = (
-            f"the spectrum covers {how.start_nm} nm to {how.stop_nm} nm, not {low} nm to {high} nm"
+        text = say(
+            "the spectrum covers {first} nm to {last} nm, not {low} nm to {high} nm",
+            first=how.start_nm,
+            last=how.stop_nm,
+            low=low,
+            high=high,
         )
         _because(reason, everywhere, text)
     if how.largest_step_nm > _LARGEST_STEP_NM["chromaticity"] + 1e-6:
-        _because(reason, everywhere, f"the data are {how.largest_step_nm:.0f} nm apart")
+        _because(
+            reason, everywhere, say("the data are {step:.0f} nm apart", step=how.largest_step_nm)
+        )
     dark = (sums.tristimulus.min(axis=1) < 0) | (sums.tristimulus[:, 1] <= 0) | (sums.in_band <= 0)
-    _because(reason, dark, "no light in the visible range")
+    _because(reason, dark, say("no light in the visible range"))
 
 
 def _ratios(batch: _Batch, sums: SpectralSums, reason: Texts) -> None:
@@ -257,7 +289,7 @@ def _ratios(batch: _Batch, sums: SpectralSums, reason: Texts) -> None:
         )
     batch.give(_RATIOS[:4], ratios[:4], reason)
     threshold = reason.copy()
-    _because(threshold, ~(kb_v > 0), "no blue light")
+    _because(threshold, ~(kb_v > 0), say("no blue light"))
     batch.give(_RATIOS[4:], ratios[4:], threshold)
 
 
@@ -271,40 +303,33 @@ def _colour(batch: _Batch, sums: SpectralSums, reason: Texts, how: Sampling) -> 
     dominant, purity = dominant_wavelength(x, y)
     batch.give(_DOMINANT[1:], purity[None], reason)
     hue = reason.copy()
-    _because(hue, purity < _LEAST_DOMINANT_PURITY, "the light is achromatic")
+    _because(hue, purity < _LEAST_DOMINANT_PURITY, say("the light is achromatic"))
     batch.give(_DOMINANT[:1], dominant[None], hue)
     u, v = chromaticity_uv_1960(x, y)
     cct, duv = correlated_colour_temperature(u, v)
-    white = _white_reasons(reason, cct, duv, purity)
-    batch.give(("duv",), duv[None], np.where(np.isnan(duv) | _coloured(white), white, reason))
+    white, coloured = _white_reasons(reason, cct, duv, purity)
+    batch.give(("duv",), duv[None], np.where(np.isnan(duv) | coloured, white, reason))
     batch.give(("cct_k",), cct[None], white)
     _rendering(batch, sums, u, v, cct, white, how)
 
 
-def _coloured(white: Texts) -> Mask:
-    return np.array([text.startswith("nearly monochromatic") for text in white], dtype=np.bool_)
-
-
-def _white_reasons(reason: Texts, cct: Array, duv: Array, purity: Array) -> Texts:
-    """Why a light has no colour temperature."""
+def _white_reasons(reason: Texts, cct: Array, duv: Array, purity: Array) -> tuple[Texts, Mask]:
+    """Why a light has no colour temperature, and whether it is nearly monochromatic."""
     white = reason.copy()
+    single = np.zeros(len(white), dtype=np.bool_)
     pure = np.flatnonzero((purity > _LARGEST_PURITY) & (reason == ""))
     if pure.size:
         radiator = planckian_locus_xy(np.where(np.isnan(cct[pure]), CCT_RANGE_K[0], cct[pure]))
         _, beside = dominant_wavelength(radiator[:, 0], radiator[:, 1])
-        single = np.zeros(len(white), dtype=np.bool_)
         single[pure] = (purity[pure] > beside + _PURITY_BEYOND_PLANCKIAN) | np.isnan(cct[pure])
-        _because(
-            white, single, lambda i: f"nearly monochromatic: excitation purity {purity[i]:.2f}"
-        )
-    low, high = CCT_RANGE_K
-    _because(white, np.isnan(cct), f"colour temperature outside {low:.0f} K to {high:.0f} K")
+        _because(white, single, lambda i: _MONOCHROMATIC.format(purity=float(purity[i])))
+    _because(white, np.isnan(cct), _OUTSIDE)
     _because(
         white,
         np.abs(duv) > _LARGEST_DUV,
-        lambda i: f"too far from the Planckian locus: Duv {duv[i]:+.3f}, limit {_LARGEST_DUV}",
+        lambda i: _TOO_FAR.format(duv=numeral(f"{duv[i]:+.3f}"), limit=_LARGEST_DUV),
     )
-    return white
+    return white, single
 
 
 def _rendering(
@@ -315,7 +340,11 @@ def _rendering(
     for kind, reason in (("rendering", rendering), ("fidelity", fidelity)):
         if how.largest_step_nm > _LARGEST_STEP_NM[kind] + 1e-6:
             limit = _LARGEST_STEP_NM[kind]
-            text = f"the data are {how.largest_step_nm:g} nm apart, more than {limit:g} nm"
+            text = say(
+                "the data are {step:g} nm apart, more than {limit:g} nm",
+                step=how.largest_step_nm,
+                limit=limit,
+            )
             _because(reason, everywhere, text)
     rows = np.flatnonzero(white == "")
     indices = np.full((len(_RENDERING), batch.count), np.nan)
@@ -338,7 +367,7 @@ def _rendering(
     for name, empty in zip(_FIDELITY, unfilled, strict=True) if unfilled.any() else ():
         if empty.any():
             missing = fidelity.copy()
-            _because(missing, empty, "no sample of the reference falls into a hue bin")
+            _because(missing, empty, say("no sample of the reference falls into a hue bin"))
             batch.reasons[name] = missing
 
 
@@ -363,33 +392,52 @@ def _reference_remarks(
         if rendering[series]:
             continue
         kind = "Planckian" if cct[series] < 5000.0 else "daylight"
-        batch.remarks[series].append(f"reference of Ra: {kind} {cct[series]:.0f} K")
+        batch.remarks[series].append(_reference(kind, f"{cct[series]:.0f}"))
         if apart > _REFERENCE_DISTANCE:
             batch.remarks[series].append(
-                f"chromaticity {apart:.4f} in u, v from that reference, more than "
-                f"{_REFERENCE_DISTANCE}: Ra and R1 to R15 are of limited meaning"
+                _FAR_REFERENCE.format(apart=numeral(f"{apart:.4f}"), limit=_REFERENCE_DISTANCE)
             )
+
+
+@lru_cache(maxsize=_MESSAGES_KEPT)
+def _reference(kind: str, cct: str) -> str:
+    return REFERENCE_OF_RA[kind].format(cct=numeral(cct))
+
+
+@lru_cache(maxsize=_MESSAGES_KEPT)
+def _negative(share: str) -> str:
+    return _NEGATIVE.format(share=numeral(share))
 
 
 def _record_remarks(batch: _Batch, how: Sampling, lowest: Array, usable: Mask) -> None:
     """What to know about the record itself."""
     first, last = BAND_NM
-    span = f"{how.start_nm} nm to {how.stop_nm} nm"
+    span = {"first": numeral(f"{how.start_nm}"), "last": numeral(f"{how.stop_nm}")}
     texts = [how.remark] if how.remark else []
     if how.start_nm > first or how.stop_nm < last:
         texts.append(
-            f"spectrum covers {span} only; what lies outside counts as dark, which bears on "
-            "LER, S/P, melanopic DER and K_B,v most"
+            say(
+                "spectrum covers {first} nm to {last} nm only; what lies outside counts as dark, "
+                "which bears on LER, S/P, melanopic DER and K_B,v most",
+                **span,
+            )
         )
     if how.start_nm < first or how.stop_nm > last:
-        texts.append(f"radiant flux and centroid are taken over {span}")
+        texts.append(
+            say("radiant flux and centroid are taken over {first} nm to {last} nm", **span)
+        )
     if 5.0 < how.largest_step_nm <= _LARGEST_STEP_NM["rendering"] + 1e-6:
-        texts.append(f"data {how.largest_step_nm:g} nm apart: Ra holds for smooth spectra only")
+        texts.append(
+            say(
+                "data {step} nm apart: Ra holds for smooth spectra only",
+                step=numeral(f"{how.largest_step_nm:g}"),
+            )
+        )
     for text in texts:
         batch.remark(usable, text)
     batch.remark(
         lowest < -_NEGATIVE_SHARE,
-        lambda i: f"negative values down to {100 * lowest[i]:.1f} % of the peak were kept",
+        lambda i: _negative(f"{100 * lowest[i]:.1f}"),
     )
 
 

@@ -9,6 +9,8 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say
+
 __all__ = ["Sampling", "normalised", "on_whole_nanometres", "sampling", "sprague_matrix"]
 
 Array = NDArray[np.float64]
@@ -18,9 +20,11 @@ _TOLERANCE_NM = 1e-3
 
 _REMARKS: dict[Kind, str] = {
     "native": "",
-    "averaged": "spectrum averaged to 1 nm before summing",
-    "sprague": "spectrum interpolated to 1 nm (Sprague) before summing",
-    "cubic": "spectrum on uneven wavelengths, interpolated to 1 nm (cubic spline) before summing",
+    "averaged": say("spectrum averaged to 1 nm before summing"),
+    "sprague": say("spectrum interpolated to 1 nm (Sprague) before summing"),
+    "cubic": say(
+        "spectrum on uneven wavelengths, interpolated to 1 nm (cubic spline) before summing"
+    ),
 }
 
 _SPRAGUE_ENDS = (

@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, say
 from generator.metrics.distribution.angles import (
     BEAM_ANGLE_METHOD,
     beam_angle_deg,
@@ -52,11 +53,11 @@ _METHODS = {
     "peak_intensity_cd": "largest_intensity_of_the_table",
 }
 
-_NOT_FINITE = "the intensity table holds values that are not numbers"
-_DARK = "the intensity table holds no light"
-_NO_AXIS = "the angles do not start on the optical axis (gamma = 0)"
-_GAP = "the C-planes leave part of the turn around the axis open"
-_NO_BOUND = "the intensity does not fall to half of the centre-beam intensity in every plane"
+_NOT_FINITE = say("the intensity table holds values that are not numbers")
+_DARK = say("the intensity table holds no light")
+_NO_AXIS = say("the angles do not start on the optical axis (gamma = 0)")
+_GAP = say("the C-planes leave part of the turn around the axis open")
+_NO_BOUND = say("the intensity does not fall to half of the centre-beam intensity in every plane")
 
 
 def intensity_figures(c_deg: Array, gamma_deg: Array, intensity_cd: Array) -> SeriesFigures:
@@ -105,7 +106,7 @@ def intensity_figures(c_deg: Array, gamma_deg: Array, intensity_cd: Array) -> Se
             remarks[index] = note
     return SeriesFigures(
         values,
-        {name: tuple(str(text) for text in texts) for name, texts in reasons.items()},
+        {name: tuple(texts.tolist()) for name, texts in reasons.items()},
         _METHODS,
         tuple(remarks),
     )
@@ -174,7 +175,9 @@ def _solid_angle_figures(
     halves = half_intensity_angle_deg(fine_deg, fine_cd, centre)
     found["beam_angle_deg"] = beam_angle_deg(turn_deg, halves[:, planes])
     notes = _end_of_table(gamma_deg, intensity_cd, found)
-    ended = f"the angles end at gamma = {gamma_deg[-1]:g}° with light still there"
+    ended = say(
+        "the angles end at gamma = {last:g}° with light still there", last=float(gamma_deg[-1])
+    )
     why = {name: [ended if bad else "" for bad in np.isnan(found[name])] for name in names}
     why["beam_angle_deg"] = [_NO_BOUND if bad else "" for bad in np.isnan(found["beam_angle_deg"])]
     return found, why, notes
@@ -205,5 +208,8 @@ def _end_of_table(
     bright = np.max(intensity_cd[:, :, -1], axis=1) > DARK_SHARE * peak_intensity_cd(intensity_cd)
     found["luminous_flux_lm"][bright] = np.nan
     found["flux_120deg_fraction"][bright] = np.nan
-    note = f"the angles end at gamma = {last:g}°, where the light has ended; none is taken beyond"
+    note = say(
+        "the angles end at gamma = {last}°, where the light has ended; none is taken beyond",
+        last=numeral(f"{last:g}"),
+    )
     return [() if lit else (note,) for lit in bright]

@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, say
 from generator.metrics.electrical.current_conduction import (
     CurrentConduction,
     current_conduction,
@@ -59,13 +60,19 @@ METHODS = {
 }
 """Quantity name -> method id."""
 
-_NO_MAINS = "no mains voltage of two whole cycles between 40 Hz and 70 Hz was found"
-_GAPS = "the mains capture has gaps, or values too large for a number"
-_SLOW = "sampled too slowly: the order lies above half the sampling rate"
-_REVERSED = "the current clamp appears reversed: the active power is negative"
-_NEAR_REACTIVE = "the active power is negative, yet too small to tell from purely reactive power"
-_AGAINST = "the current does not flow with the voltage"
-_NO_CURRENT = f"the current fundamental is below {1000 * LEAST_CURRENT_A:g} mA"
+_NO_MAINS = say("no mains voltage of two whole cycles between 40 Hz and 70 Hz was found")
+_GAPS = say("the mains capture has gaps, or values too large for a number")
+_SLOW = say("sampled too slowly: the order lies above half the sampling rate")
+_REVERSED = say("the current clamp appears reversed: the active power is negative")
+_NEAR_REACTIVE = say(
+    "the active power is negative, yet too small to tell from purely reactive power"
+)
+_AGAINST = say("the current does not flow with the voltage")
+_NO_CURRENT = say(
+    "the current fundamental is below {least} mA", least=numeral(f"{1000 * LEAST_CURRENT_A:g}")
+)
+_DIRECT = say("direct current: {share} % of the fundamental")
+_EVEN = say("even harmonics: order {order} reaches {share} % of the fundamental")
 
 
 def mains_figures(voltage_v: Array, current_a: Array, sampling_rate_hz: float) -> SeriesFigures:
@@ -178,15 +185,17 @@ def _remarks(found: MainsQuantities, usable: Flags) -> tuple[tuple[str, ...], ..
     backwards = _reversed(found)
     remarks = []
     for series in range(usable.size):
-        texts = []
+        texts: list[str] = []
         if busy[series] and found.power_w[series] < 0:
             texts.append(_REVERSED if backwards[series] else _NEAR_REACTIVE)
         if direct[series] >= _DIRECT_PERCENT:
-            texts.append(f"direct current: {direct[series]:.1f} % of the fundamental")
+            texts.append(_DIRECT.format(share=numeral(f"{direct[series]:.1f}")))
         if even_share[series] >= _EVEN_PERCENT:
             texts.append(
-                f"even harmonics: order {2 * largest[series] + 2} reaches "
-                f"{even_share[series]:.1f} % of the fundamental"
+                _EVEN.format(
+                    order=numeral(f"{2 * largest[series] + 2}"),
+                    share=numeral(f"{even_share[series]:.1f}"),
+                )
             )
         if usable[series] and not busy[series]:
             texts.append(_NO_CURRENT)

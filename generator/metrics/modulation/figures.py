@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, say
 from generator.metrics.modulation.amplitude_modulation import (
     CUT_OFFS_HZ,
     percent_amplitude_modulation,
@@ -43,9 +44,10 @@ METHODS = {
 _SHORTEST_RECORD_S = 0.2
 _LOWEST_RATE_HZ = 2000.0  # that of PstLM; below, ripple and its harmonics fold together
 _RATE_MARGIN = 0.9999  # a rate taken from a rounded time column may miss by this much
-_SPARSE = f"sampled below {2 * HIGHEST_FREQUENCY_HZ:g} Hz"
-_NO_FREQUENCY = "no modulation stands clear of the noise"
-_TOO_DARK = "percent flicker above 100 %: the dark signal is over-subtracted"
+_SPARSE = say("sampled below {rate} Hz", rate=numeral(f"{2 * HIGHEST_FREQUENCY_HZ:g}"))
+_NO_FREQUENCY = say("no modulation stands clear of the noise")
+_TOO_DARK = say("percent flicker above 100 %: the dark signal is over-subtracted")
+_SHORT = say("the light record is {duration} s long, shorter than {least} s")
 _LEAST_MEAN = 1e-6  # of the largest excursion: below, the mean is what rounding left of it
 _LARGEST_EXPONENT = 1000  # of the power of two that brings a record near one
 
@@ -121,17 +123,25 @@ def _unusable(values: Array, sampling_rate_hz: float) -> tuple[str, ...]:
     lit = relative.sum(axis=1) > _LEAST_MEAN * values.shape[1]
     return withheld(
         np.zeros(values.shape[0]),
-        (~finite, "the light record has gaps"),
+        (~finite, say("the light record has gaps")),
         (
             np.full(finite.shape, duration < _SHORTEST_RECORD_S * 0.99),
-            f"the light record is {duration:.3g} s long, shorter than {_SHORTEST_RECORD_S:g} s",
+            _too_short(duration, _SHORTEST_RECORD_S),
         ),
         (
             np.full(finite.shape, sampling_rate_hz < _LOWEST_RATE_HZ * _RATE_MARGIN),
-            f"sampled at {sampling_rate_hz:g} Hz, below {_LOWEST_RATE_HZ:g} Hz",
+            say(
+                "sampled at {rate} Hz, below {least} Hz",
+                rate=numeral(f"{sampling_rate_hz:g}"),
+                least=numeral(f"{_LOWEST_RATE_HZ:g}"),
+            ),
         ),
-        (~lit, "no light in the record: its mean is not above zero"),
+        (~lit, say("no light in the record: its mean is not above zero")),
     )[1]
+
+
+def _too_short(duration_s: float, least_s: float) -> str:
+    return _SHORT.format(duration=numeral(f"{duration_s:.3g}"), least=numeral(f"{least_s:g}"))
 
 
 def _near_one(values: Array) -> Array:
@@ -158,7 +168,7 @@ def _frequency_figures(lines: LightLines) -> Given:
         "low_risk_modulation_percent": withheld(
             line,
             (silent, _NO_FREQUENCY),
-            (np.isnan(line), "the low-risk line ends below this frequency"),
+            (np.isnan(line), say("the low-risk line ends below this frequency")),
         ),
     }
 
@@ -176,7 +186,7 @@ def _pst_lm_figure(
     duration = values.shape[1] / sampling_rate_hz
     if enough_for_pst_lm(duration, sampling_rate_hz):
         return withheld(pst_lm(values, sampling_rate_hz), (too_dark, _TOO_DARK))
-    reason = f"the light record is {duration:.3g} s long, shorter than {SHORTEST_RECORD_S:g} s"
+    reason = _too_short(duration, SHORTEST_RECORD_S)
     return withheld(np.full(values.shape[0], np.nan), (True, reason))
 
 
@@ -187,7 +197,10 @@ def _amplitude_modulation_figures(
     return {
         f"pam_{hz}hz_percent": withheld(
             column,
-            (2 * hz >= sampling_rate_hz, f"sampled below {2 * hz} Hz, twice the cut-off"),
+            (
+                2 * hz >= sampling_rate_hz,
+                say("sampled below {rate} Hz, twice the cut-off", rate=2 * hz),
+            ),
             (too_dark | np.isnan(column), _TOO_DARK),
         )
         for hz, column in zip(CUT_OFFS_HZ, table.T, strict=True)

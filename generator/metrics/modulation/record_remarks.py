@@ -2,9 +2,12 @@
 
 from __future__ import annotations
 
+from collections.abc import Callable
+
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, say
 from generator.metrics.modulation.light_lines import LightLines
 from generator.metrics.modulation.period import fundamental_frequency, strongest_frequency
 from generator.metrics.modulation.short_term_flicker import (
@@ -14,10 +17,39 @@ from generator.metrics.modulation.short_term_flicker import (
 )
 from generator.metrics.modulation.stroboscopic import svm
 
-__all__ = ["clipped", "highest_percent_flicker", "light_remarks", "noise_reach_percent"]
+__all__ = [
+    "DARK_FLICKER",
+    "NOISE_IN_FLICKER",
+    "NOISE_IN_PST_LM",
+    "NOISE_IN_SVM",
+    "SHORT_FOR_PST_LM",
+    "SHORT_RECORD",
+    "SPARSE_RECORD",
+    "clipped",
+    "highest_percent_flicker",
+    "light_remarks",
+    "noise_reach_percent",
+]
 
 Array = NDArray[np.float64]
 Flags = NDArray[np.bool_]
+Rule = tuple[Flags, str | Callable[[int], str]]
+
+DARK_FLICKER = say("noise about zero light: percent flicker is given as 100 %")
+NOISE_IN_FLICKER = say("noise may raise percent flicker by up to {points} points")
+NOISE_IN_SVM = say("noise adds {svm} to the stroboscopic visibility measure")
+NOISE_IN_PST_LM = say("noise alone would give a PstLM of about {pst}")
+SHORT_FOR_PST_LM = say("PstLM rests on {duration} s; 60 s or more is recommended")
+SPARSE_RECORD = say("sampled at {rate} Hz; 20 kHz or more is usual")
+SHORT_RECORD = say("the light record is {duration} s long; 1 s or more is usual")
+"""What is said of a record and bears on some of its figures alone."""
+
+_CLIPPED = say("the light record looks clipped: its top is flat")
+_TOO_DARK = say("the light goes below zero: the dark signal is over-subtracted")
+_NO_PERIOD = say("components that share no period; the strongest is at {frequency} Hz")
+_REPEATS = say(
+    "the waveform repeats at {frequency} Hz; its strongest component is at {strongest} Hz"
+)
 
 _USUAL_RATE_HZ = 20000.0  # ca_ja10, JA10.5: interval of 50 us or less
 _USUAL_RECORD_S = 1.0  # ca_ja10, JA10.5
@@ -145,32 +177,15 @@ def light_remarks(
     tuple
         One tuple of remarks per series.
     """
-    duration = values.shape[1] / sampling_rate_hz
     found = [
         *_noise_remarks(values, sampling_rate_hz, lines, percent),
         *_line_remarks(lines),
-        (clipped(values), "the light record looks clipped: its top is flat"),
-        *(
-            (np.full(percent.shape, condition), text)
-            for condition, text in (
-                (
-                    sampling_rate_hz < _USUAL_RATE_HZ * 0.999,
-                    f"sampled at {sampling_rate_hz:g} Hz; 20 kHz or more is usual",
-                ),
-                (
-                    duration < _USUAL_RECORD_S * 0.99,
-                    f"the light record is {duration:.3g} s long; 1 s or more is usual",
-                ),
-                (
-                    SHORTEST_RECORD_S * 0.999 <= duration < _RECOMMENDED_PST_RECORD_S * 0.999,
-                    f"PstLM rests on {duration:.3g} s; 60 s or more is recommended",
-                ),
-            )
-        ),
+        (clipped(values), _CLIPPED),
+        *_size_remarks(values, sampling_rate_hz),
     ]
     return tuple(
         tuple(
-            text if isinstance(text, str) else text[series]
+            text if isinstance(text, str) else text(series)
             for flags, text in found
             if usable[series] and flags[series]
         )
@@ -178,33 +193,45 @@ def light_remarks(
     )
 
 
+def _size_remarks(values: Array, sampling_rate_hz: float) -> list[Rule]:
+    """What length and sampling rate of the records say."""
+    duration = values.shape[1] / sampling_rate_hz
+    known = numeral(f"{duration:.3g}")
+    rules = (
+        (
+            sampling_rate_hz < _USUAL_RATE_HZ * 0.999,
+            SPARSE_RECORD.format(rate=numeral(f"{sampling_rate_hz:g}")),
+        ),
+        (duration < _USUAL_RECORD_S * 0.99, SHORT_RECORD.format(duration=known)),
+        (
+            SHORTEST_RECORD_S * 0.999 <= duration < _RECOMMENDED_PST_RECORD_S * 0.999,
+            SHORT_FOR_PST_LM.format(duration=known),
+        ),
+    )
+    return [(np.full(values.shape[0], holds), text) for holds, text in rules]
+
+
 def _noise_remarks(
     values: Array, sampling_rate_hz: float, lines: LightLines, percent: Array
-) -> list[tuple[Flags, list[str]]]:
+) -> list[Rule]:
     reach = noise_reach_percent(values, lines)
     dark = percent > highest_percent_flicker(values, lines)
     noise_svm = svm(lines) - svm(lines, material_only=True)
     noise_pst = _noise_pst(values, sampling_rate_hz, lines)
     return [
-        (
-            dark,
-            ["the light goes below zero: the dark signal is over-subtracted"] * percent.size,
-        ),
-        (
-            (percent > 100) & ~dark,
-            ["noise about zero light: percent flicker is given as 100 %"] * percent.size,
-        ),
+        (dark, _TOO_DARK),
+        ((percent > 100) & ~dark, DARK_FLICKER),
         (
             (reach > _FLICKER_NOISE_PERCENT) & (reach > _FLICKER_NOISE_SHARE * percent),
-            [f"noise may raise percent flicker by up to {r:.1f} points" for r in reach],
+            lambda i: NOISE_IN_FLICKER.format(points=numeral(f"{reach[i]:.1f}")),
         ),
         (
             noise_svm > _SVM_NOISE,
-            [f"noise adds {r:.2f} to the stroboscopic visibility measure" for r in noise_svm],
+            lambda i: NOISE_IN_SVM.format(svm=numeral(f"{noise_svm[i]:.2f}")),
         ),
         (
             noise_pst > _PST_NOISE,
-            [f"noise alone would give a PstLM of about {r:.2f}" for r in noise_pst],
+            lambda i: NOISE_IN_PST_LM.format(pst=numeral(f"{noise_pst[i]:.2f}")),
         ),
     ]
 
@@ -217,19 +244,15 @@ def _noise_pst(values: Array, sampling_rate_hz: float, lines: LightLines) -> Arr
     return noise_pst_lm(density, sampling_rate_hz)
 
 
-def _line_remarks(lines: LightLines) -> list[tuple[Flags, list[str]]]:
+def _line_remarks(lines: LightLines) -> list[Rule]:
     frequency, fits = fundamental_frequency(lines)
     strongest = strongest_frequency(lines)
     return [
-        (
-            ~fits,
-            [f"components that share no period; the strongest is at {f:.1f} Hz" for f in strongest],
-        ),
+        (~fits, lambda i: _NO_PERIOD.format(frequency=numeral(f"{strongest[i]:.1f}"))),
         (
             fits & (strongest > 1.5 * frequency),
-            [
-                f"the waveform repeats at {f:.1f} Hz; its strongest component is at {s:.1f} Hz"
-                for f, s in zip(frequency, strongest, strict=True)
-            ],
+            lambda i: _REPEATS.format(
+                frequency=numeral(f"{frequency[i]:.1f}"), strongest=numeral(f"{strongest[i]:.1f}")
+            ),
         ),
     ]

@@ -4,8 +4,9 @@ from __future__ import annotations
 
 import numpy as np
 
+from generator.language import say, say_as
 from generator.records.curves import AgeingCurve
-from generator.sheets.drawings.axes import Frame, Scale, ticks
+from generator.sheets.drawings.axes import Frame, Scale, fixed, ticks
 from generator.sheets.drawings.drawing import DataTable, Palette
 from generator.sheets.drawings.svg import Canvas, thinned
 
@@ -41,23 +42,23 @@ def draw_ageing_chart(curve: AgeingCurve, title: str, palette: Palette) -> str:
     """
     canvas = Canvas(_WIDTH, _HEIGHT, palette)
     frame = _frame(curve)
-    frame.draw_y(canvas, ticks(frame.y.low, frame.y.high, 5), "flux, relative to the initial")
+    frame.draw_y(canvas, ticks(frame.y.low, frame.y.high, 5), say("flux, relative to the initial"))
     if curve.projection_end_h is not None:
         end = frame.x(curve.projection_end_h)
         canvas.rectangle(
             (end, frame.y.end), (frame.x.end - end, frame.y.start - frame.y.end), "faint"
         )
         canvas.line((end, frame.y.start), (end, frame.y.end), "quiet", width=0.9, dash="3 2")
-        canvas.text((end - 4, frame.y.end + 9), "projection ends", anchor="end")
+        canvas.text((end - 4, frame.y.end + 9), say("projection ends"), anchor="end")
     _fit(canvas, frame, curve)
     if curve.limit is not None and curve.limit_hours_h is not None:
         x, y = frame.x(curve.limit_hours_h), frame.y(curve.limit)
         canvas.line((frame.x.start, y), (x, y), "ink", width=1.2)
         canvas.line((x, y - 5), (x, y + 5), "ink", width=1.2)
-        canvas.text((x + 5, y + 3.5), "limit", "ink")
+        canvas.text((x + 5, y + 3.5), say_as("mark in a drawing", "limit"), "ink")
     for hours, value in list(zip(curve.hours_h, curve.maintenance, strict=True))[:_MOST_DOTS]:
         canvas.dot((frame.x(float(hours)), frame.y(float(value))), 2.2, "accent")
-    frame.draw_x(canvas, ticks(0, frame.x.high, 6), "operating time, h")
+    frame.draw_x(canvas, ticks(0, frame.x.high, 6), say("operating time, h"))
     return canvas.finish(title)
 
 
@@ -75,6 +76,7 @@ def ageing_table(curve: AgeingCurve) -> DataTable:
     """Give the mean of the readings at each time."""
     times = np.unique(curve.hours_h)
     rows = tuple(
-        (f"{time:.0f}", f"{curve.maintenance[curve.hours_h == time].mean():.3f}") for time in times
+        (fixed(time, 0), fixed(curve.maintenance[curve.hours_h == time].mean(), 3))
+        for time in times
     )
-    return DataTable(("operating time, h", "flux, relative to the initial, mean"), rows)
+    return DataTable((say("operating time, h"), say("flux, relative to the initial, mean")), rows)

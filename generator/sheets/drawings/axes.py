@@ -9,9 +9,10 @@ from dataclasses import dataclass
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import numeral, told
 from generator.sheets.drawings.svg import Canvas
 
-__all__ = ["Frame", "Scale", "label", "ticks"]
+__all__ = ["Frame", "Scale", "fixed", "label", "ticks"]
 
 Array = NDArray[np.float64]
 
@@ -72,7 +73,20 @@ def ticks(low: float, high: float, most: int = 6) -> tuple[float, ...]:
 def label(value: float) -> str:
     """Write a tick: no needless zeros, a true minus sign, thousands of long numbers apart."""
     text = f"{value:.6g}".replace("-", "\u2212")
-    return f"{text[:-3]}\u00a0{text[-3:]}" if _LONG.fullmatch(text) else text
+    return told(numeral(f"{text[:-3]}\u00a0{text[-3:]}" if _LONG.fullmatch(text) else text))
+
+
+def fixed(value: float, decimals: int) -> str:
+    """Write a number with so many decimals and a true minus sign.
+
+    Parameters
+    ----------
+    value
+        The number.
+    decimals
+        Decimals.
+    """
+    return told(numeral(f"{value:.{decimals}f}".replace("-", "\u2212")))
 
 
 @dataclass(frozen=True, slots=True)

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from generator.language import say, told
 from generator.sheets.drawings.axes import Frame, Scale, ticks
 from generator.sheets.drawings.drawing import Palette
 from generator.sheets.drawings.spectral_colour import hue_colour
@@ -39,7 +40,7 @@ def draw_colour_strip(
     reach = max([20.0, *(abs(value) for value in chroma_shift if value is not None)])
     across = Scale(0.5, len(chroma_shift) + 0.5, _LEFT, _WIDTH - 4)
     shift = Frame(across, Scale(-reach, reach, _STRIP - 6, 16))
-    shift.draw_y(canvas, ticks(-reach, reach, 5), "chroma shift, %")
+    shift.draw_y(canvas, ticks(-reach, reach, 5), say("chroma shift, %"))
     zero = shift.y(0)
     canvas.line((_LEFT, zero), (_WIDTH - 4, zero), "quiet", width=0.8)
     step = across(2) - across(1)
@@ -58,8 +59,8 @@ def draw_colour_strip(
 def _fidelity(canvas: Canvas, across: Scale, fidelity: Sequence[float | None]) -> None:
     """Hang the loss of fidelity under the strip, a longer tooth for a greater loss."""
     top, low = _STRIP + _THICK + 17, _HEIGHT - 14
-    canvas.text((0, top + 8), "loss of", "quiet")
-    canvas.text((0, top + 19), "fidelity", "quiet")
+    for row, words in enumerate(told(say("loss of\nfidelity")).split("\n")):
+        canvas.text((0, top + 8 + 11 * row), words, "quiet")
     down = Scale(100, 40, top, low)
     for order, value in enumerate(fidelity, start=1):
         if value is None:

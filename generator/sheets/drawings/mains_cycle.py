@@ -4,8 +4,9 @@ from __future__ import annotations
 
 import numpy as np
 
+from generator.language import say
 from generator.records.curves import MainsCurve
-from generator.sheets.drawings.axes import Frame, Scale, label, ticks
+from generator.sheets.drawings.axes import Frame, Scale, fixed, label, ticks
 from generator.sheets.drawings.drawing import DataTable, Palette
 from generator.sheets.drawings.svg import Canvas
 
@@ -36,16 +37,16 @@ def draw_mains_cycle(curve: MainsCurve, shift_label: str, title: str, palette: P
     milliamperes = _both_ways(curve.current_a * 1000)
     voltage = Frame(across, Scale(-volts, volts, _HEIGHT - _BOTTOM, _TOP))
     current = Frame(across, Scale(-milliamperes, milliamperes, _HEIGHT - _BOTTOM, _TOP))
-    voltage.draw_y(canvas, ticks(-volts, volts, 5), "voltage, V")
+    voltage.draw_y(canvas, ticks(-volts, volts, 5), say("voltage, V"))
     current.draw_y(canvas, ticks(-milliamperes, milliamperes, 5), "", right=True)
-    canvas.text((_WIDTH, 9), "current, mA", "accent", anchor="end")
+    canvas.text((_WIDTH, 9), say("current, mA"), "accent", anchor="end")
     zero = voltage.y(0)
     canvas.line((_LEFT, zero), (_WIDTH - _RIGHT, zero), "quiet", width=0.8)
     canvas.path(voltage.points(curve.phase_deg, curve.voltage_v), "quiet", width=1.3, dash="5 2.5")
     canvas.path(current.points(curve.phase_deg, curve.current_a * 1000), "accent", width=1.8)
     if shift_label and curve.current_phase_deg is not None:
         _mark_shift(canvas, voltage, curve.current_phase_deg, shift_label)
-    voltage.draw_x(canvas, _CYCLE, "phase of the voltage, degrees")
+    voltage.draw_x(canvas, _CYCLE, say("phase of the voltage, degrees"))
     return canvas.finish(title)
 
 
@@ -70,7 +71,7 @@ def mains_table(curve: MainsCurve) -> DataTable:
     volts = np.interp(phases, curve.phase_deg, curve.voltage_v)
     milliamperes = np.interp(phases, curve.phase_deg, curve.current_a) * 1000
     rows = tuple(
-        (label(phase), f"{u:.1f}".replace("-", "\u2212"), f"{i:.1f}".replace("-", "\u2212"))
+        (label(phase), fixed(u, 1), fixed(i, 1))
         for phase, u, i in zip(phases, volts, milliamperes, strict=True)
     )
-    return DataTable(("phase, degrees", "voltage, V", "current, mA"), rows)
+    return DataTable((say("phase, degrees"), say("voltage, V"), say("current, mA")), rows)

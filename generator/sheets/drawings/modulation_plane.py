@@ -5,6 +5,7 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say
 from generator.records.curves import LowRiskLine
 from generator.sheets.drawings.axes import Frame, Scale
 from generator.sheets.drawings.drawing import Palette
@@ -47,10 +48,10 @@ def draw_modulation_plane(
     line = thinned(_line(frame, low_risk))
     below = [[line[-1, 0], frame.y.start], [line[0, 0], frame.y.start]]
     canvas.area(np.vstack([line, below]), "good-soft")
-    canvas.text((frame.x(2500), frame.y.start - 9), "low risk", "good", anchor="middle")
-    frame.draw_y(canvas, _DEPTHS, "percent flicker")
+    canvas.text((frame.x(2500), frame.y.start - 9), say("low risk"), "good", anchor="middle")
+    frame.draw_y(canvas, _DEPTHS, say("percent flicker"))
     canvas.path(line, "good", width=1.4)
-    frame.draw_x(canvas, _DECADES, "frequency, Hz")
+    frame.draw_x(canvas, _DECADES, say("frequency, Hz"))
     x = frame.x(min(max(at[0], _DECADES[0]), _DECADES[-1]))
     y = frame.y(min(max(at[1], _DEPTHS[0]), _DEPTHS[-1]))
     canvas.dot((x, y), 4, "accent")

@@ -10,8 +10,9 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say, say_as
 from generator.records.curves import LightCurve
-from generator.sheets.drawings.axes import Frame, Scale, ticks
+from generator.sheets.drawings.axes import Frame, Scale, fixed, ticks
 from generator.sheets.drawings.drawing import DataTable, Palette
 from generator.sheets.drawings.svg import Canvas, thinned
 
@@ -72,24 +73,26 @@ def draw_modulation_trace(curve: LightCurve, index_label: str, title: str, palet
         Scale(float(curve.time_ms[0]), float(curve.time_ms[-1]), 34, _WIDTH - _RIGHT),
         Scale(0, top, _HEIGHT - 32, 16),
     )
-    frame.draw_y(canvas, ticks(0, top, 4), "light, relative to its mean")
+    frame.draw_y(canvas, ticks(0, top, 4), say("light, relative to its mean"))
     line = np.column_stack([curve.time_ms, curve.light])
     for piece in above_mean(line, 1.0):
         canvas.area(thinned(frame.points(piece[:, 0], piece[:, 1])), "accent-soft")
     mean = frame.y(1.0)
     canvas.line((frame.x.start, mean), (frame.x.end, mean), "ink", width=0.9, dash="4 3")
-    canvas.text((frame.x.end + 5, mean + 3.5), "mean", "ink")
+    canvas.text((frame.x.end + 5, mean + 3.5), say_as("mark in a drawing", "mean"), "ink")
     canvas.path(frame.points(curve.time_ms, curve.light), "accent", width=1.6)
     _extremes(canvas, frame, curve, mean)
     if index_label:
         canvas.text((frame.x.start + 4, _HEIGHT - 38), index_label, "ink")
-    frame.draw_x(canvas, ticks(float(curve.time_ms[0]), float(curve.time_ms[-1]), 6), "time, ms")
+    frame.draw_x(
+        canvas, ticks(float(curve.time_ms[0]), float(curve.time_ms[-1]), 6), say("time, ms")
+    )
     return canvas.finish(title)
 
 
 def _extremes(canvas: Canvas, frame: Frame, curve: LightCurve, mean: float) -> None:
     """Name the highest and the lowest light where they stand clear of the mean."""
-    for value, word in ((curve.light.max(), "highest"), (curve.light.min(), "lowest")):
+    for value, word in ((curve.light.max(), say("highest")), (curve.light.min(), say("lowest"))):
         at = frame.y(float(value))
         if abs(at - mean) > 11:
             canvas.line((frame.x.end - 8, at), (frame.x.end + 3, at), "quiet", width=0.7)
@@ -100,5 +103,7 @@ def modulation_table(curve: LightCurve) -> DataTable:
     """Give the numbers behind the trace: forty times over the two periods."""
     times = np.linspace(curve.time_ms[0], curve.time_ms[-1], 41)
     light = np.interp(times, curve.time_ms, curve.light)
-    rows = tuple((f"{time:.2f}", f"{value:.3f}") for time, value in zip(times, light, strict=True))
-    return DataTable(("time, ms", "light, relative to its mean"), rows)
+    rows = tuple(
+        (fixed(time, 2), fixed(value, 3)) for time, value in zip(times, light, strict=True)
+    )
+    return DataTable((say("time, ms"), say("light, relative to its mean")), rows)

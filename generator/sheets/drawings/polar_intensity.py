@@ -5,8 +5,9 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say
 from generator.records.curves import IntensityCurve
-from generator.sheets.drawings.axes import label, ticks
+from generator.sheets.drawings.axes import fixed, label, ticks
 from generator.sheets.drawings.drawing import DataTable, Palette
 from generator.sheets.drawings.svg import Canvas
 
@@ -70,7 +71,9 @@ def intensity_table(planes: tuple[IntensityCurve, ...]) -> DataTable:
     angles = np.arange(np.ceil(low / 10) * 10, high + 1e-9, 10.0)
     columns = [np.interp(angles, plane.angle_deg, plane.intensity_cd) for plane in shown]
     rows = tuple(
-        (label(float(angle)), *(f"{column[place]:.1f}" for column in columns))
+        (label(float(angle)), *(fixed(column[place], 1) for column in columns))
         for place, angle in enumerate(angles)
     )
-    return DataTable(("angle from the axis, °", *(f"{plane.plane}, cd" for plane in shown)), rows)
+    return DataTable(
+        (say("angle from the axis, °"), *(f"{plane.plane}, cd" for plane in shown)), rows
+    )

@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass
 
+from generator.language import say, say_as, told
 from generator.sheets.drawings.drawing import Palette
 from generator.sheets.drawings.svg import Canvas
 
@@ -41,15 +42,15 @@ def draw_rank_chances(bids: Sequence[RankChances], title: str, palette: Palette)
     span = _WIDTH - _LEFT - _RIGHT
     for row, bid in enumerate(bids):
         top = _TOP + row * _ROW
-        name = bid.name
+        name = told(bid.name)
         if len(name) > _LONGEST_NAME:
             name = f"{name[: _LONGEST_NAME - 1]}…"
         canvas.text((_LEFT - 8, top + 14), name, "ink", anchor="end")
         at = _LEFT
-        parts = [(str(rank), share) for rank, share in enumerate(bid.ranks, start=1)]
-        for word, share in (*parts, ("none", bid.none)):
+        parts = [(rank, str(rank), share) for rank, share in enumerate(bid.ranks, start=1)]
+        for rank, word, share in (*parts, (0, say_as("rank", "none"), bid.none)):
             width = share * span
-            role, ink = _roles(word)
+            role, ink = _roles(rank)
             canvas.rectangle((at, top + 3), (max(width - 0.8, 0), _ROW - 8), role)
             if share >= _NAMED_FROM:
                 canvas.text((at + width / 2, top + 14.5), word, ink, anchor="middle", bold=True)
@@ -60,12 +61,12 @@ def draw_rank_chances(bids: Sequence[RankChances], title: str, palette: Palette)
         place = _LEFT + span * percent / 100
         canvas.line((place, base), (place, base + 4), "quiet")
         canvas.text((place, base + 15), f"{percent}", anchor="middle")
-    words = "probability of each rank, percent; none: not ranked"
+    words = say("probability of each rank, percent; none: not ranked")
     canvas.text((_LEFT + span / 2, base + 29), words, anchor="middle")
     return canvas.finish(title)
 
 
-def _roles(word: str) -> tuple[str, str]:
+def _roles(rank: int) -> tuple[str, str]:
     """Fill and ink of a part: the first rank dark, the second lighter, later ones pale."""
-    fills = {"1": ("accent", "paper"), "2": ("accent-soft", "ink"), "none": ("hair", "ink")}
-    return fills.get(word, ("tooth-soft", "ink"))
+    fills = {1: ("accent", "paper"), 2: ("accent-soft", "ink"), 0: ("hair", "ink")}
+    return fills.get(rank, ("tooth-soft", "ink"))

@@ -5,8 +5,9 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import joined, say, say_as, told
 from generator.records.curves import SpectrumCurve
-from generator.sheets.drawings.axes import Frame, Scale, ticks
+from generator.sheets.drawings.axes import Frame, Scale, fixed, ticks
 from generator.sheets.drawings.drawing import DataTable, Palette
 from generator.sheets.drawings.spectral_colour import wavelength_colour
 from generator.sheets.drawings.svg import Canvas, thinned
@@ -24,7 +25,7 @@ def _scaled(curve: SpectrumCurve) -> tuple[float, str]:
     """What the values are multiplied by, and the unit they then have."""
     peak = float(curve.total.max())
     if curve.unit == "relative":
-        return 100 / peak, "% of the peak"
+        return 100 / peak, say("% of the peak")
     return (1000.0, "mW/nm") if peak < 0.5 else (1.0, "W/nm")
 
 
@@ -68,7 +69,7 @@ def draw_spectrum_plate(
     if curve.phosphor is not None and curve.emitter is not None:
         _cut(canvas, frame, wavelength, np.maximum(curve.phosphor[inside] * factor, 0), total)
     canvas.path(line, "ink", width=1)
-    frame.draw_x(canvas, ticks(400, _LAST_NM, 8), "wavelength, nm")
+    frame.draw_x(canvas, ticks(400, _LAST_NM, 8), say("wavelength, nm"))
     if peak_label:
         _name_peak(canvas, frame, wavelength, total, peak_label)
     for row, words in enumerate(white):
@@ -98,7 +99,7 @@ def _cut(canvas: Canvas, frame: Frame, wavelength: Array, phosphor: Array, total
     canvas.path(line, "ink", width=0.7, dash="3 2")
     high = int(phosphor.argmax())
     at = frame.points(wavelength[high : high + 1], phosphor[high : high + 1] * 0.45)[0]
-    canvas.text((at[0], at[1]), "phosphor", "on-light", anchor="middle", bold=True)
+    canvas.text((at[0], at[1]), say("phosphor"), "on-light", anchor="middle", bold=True)
 
 
 def _name_peak(canvas: Canvas, frame: Frame, wavelength: Array, total: Array, words: str) -> None:
@@ -109,7 +110,7 @@ def _name_peak(canvas: Canvas, frame: Frame, wavelength: Array, total: Array, wo
     top = frame.y.end + 1
     canvas.dot((x, y), 2.2, "ink")
     canvas.line((x, y), (x, top), "ink", width=0.7)
-    canvas.rectangle((x + 3, top - 2), (_LETTER * len(words), 12), "paper")
+    canvas.rectangle((x + 3, top - 2), (_LETTER * len(told(words)), 12), "paper")
     canvas.text((x + 5, top + 7), words, "ink")
 
 
@@ -118,12 +119,14 @@ def spectrum_table(curve: SpectrumCurve) -> DataTable:
     factor, unit = _scaled(curve)
     grid = np.arange(_FIRST_NM, _LAST_NM + 1, 20.0)
     grid = grid[(grid >= curve.wavelength_nm[0]) & (grid <= curve.wavelength_nm[-1])]
-    parts = [("total", curve.total)]
+    parts: list[tuple[str, Array]] = [(say_as("spectrum", "total"), curve.total)]
     if curve.emitter is not None and curve.phosphor is not None:
-        parts += [("emitter", curve.emitter), ("phosphor", curve.phosphor)]
+        parts += [(say("emitter"), curve.emitter), (say("phosphor"), curve.phosphor)]
     columns = [np.interp(grid, curve.wavelength_nm, part) * factor for _, part in parts]
     rows = tuple(
-        (f"{nm:.0f}", *(f"{column[index]:.2f}".replace("-", "\u2212") for column in columns))
+        (fixed(nm, 0), *(fixed(column[index], 2) for column in columns))
         for index, nm in enumerate(grid)
     )
-    return DataTable(("wavelength, nm", *(f"{name}, {unit}" for name, _ in parts)), rows)
+    return DataTable(
+        (say("wavelength, nm"), *(joined(", ", (name, unit)) for name, _ in parts)), rows
+    )

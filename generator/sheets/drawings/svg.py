@@ -15,6 +15,7 @@ from html import escape
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import told
 from generator.sheets.drawings.drawing import Palette
 
 __all__ = ["FONT_FAMILY", "MOST_POINTS", "Canvas", "coordinate", "outline", "thinned"]
@@ -181,6 +182,14 @@ class Canvas:
         data = {"d": outline(thinned(points), closed=closed), "stroke-linejoin": "round"}
         self._element("path", data | self._stroke(role, width, dash))
 
+    def pieces(
+        self, pieces: Sequence[Array], role: str = "ink", *, width: float = 1.4, dash: str = ""
+    ) -> None:
+        """Draw lines that do not hang together as one path; nothing where there are none."""
+        if pieces:
+            data = {"d": "".join(outline(piece) for piece in pieces)}
+            self._element("path", data | self._stroke(role, width, dash))
+
     def area(self, points: Array, role: str, *, opacity: float = 1) -> None:
         """Fill the outline through points (points, 2)."""
         attributes = {"d": outline(points, closed=True)} | self._fill(role)
@@ -230,7 +239,7 @@ class Canvas:
             attributes["font-weight"] = "600"
         if size is not None:
             attributes["font-size"] = coordinate(size)
-        self._element("text", attributes, escape(words, quote=False))
+        self._element("text", attributes, escape(told(words), quote=False))
 
     def gradient(self, name: str, stops: Sequence[tuple[float, str]]) -> str:
         """Define a gradient from left to right; give what to fill with."""
@@ -257,7 +266,7 @@ class Canvas:
         return (
             f'<svg xmlns="http://www.w3.org/2000/svg" class="{kind}" role="img"'
             f' viewBox="0 0 {width} {height}" width="{width}" height="{height}">'
-            f"<title>{escape(title, quote=False)}</title>"
+            f"<title>{escape(told(title), quote=False)}</title>"
             f'<g font-family="{FONT_FAMILY}" font-size="{coordinate(self.size)}">'
             f"{''.join(self._parts)}</g></svg>"
         )

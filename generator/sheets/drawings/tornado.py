@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 
+from generator.language import say, say_as
 from generator.records.tender import SensitivityBar
 from generator.sheets.drawings.axes import Frame, Scale, ticks
 from generator.sheets.drawings.drawing import Palette
@@ -48,11 +49,11 @@ def draw_tornado(
         middle = frame.y(place + 0.5)
         canvas.text((_LEFT - 8, middle + 3.5), bar.assumption, "ink", anchor="end")
         if bar.swing == 0:
-            canvas.text((frame.x(cost) + 4, middle + 3.5), "no change")
+            canvas.text((frame.x(cost) + 4, middle + 3.5), say("no change"))
             continue
         for end, role, word in (
-            (float(bar.low_cost), "accent-soft", "lower"),
-            (float(bar.high_cost), "accent", "higher"),
+            (float(bar.low_cost), "accent-soft", say_as("end of a bar", "lower")),
+            (float(bar.high_cost), "accent", say_as("end of a bar", "higher")),
         ):
             start, tip = sorted((frame.x(cost), frame.x(end)))
             canvas.rectangle((start, middle - 7), (tip - start, 14), role)
@@ -60,5 +61,5 @@ def draw_tornado(
             canvas.text((frame.x(end) + (-4 if end < cost else 4), middle + 3.5), word, anchor=side)
     centre = frame.x(cost)
     canvas.line((centre, _TOP - 4), (centre, height - _BOTTOM), "ink", width=1.2)
-    canvas.text((centre, _TOP - 8), "as assumed", "ink", anchor="middle")
+    canvas.text((centre, _TOP - 8), say("as assumed"), "ink", anchor="middle")
     return canvas.finish(title)

@@ -5,8 +5,9 @@ from __future__ import annotations
 import numpy as np
 from numpy.typing import NDArray
 
+from generator.language import say_as
 from generator.records.curves import WhitePlane
-from generator.sheets.drawings.axes import Frame, Scale, label, ticks
+from generator.sheets.drawings.axes import Frame, Scale, fixed, label, ticks
 from generator.sheets.drawings.drawing import DataTable, Palette
 from generator.sheets.drawings.svg import Canvas
 
@@ -93,8 +94,9 @@ def _locus(canvas: Canvas, frame: Frame, plane: WhitePlane) -> None:
 
 def white_table(plane: WhitePlane) -> DataTable:
     """Give the chromaticity of every unit."""
+    mean = say_as("mean of the units", "mean")
     rows = tuple(
-        (unit or "mean", f"{x:.4f}", f"{y:.4f}")
+        (unit or mean, fixed(x, 4), fixed(y, 4))
         for unit, (x, y) in zip(plane.unit_ids, plane.units, strict=True)
     )
-    return DataTable(("unit", *_AXES[plane.coordinates]), rows)
+    return DataTable((say_as("lamp", "unit"), *_AXES[plane.coordinates]), rows)

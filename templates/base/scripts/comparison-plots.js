@@ -43,7 +43,7 @@
     return found;
   }
 
-  const label = (value) => String(Number(value.toPrecision(6))).replace("-", "\u2212");
+  const labels = (data) => (value) => lampassay.printed(data, String(Number(value.toPrecision(6))));
   const scale = (low, high, start, end) => (value) => start + ((value - low) / (high - low)) * (end - start);
 
   function ends(values, limits) {
@@ -57,7 +57,7 @@
     return [low - 0.08 * span, high + 0.08 * span];
   }
 
-  function axes(paper, x, y, frame, xName, yName) {
+  function axes(paper, x, y, frame, label, xName, yName) {
     for (const value of ticks(frame.yLow, frame.yHigh, 6)) {
       paper.line(frame.left, y(value), frame.right, y(value), "hair", 0.6);
       paper.text(frame.left - 5, y(value) + 3.5, label(value), "quiet", "end");
@@ -71,7 +71,7 @@
     paper.text(frame.right, frame.base + 28, xName, "quiet", "end");
   }
 
-  const named = (column) => (column.unit ? `${column.label}, ${column.unit}` : column.label);
+  const named = (column, words) => (column.unit ? lampassay.filled(words.with_unit, column) : column.label);
 
   function mark(paper, x, y, counts) {
     if (counts.fail) {
@@ -120,7 +120,8 @@
     const x = scale(frame.xLow, frame.xHigh, frame.left, frame.right);
     const y = scale(frame.yLow, frame.yHigh, frame.base, frame.top);
     const paper = canvas(width, 360, told);
-    axes(paper, x, y, frame, named(xColumn), named(yColumn));
+    const label = labels(data);
+    axes(paper, x, y, frame, label, named(xColumn, words), named(yColumn, words));
     for (const [limit, sign] of xColumn.limits) {
       if (limit <= frame.xLow || limit >= frame.xHigh) continue;
       paper.line(x(limit), frame.base, x(limit), frame.top, "ink", 1, "6 3");
@@ -154,8 +155,8 @@
     const frame = { left: 40, right: 548, base: 220, top: 20, xLow: first, xHigh: last, yLow: 0, yHigh: 105 };
     const x = scale(first, last, frame.left, frame.right);
     const y = scale(0, 105, frame.base, frame.top);
-    const paper = canvas(560, 262 + 16 * known.length, `${words.spectra_heading}: ${known.map((lamp) => lamp.model).join(", ")}`);
-    axes(paper, x, y, frame, words.wavelength, words.spectra_scale);
+    const paper = canvas(560, 262 + 16 * known.length, lampassay.filled(words.spectra_title, { models: known.map((lamp) => lamp.model).join(", ") }));
+    axes(paper, x, y, frame, labels(data), words.wavelength, words.spectra_scale);
     known.forEach((lamp, at) => {
       const [role, dash] = LINES[at];
       let pen = "M";
@@ -176,5 +177,5 @@
     place.replaceChildren(paper.svg);
   }
 
-  Object.assign(lampassay, { scatter, spectra });
+  Object.assign(lampassay, { named, scatter, spectra });
 })();

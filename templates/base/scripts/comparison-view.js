@@ -174,15 +174,20 @@ const lampassay = Object.create(null);
     return [heads, ...rows].map((row) => row.map(csvField).join(",") + "\r\n").join("");
   }
 
+  /** Digits as the page prints them: a true minus, and the decimal sign of the page's language. */
+  function printed(data, digits) {
+    return digits.replace("-", "\u2212").replace(".", data.decimal ?? ".");
+  }
+
   /** A cell less that of the reference: signed, and whether the uncertainties hide it. */
-  function difference(cell, base) {
+  function difference(data, cell, base) {
     if (cell === null || base === null || typeof cell[0] !== "number" || typeof base[0] !== "number") return null;
     const value = cell[0] - base[0];
     const digits = Math.min(cell[2], base[2]);
     const spread = Math.hypot(cell[1] ?? 0, base[1] ?? 0);
     const size = Math.abs(value).toFixed(digits);
     const sign = Number(size) === 0 ? "" : value > 0 ? "+" : "\u2212";
-    return (spread > Math.abs(value) ? "\u2248\u00a0" : "") + sign + size;
+    return (spread > Math.abs(value) ? "\u2248\u00a0" : "") + sign + printed(data, size);
   }
 
   /** Put values into a text with names in braces. */
@@ -191,6 +196,6 @@ const lampassay = Object.create(null);
   }
 
   Object.assign(lampassay, {
-    MOST_SIDE, columnPlaces, difference, emptyView, filled, fromFragment, matches, order, prepared, toCsv, toFragment, typedNumber,
+    MOST_SIDE, columnPlaces, difference, emptyView, filled, fromFragment, matches, order, prepared, printed, toCsv, toFragment, typedNumber,
   });
 })();

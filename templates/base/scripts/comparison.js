@@ -2,7 +2,7 @@
 "use strict";
 
 (() => {
-  const { MOST_SIDE, columnPlaces, difference, emptyView, filled, fromFragment, matches, order, prepared, toCsv, toFragment, typedNumber } = lampassay;
+  const { MOST_SIDE, columnPlaces, difference, emptyView, filled, fromFragment, matches, order, prepared, printed, toCsv, toFragment, typedNumber } = lampassay;
   const byId = (id) => document.getElementById(id);
   const data = JSON.parse(byId("comparison-data").textContent);
   const words = data.words;
@@ -13,8 +13,11 @@
   const body = table.tBodies[0];
   const rows = [...body.rows];
   const FIRST = 2; // cells before the first column: the lamp, its verdicts
-  const plotWait = 120;
-  const STEP = 50; // rows laid out at once, so that a filter answers at once however many lamps
+  const picks = [];
+  const followWait = 120; // [ms]
+  const fillWait = 30;
+  const STEP = 50; // rows on the page, however many lamps match
+  const ROW = 80; // no row is lower [px]
 
   let view = emptyView(data);
   let most = STEP;
@@ -23,11 +26,22 @@
   let drawn = "";
   let waiting = 0;
   let told = "";
+  let remembered = "";
+  let turn = 0;
+  let atOnce = 0;
+  let scrolled = false;
 
   function made(name, properties = {}, ...children) {
     const element = Object.assign(document.createElement(name), properties);
     element.append(...children);
     return element;
+  }
+
+  /** A number and its uncertainty as printed; a class has no uncertainty. */
+  function cellTexts([value, spread, digits]) {
+    if (typeof value !== "number") return [value, ""];
+    const text = (number) => printed(data, number.toFixed(digits));
+    return [text(value), spread === null ? "" : `\u00b1\u00a0${text(spread)}`];
   }
 
   const shownLamps = () => placed.filter((at) => matching[at]);
@@ -52,26 +66,51 @@
     byId("nothing").hidden = matching.includes(true);
   }
 
-  /** Lay out the first lamps that match, in the order of the view. */
-  function layOutRows() {
+  /* The table holds the first rows of the answer and nothing else. A step sets as many rows as a
+     window shows; the others follow frame by frame, and what stands there is always right. */
+
+  /** Set the first rows of the answer, so many of them new; true where that is all of them. */
+  function setRows(budget) {
     const base = data.lamps[lampPlaces.get(view.reference)];
-    let count = 0;
-    for (const at of placed) {
-      if (matching[at]) count += 1;
-      const away = !matching[at] || count > most;
-      if (away !== rows[at].hidden) rows[at].hidden = away;
-      if (!away && base) writeDifferences(at, base);
+    const wanted = shownLamps().slice(0, most);
+    const kept = new Set(wanted.map((at) => rows[at]));
+    for (const row of [...body.children]) if (!kept.has(row)) row.remove();
+    let next = body.firstElementChild;
+    let left = budget;
+    for (const at of wanted) {
+      const row = rows[at];
+      const stands = row === next;
+      if (!stands || (base && row.dataset.base !== base.id)) left -= 1;
+      if (left < 0) break;
+      if (stands) next = next.nextElementSibling;
+      if (base) writeDifferences(at, base);
+      if (!stands) body.insertBefore(row, next);
     }
+    while (next) [next] = [next.nextElementSibling, next.remove()];
+    return left >= 0;
+  }
+
+  function setRowsInTurn() {
+    turn += 1;
+    const own = turn;
+    if (setRows(atOnce)) return;
+    requestAnimationFrame(() => setTimeout(() => own === turn && setRowsInTurn(), fillWait));
+  }
+
+  function layOutRows() {
+    const count = matching.filter(Boolean).length;
+    setRowsInTurn();
     byId("more").hidden = count <= most;
     byId("show-all").textContent = filled(words.show_all, { count });
   }
 
+  function toTop() {
+    if (scrolled) table.parentElement.scrollTop = 0;
+    scrolled = false;
+  }
+
   function sortRows() {
-    const now = order(data, view);
-    if (now.some((at, index) => at !== placed[index])) {
-      placed = now;
-      body.append(...placed.map((at) => rows[at]));
-    }
+    placed = order(data, view);
     for (const heading of table.tHead.rows[0].cells) {
       const key = heading.dataset.key;
       if (key && key === view.sort) heading.setAttribute("aria-sort", view.down ? "descending" : "ascending");
@@ -105,7 +144,7 @@
     for (const column of data.columns) {
       const place = places.get(column.key);
       const cell = row.cells[place + FIRST];
-      const text = lamp === base ? null : difference(lamp.cells[place], base.cells[place]);
+      const text = lamp === base ? null : difference(data, lamp.cells[place], base.cells[place]);
       let span = cell.querySelector(".difference");
       if (text === null) {
         span?.remove();
@@ -119,16 +158,20 @@
     }
   }
 
+  function rangeText({ key, low, high }) {
+    const told = low === null ? words.range_to : high === null ? words.range_from : words.range_between;
+    const [least, most] = [low, high].map((number) => printed(data, String(number)));
+    return filled(told, { column: columnName(key), low: least, high: most });
+  }
+
   function showRanges() {
     const list = byId("ranges");
     list.hidden = !view.ranges.length;
     list.replaceChildren(
       ...view.ranges.map((range) => {
-        const low = range.low === null ? "" : `${words.range_low} ${range.low}`;
-        const high = range.high === null ? "" : `${words.range_high} ${range.high}`;
-        const text = `${columnName(range.key)} ${[low, high].filter(Boolean).join(", ")}`;
+        const text = rangeText(range);
         const button = made("button", { type: "button" }, `${text} \u00d7`);
-        button.setAttribute("aria-label", `${words.range_remove}: ${text}`);
+        button.setAttribute("aria-label", filled(words.range_remove, { range: text }));
         button.addEventListener("click", () => {
           change({ ranges: view.ranges.filter((other) => other !== range) });
           byId("find").focus();
@@ -141,7 +184,7 @@
   function showSide() {
     const lamps = view.side.map((id) => data.lamps[lampPlaces.get(id)]);
     byId("side").hidden = !lamps.length;
-    for (const [at, row] of rows.entries()) row.querySelector(".pick input").checked = view.side.includes(data.lamps[at].id);
+    for (const [at, box] of picks.entries()) box.checked = view.side.includes(data.lamps[at].id);
     if (!lamps.length) return;
     const base = data.lamps[lampPlaces.get(view.reference)];
     if (base) for (const lamp of lamps) writeDifferences(lampPlaces.get(lamp.id), base);
@@ -174,7 +217,7 @@
     return made("tr", {}, heading, ...cells);
   }
 
-  /* ---- drawings follow a moment later, so that a filter answers at once ---- */
+  /* ---- drawings and the address follow a moment later, so that a filter answers at once ---- */
 
   const firstPlot = [...(byId("pair-plot")?.childNodes ?? [])];
   const firstCaption = byId("pair-caption").textContent;
@@ -204,10 +247,9 @@
   }
 
   function writePairTable(shown, x, y) {
-    const name = (column) => (column.unit ? `${column.label}, ${column.unit}` : column.label);
     const heading = (text) => made("th", { scope: "col" }, text);
-    const told = (cell) => (cell === null ? words.none : `${cell[0].toFixed(cell[2])}${cell[1] ? ` \u00b1 ${cell[1].toFixed(cell[2])}` : ""}`);
-    pairTable.tHead.rows[0].replaceChildren(heading(words.lamp), heading(name(columnAt(x))), heading(name(columnAt(y))));
+    const told = (cell) => (cell === null ? words.none : cellTexts(cell).filter(Boolean).join(" "));
+    pairTable.tHead.rows[0].replaceChildren(heading(words.lamp), ...[x, y].map((key) => heading(lampassay.named(columnAt(key), words))));
     pairTable.tBodies[0].replaceChildren(
       ...shown.map((at) => {
         const lamp = data.lamps[at];
@@ -217,15 +259,20 @@
     );
   }
 
-  function drawSoon() {
+  function followSoon() {
     clearTimeout(waiting);
-    waiting = setTimeout(drawPair, plotWait);
+    waiting = setTimeout(() => {
+      remember();
+      drawPair();
+    }, followWait);
   }
 
   /* ---- from one view to the next ---- */
 
   function remember() {
     const fragment = toFragment(data, view);
+    if (fragment === remembered) return;
+    remembered = fragment;
     try {
       history.replaceState(null, "", fragment ? `#${fragment}` : location.pathname + location.search);
     } catch {
@@ -241,25 +288,31 @@
   }
 
   /** Take up some parts of a view, and show what follows from them. */
-  function change(parts, { keep = true, announce = "" } = {}) {
+  function change(parts, announce = "") {
     const before = view;
     view = { ...view, ...parts };
     const changed = (...keys) => keys.some((key) => before[key] !== view[key]);
     if (changed("columns")) showColumns();
-    if (changed("find", "verdict", "bidder", "ranges")) filterRows();
+    if (changed("find", "verdict", "bidder", "ranges")) {
+      most = STEP;
+      filterRows();
+    }
     if (changed("sort", "down")) sortRows();
     if (changed("reference")) showDifferences();
-    if (changed("find", "verdict", "bidder", "ranges", "sort", "down", "reference")) layOutRows();
+    if (changed("find", "verdict", "bidder", "ranges", "sort", "down", "reference")) {
+      layOutRows();
+      toTop();
+    }
     if (changed("ranges")) showRanges();
     if (changed("side", "reference")) showSide();
-    drawSoon();
-    if (keep) remember();
+    followSoon();
     say(announce || countText());
   }
 
   function restore() {
     if (location.hash.length > 1 && !location.hash.includes("=")) return;
-    change(fromFragment(data, location.hash.slice(1)), { keep: false });
+    change(fromFragment(data, location.hash.slice(1)));
+    remembered = toFragment(data, view);
     fillFields();
   }
 
@@ -267,7 +320,7 @@
     const better = key === "lamp" ? -1 : key === "verdicts" ? -1 : columnAt(key).better;
     const down = view.sort === key ? !view.down : better > 0;
     const way = down ? words.descending : words.ascending;
-    change({ sort: key, down }, { announce: filled(words.sorted, { column: columnName(key), way }) });
+    change({ sort: key, down }, filled(words.sorted, { column: columnName(key), way }));
   }
 
   function pick(id, chosen) {
@@ -278,7 +331,7 @@
     }
     const side = view.side.filter((other) => other !== id);
     if (chosen) side.push(id);
-    change({ side }, { announce: filled(words.side_lamps, { count: side.length }) });
+    change({ side }, filled(words.side_lamps, { count: side.length }));
   }
 
   function addRange() {
@@ -315,6 +368,11 @@
     setTimeout(() => URL.revokeObjectURL(address), 10000);
   }
 
+  /** How many rows a window shows: the table takes nine tenths of its height, a row of it the headings. */
+  function measure() {
+    atOnce = Math.max(6, Math.ceil((0.9 * innerHeight) / ROW) - 1);
+  }
+
   function layOut(count) {
     most = count;
     layOutRows();
@@ -336,7 +394,31 @@
     const box = made("input", { type: "checkbox" });
     box.setAttribute("aria-label", filled(words.compare, { model: lamp.model }));
     box.addEventListener("change", () => pick(lamp.id, box.checked));
+    picks.push(box);
     row.cells[0].append(made("label", { className: "pick" }, box, words.compare_short));
+  }
+
+  /* Widths that hang on all lamps and not on those that stand there: no column moves when the rows
+     change, and the table need not be measured again. */
+
+  const DIGIT = 0.62; // of a number, its uncertainty and a heading [rem]
+  const SMALL = 0.47;
+  const LETTER = 0.5;
+  const RULER = 6;
+
+  function widthOf(column, at) {
+    const longest = Math.max(...column.label.split(/[\s\u00ad-]/).map((word) => word.length));
+    const cells = data.lamps.map((lamp) => lamp.cells[at]).filter((cell) => cell !== null);
+    const wide = cells.map((cell) => {
+      const [number, spread] = cellTexts(cell);
+      return DIGIT * number.length + (spread ? SMALL * (spread.length + 2) : 0);
+    });
+    return wide.reduce((most, each) => Math.max(most, each), Math.max(RULER, LETTER * longest));
+  }
+
+  function fixWidths(headings) {
+    data.columns.forEach((column, at) => { headings[at + FIRST].style.width = `${widthOf(column, at).toFixed(2)}rem`; });
+    table.classList.add("laid");
   }
 
   const option = (column) => made("option", { value: column.key }, column.label);
@@ -344,6 +426,7 @@
   function build() {
     const headings = [...table.tHead.rows[0].cells];
     ["lamp", "verdicts", ...data.columns.map((column) => column.key)].forEach((key, at) => sortable(headings[at], key));
+    fixWidths(headings);
     rows.forEach((row, at) => addPick(row, data.lamps[at]));
     const numbers = data.columns.filter((column) => column.number);
     byId("range-figure").append(...numbers.map(option));
@@ -371,7 +454,10 @@
     }
     byId("download").addEventListener("click", download);
     byId("copy").addEventListener("click", () => copyText(toCsv(data, view, shownLamps())));
-    byId("link").addEventListener("click", () => copyText(location.href));
+    byId("link").addEventListener("click", () => {
+      remember();
+      copyText(location.href);
+    });
     byId("reset").addEventListener("click", () => {
       change(emptyView(data));
       fillFields();
@@ -386,13 +472,18 @@
     addEventListener("beforeprint", () => {
       before = most;
       layOut(Infinity);
+      setRows(Infinity);
     });
     addEventListener("afterprint", () => layOut(before));
     addEventListener("hashchange", restore);
+    addEventListener("resize", measure);
+    const scroller = table.parentElement;
+    scroller.addEventListener("scroll", () => { scrolled = scroller.scrollTop > 0; }, { passive: true });
   }
 
   build();
   listen();
+  measure();
   showColumns();
   layOutRows();
   say(countText());

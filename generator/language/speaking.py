@@ -1,0 +1,142 @@
+"""Speaking a language: its catalogue, the notation of its numbers, its dates."""
+
+from __future__ import annotations
+
+import io
+from collections.abc import Iterator
+from contextlib import contextmanager
+from contextvars import ContextVar
+from datetime import date
+from functools import cache
+from importlib.resources import files
+from typing import TYPE_CHECKING
+
+from generator.language.messages import Message, spoken_by
+
+if TYPE_CHECKING:
+    from babel import Locale
+    from babel.support import Translations
+
+__all__ = [
+    "LANGUAGES",
+    "date_in_words",
+    "decimal_sign",
+    "language_name",
+    "speaking",
+    "spoken_language",
+]
+
+LANGUAGES = ("en", "de", "fr", "es", "it", "pl")
+"""The languages that sheets can be in, by tag."""
+
+_LOCALES = {"en": "en_GB"}
+_SPACE = "\u00a0"
+_TAG: ContextVar[str] = ContextVar("tag", default="en")
+
+
+@cache
+def _locale(tag: str) -> Locale:
+    from babel import Locale
+
+    return Locale.parse(_LOCALES.get(tag, tag))
+
+
+@cache
+def _catalogue(tag: str) -> Translations:
+    """The messages of a language, read from its catalogue of text."""
+    from babel.messages.mofile import write_mo
+    from babel.messages.pofile import read_po
+    from babel.support import Translations
+
+    text = files("generator.language").joinpath("catalogues", f"{tag}.po").read_bytes()
+    compiled = io.BytesIO()
+    write_mo(compiled, read_po(io.BytesIO(text), locale=tag))
+    compiled.seek(0)
+    return Translations(compiled)
+
+
+class _Speaker:
+    """Says messages from a catalogue; what it lacks is said in English."""
+
+    def __init__(self, tag: str) -> None:
+        self._catalogue = _catalogue(tag)
+        self._decimal_sign = _locale(tag).number_symbols["latn"]["decimal"]
+
+    def pattern(self, message: Message) -> str:
+        """Give the pattern of a message in the language, for its count where it has one."""
+        found = self._catalogue
+        if message.plural:
+            count = 0 if message.counted is None else message.counted
+            return str(found.ngettext(message.singular, message.plural, count))
+        if message.context:
+            return str(found.pgettext(message.context, message.singular))
+        return str(found.gettext(message.singular)) if message.singular else ""
+
+    def number(self, text: str) -> str:
+        """Give a number with the decimal sign of the language."""
+        return text.replace(".", self._decimal_sign)
+
+
+@cache
+def _speaker(tag: str) -> _Speaker | None:
+    """Who speaks a language; nobody is needed for English, which messages are written in."""
+    if tag not in LANGUAGES:
+        raise ValueError(f"no catalogue for the language {tag!r}")
+    return None if tag == "en" else _Speaker(tag)
+
+
+@contextmanager
+def speaking(tag: str) -> Iterator[None]:
+    """Speak a language for the length of a ``with`` block.
+
+    Parameters
+    ----------
+    tag
+        One of :data:`LANGUAGES`.
+
+    Raises
+    ------
+    ValueError
+        If there is no catalogue for it.
+    """
+    before = _TAG.set(tag)
+    try:
+        with spoken_by(_speaker(tag)):
+            yield
+    finally:
+        _TAG.reset(before)
+
+
+def spoken_language() -> str:
+    """Give the tag of the language that is being spoken; English where none is."""
+    return _TAG.get()
+
+
+def date_in_words(day: date) -> str:
+    """Write a date in the words of the language that is being spoken.
+
+    Parameters
+    ----------
+    day
+        The date, for instance 1 September 2021; its day and month stay on one line.
+    """
+    from babel.dates import format_date
+
+    return format_date(day, "long", locale=_locale(spoken_language())).replace(" ", _SPACE, 1)
+
+
+def decimal_sign() -> str:
+    """Give the sign before the decimals of a number in the language that is being spoken."""
+    return str(_locale(spoken_language()).number_symbols["latn"]["decimal"])
+
+
+def language_name(tag: str) -> str:
+    """Give the name of a language in that language.
+
+    Parameters
+    ----------
+    tag
+        One of :data:`LANGUAGES`.
+    """
+    locale = _locale(tag)
+    return str(locale.languages[locale.language])
