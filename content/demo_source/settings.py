@@ -319,5 +319,5 @@ relamp_year = 3
 
 [sheet]
 theme = "tender"
-languages = ["en"]
+languages = ["en", "de", "pl"]
 """

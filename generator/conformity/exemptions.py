@@ -7,7 +7,7 @@ from datetime import date
 
 from generator.conformity.applicability import applicability
 from generator.conformity.evidence import LampRecord
-from generator.language import joined, say
+from generator.language import SEMICOLON, joined, say
 from generator.records.clause import Clause, Exemption, LawBook
 
 __all__ = ["claimable_note", "claimed_exemption"]
@@ -83,5 +83,5 @@ def claimable_note(law: LawBook, clause: Clause, record: LampRecord, day: date) 
         return ""
     return say(
         "It would be lifted if the supplier claimed and showed: {exemptions}.",
-        exemptions=joined("; ", texts),
+        exemptions=joined(SEMICOLON, texts),
     )

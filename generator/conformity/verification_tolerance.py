@@ -20,6 +20,9 @@ from generator.records.verdict import Basis
 
 __all__ = ["tolerated", "verification_limit"]
 
+_WITH_TOLERANCE = say("Declared {declared}, tolerance {tolerance}: {limit} ({source}).")
+_NO_TOLERANCE = say("Declared {declared}, no tolerance: {limit} ({source}).")
+
 
 def tolerated(declared: Fraction, tolerance: Tolerance) -> Limits:
     """Limits that a tolerance puts around a declared value.
@@ -86,8 +89,7 @@ def verification_limit(question: Question, quantity: str) -> Limit:
     unit = question.clause.unit
     ends = [number_text(end) for end in (limits.lower, limits.upper) if end is not None]
     shown = say("{low} to {high}", low=ends[0], high=ends[1]) if len(ends) > 1 else ends[0]
-    step = say(
-        "Declared {declared}, tolerance {tolerance}: {limit} ({source}).",
+    step = (_NO_TOLERANCE if tolerance.is_zero else _WITH_TOLERANCE).format(
         declared=quantity_text(declared.value, unit),
         tolerance=tolerance.text(unit),
         limit=compared_text(question.clause.comparison, with_unit(shown, unit)),

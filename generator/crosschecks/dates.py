@@ -63,8 +63,8 @@ def report_older_than_model(evidence: LampEvidence) -> Iterator[Finding]:
         say(
             "report of {report}, placed on the market on {market}: the report is {days} days "
             "older, up to {usual} are usual ({reason})",
-            report=report.isoformat(),
-            market=market.isoformat(),
+            report=report,
+            market=market,
             days=days,
             usual=usual.words,
             reason=usual.reason,
@@ -86,8 +86,8 @@ def report_after_assessment(evidence: LampEvidence) -> Iterator[Finding]:
         Severity.CONTRADICTION,
         say(
             "report of {report}, assessment of {assessed}: the report is {days} days younger",
-            report=report.isoformat(),
-            assessed=assessed.isoformat(),
+            report=report,
+            assessed=assessed,
             days=days,
         ),
         Decimal(days),

@@ -40,7 +40,8 @@ def number(value: Decimal, digits: int = 5, *, signed: bool = False) -> Numeral:
             value = value.quantize(step, rounding=ROUND_HALF_EVEN)
     if not value and digits < _MOST_DIGITS:
         value = Decimal(0)
-    return numeral(f"{value:+f}" if signed else f"{value:f}")
+    text = f"{value:+f}" if signed else f"{value:f}"
+    return numeral(text.replace("-", "\u2212"))
 
 
 def with_unit(text: str, unit: str) -> str:

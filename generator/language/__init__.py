@@ -9,10 +9,13 @@ text. Sheets say a message in the language that is being spoken
 from __future__ import annotations
 
 from generator.language.messages import (
+    SEMICOLON,
+    Capital,
     Message,
     Numeral,
     Passage,
     Sentence,
+    capital,
     joined,
     numeral,
     say,
@@ -23,10 +26,13 @@ from generator.language.messages import (
 )
 
 __all__ = [
+    "SEMICOLON",
+    "Capital",
     "Message",
     "Numeral",
     "Passage",
     "Sentence",
+    "capital",
     "joined",
     "numeral",
     "say",

@@ -12,18 +12,22 @@ from __future__ import annotations
 from collections.abc import Callable, Iterable, Iterator, Mapping
 from contextlib import contextmanager
 from contextvars import ContextVar
+from datetime import date
 from decimal import Decimal
 from string import Formatter
 from types import MappingProxyType
 from typing import Any, Protocol, Self, SupportsIndex
 
 __all__ = [
+    "SEMICOLON",
+    "Capital",
     "Message",
     "Numeral",
     "Passage",
     "Sentence",
     "Speaker",
     "Worded",
+    "capital",
     "joined",
     "numeral",
     "say",
@@ -48,6 +52,9 @@ class Speaker(Protocol):
 
     def number(self, text: str) -> str:
         """Give a number, in English notation, in the notation of the language."""
+
+    def day(self, day: date) -> str:
+        """Give a date in the words of the language."""
 
 
 _SPEAKER: ContextVar[Speaker | None] = ContextVar("speaker", default=None)
@@ -217,7 +224,32 @@ def _as_sentence(text: str) -> str:
     text = text.strip()
     if not text:
         return ""
-    return f"{text[0].upper()}{text[1:]}{'' if text.endswith(('.', '?', '!')) else '.'}"
+    return f"{_with_capital(text)}{'' if text.endswith(('.', '?', '!')) else '.'}"
+
+
+class Capital(Worded):
+    """A text with a capital at its beginning."""
+
+    __slots__ = ("text",)
+
+    text: str
+
+    def __new__(cls, text: str) -> Self:
+        """Write the English text and keep what it is made of."""
+        written = super().__new__(cls, _with_capital("".join(text)))
+        written.text = text
+        return written
+
+    def said_by(self, speaker: Speaker, renumber: Renumber | None = None) -> str:
+        """Say the text in the language of the speaker."""
+        return _with_capital(_said(self.text, speaker, renumber))
+
+    def __reduce_ex__(self, protocol: SupportsIndex) -> tuple[Any, ...]:
+        return (Capital, (self.text,))
+
+
+def _with_capital(text: str) -> str:
+    return f"{text[:1].upper()}{text[1:]}"
 
 
 def _said(value: str, speaker: Speaker, renumber: Renumber | None) -> str:
@@ -242,6 +274,8 @@ def _filled(
 def _value_text(value: Any, spec: str, speaker: Speaker | None, renumber: Renumber | None) -> str:
     if isinstance(value, Worded):
         return format("".join(value) if speaker is None else value.said_by(speaker, renumber), spec)
+    if isinstance(value, date) and speaker is not None:
+        return speaker.day(value)
     text = format(value, spec)
     if isinstance(value, int | float | Decimal) and not isinstance(value, bool):
         text = text.replace("-", "\u2212")
@@ -315,6 +349,17 @@ def sentence(text: str) -> Sentence:
     return Sentence(text)
 
 
+def capital(text: str) -> Capital:
+    """Give a text a capital, in whatever language it is said.
+
+    Parameters
+    ----------
+    text
+        A message, or other text.
+    """
+    return Capital(text)
+
+
 def numeral(text: str) -> Numeral:
     """Mark text as a number, so that it takes the notation of the language.
 
@@ -360,5 +405,13 @@ class _English:
         """Leave a number as it is."""
         return text
 
+    def day(self, day: date) -> str:
+        """Leave a date as data files write it."""
+        return day.isoformat()
+
 
 _ENGLISH = _English()
+
+
+SEMICOLON = say_as("between parts", "; ")
+"""What stands between the parts of a list, with the space that the language puts before it."""

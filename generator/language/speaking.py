@@ -59,6 +59,7 @@ class _Speaker:
     """Says messages from a catalogue; what it lacks is said in English."""
 
     def __init__(self, tag: str) -> None:
+        self._tag = tag
         self._catalogue = _catalogue(tag)
         self._decimal_sign = _locale(tag).number_symbols["latn"]["decimal"]
 
@@ -75,6 +76,10 @@ class _Speaker:
     def number(self, text: str) -> str:
         """Give a number with the decimal sign of the language."""
         return text.replace(".", self._decimal_sign)
+
+    def day(self, day: date) -> str:
+        """Give a date in words."""
+        return _date_in(self._tag, day)
 
 
 @cache
@@ -120,9 +125,13 @@ def date_in_words(day: date) -> str:
     day
         The date, for instance 1 September 2021; its day and month stay on one line.
     """
+    return _date_in(spoken_language(), day)
+
+
+def _date_in(tag: str, day: date) -> str:
     from babel.dates import format_date
 
-    return format_date(day, "long", locale=_locale(spoken_language())).replace(" ", _SPACE, 1)
+    return format_date(day, "long", locale=_locale(tag)).replace(" ", _SPACE, 1)
 
 
 def decimal_sign() -> str:
@@ -131,7 +140,7 @@ def decimal_sign() -> str:
 
 
 def language_name(tag: str) -> str:
-    """Give the name of a language in that language.
+    """Give the name of a language in that language, with a capital as in a list.
 
     Parameters
     ----------
@@ -139,4 +148,5 @@ def language_name(tag: str) -> str:
         One of :data:`LANGUAGES`.
     """
     locale = _locale(tag)
-    return str(locale.languages[locale.language])
+    name = str(locale.languages[locale.language])
+    return f"{name[:1].upper()}{name[1:]}"

@@ -8,7 +8,7 @@ from typing import Annotated, Any, Literal, Self
 
 from pydantic import BeforeValidator, Field, ValidationError, model_validator
 
-from generator.language import say
+from generator.language import capital, say
 from generator.lawbook.leaf_parts import (
     Basis,
     Comparison,
@@ -29,7 +29,7 @@ from generator.lawbook.leaf_parts import (
     no_overlap,
     quantity_names,
 )
-from generator.lawbook.leaf_text import Capital, source_of
+from generator.lawbook.leaf_text import source_of
 from generator.quantities import QUANTITIES
 from generator.records.clause import BUYER, Clause, Condition, Constant, Exemption, Source
 
@@ -291,7 +291,7 @@ class BuyerLeaf(_Judged):
             source = Source(say("Requirement of the buyer"))
         return Clause(
             id=clause_id,
-            title=self.title or Capital(QUANTITIES[self.quantities[0]].label),
+            title=self.title or capital(QUANTITIES[self.quantities[0]].label),
             regime=self.regime,
             kind="clause",
             quantities=tuple(self.quantities),

@@ -8,13 +8,11 @@ the place and the act that amended it.
 from __future__ import annotations
 
 import re
-from typing import Any, Self, SupportsIndex
 
 from generator.language import Message, joined
-from generator.language.messages import Renumber, Speaker, Worded
 from generator.records.clause import Source
 
-__all__ = ["TRANSLATED_KEYS", "Capital", "message_of", "note_of", "pieces", "source_of"]
+__all__ = ["TRANSLATED_KEYS", "message_of", "note_of", "pieces", "source_of"]
 
 TRANSLATED_KEYS = frozenset({"title", "note", "act", "annex", "point", "regime"})
 """Keys of a leaf whose texts are printed."""
@@ -24,38 +22,6 @@ _AMENDED = re.compile(
     r"(?:(?P<place>.*), )?(?P<amendment>as amended by (?:Delegated )?Regulation \(EU\) "
     r"(?P<act>\d+/\d+))"
 )
-
-
-class Capital(Worded):
-    """A text with a capital at its beginning, in whatever language it is said.
-
-    Parameters
-    ----------
-    text
-        A message, or other text.
-    """
-
-    __slots__ = ("text",)
-
-    text: str
-
-    def __new__(cls, text: str) -> Self:
-        """Write the English text and keep what it is made of."""
-        written = super().__new__(cls, _capital("".join(text)))
-        written.text = text
-        return written
-
-    def said_by(self, speaker: Speaker, renumber: Renumber | None = None) -> str:
-        """Say the text in the language of the speaker."""
-        said = self.text.said_by(speaker, renumber) if isinstance(self.text, Worded) else self.text
-        return _capital(said)
-
-    def __reduce_ex__(self, protocol: SupportsIndex) -> tuple[Any, ...]:
-        return (Capital, (self.text,))
-
-
-def _capital(text: str) -> str:
-    return f"{text[:1].upper()}{text[1:]}"
 
 
 def pieces(key: str, text: str) -> tuple[str, ...]:

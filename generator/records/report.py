@@ -11,7 +11,7 @@ from dataclasses import dataclass
 from datetime import date
 from typing import TYPE_CHECKING
 
-from generator.language import joined, say, say_counted
+from generator.language import SEMICOLON, joined, say, say_counted
 from generator.language.messages import Worded
 
 if TYPE_CHECKING:
@@ -130,7 +130,7 @@ def _lamps(assessment: Assessment) -> str:
         count = len(campaign.units_of(lamp.lamp_id))
         units = say_counted("{count} unit", "{count} units", count)
         described.append(joined(", ", (_joined(lamp.bidder, lamp.model) or lamp.lamp_id, units)))
-    return joined("; ", described)
+    return joined(SEMICOLON, described)
 
 
 def _day(day: date | None) -> str:
@@ -158,7 +158,7 @@ def _work(
     )
     yield _item("deviations", say("Deviations from the methods"), deviations, "7.8.2.1 n")
     yield _item("conditions", say("Conditions of the test"), report.conditions, "7.8.3.1 a")
-    equipment = joined("; ", (item.text for item in report.equipment))
+    equipment = joined(SEMICOLON, (item.text for item in report.equipment))
     yield _item(
         "equipment", say("Equipment, calibration and traceability"), equipment, "6.5, 7.5.1"
     )
@@ -215,7 +215,7 @@ def _statements(assessment: Assessment, report: ReportTable) -> Iterator[ReportI
     signatory = _joined(report.signatory, report.signatory_function)
     yield _item("signatory", say("Person who authorises the report"), signatory, "7.8.2.1 o")
     yield _item("opinions", say("Opinions"), report.opinions, "7.8.7", needed=False)
-    history = joined("; ", map(_replaced, report.amendments))
+    history = joined(SEMICOLON, map(_replaced, report.amendments))
     yield _item("amendments", say("Amendments"), history, "7.8.8", needed=False)
 
 

@@ -41,9 +41,7 @@ class Equipment(_Table):
             parts.append(say("serial {number}", number=self.serial))
         day = self.calibrated_on
         parts.append(
-            say("calibrated on {day}", day=day.isoformat())
-            if day
-            else say("calibration date missing")
+            say("calibrated on {day}", day=day) if day else say("calibration date missing")
         )
         if self.calibration_certificate:
             parts.append(say("certificate {number}", number=self.calibration_certificate))

@@ -7,7 +7,7 @@ import re
 from collections.abc import Iterable, Mapping
 from decimal import Decimal
 
-from generator.language import joined, say, say_counted, told
+from generator.language import SEMICOLON, joined, say, say_counted, told
 from generator.quantities import QUANTITIES, quantity
 from generator.records.figure import Figure, Grade
 from generator.records.verdict import Basis, Verdict, VerdictWord
@@ -45,6 +45,7 @@ __all__ = [
     "phrase",
     "severest",
     "spread_text",
+    "verdict_count",
     "verdict_ruler",
     "verdict_text",
 ]
@@ -118,7 +119,7 @@ def _detail(figure: Figure, decimals: int) -> str:
     if figure.method:
         parts.append(figure.method)
     remarks = (in_words(remark, decimals).rstrip(".") for remark in figure.remarks)
-    return joined("; ", (*parts, *remarks))
+    return joined(SEMICOLON, (*parts, *remarks))
 
 
 def spread_text(spread: Decimal, decimals: int) -> str:
@@ -275,13 +276,15 @@ def severest(verdicts: Iterable[Verdict]) -> Verdict | None:
 def count_texts(counts: dict[VerdictWord, int]) -> tuple[VerdictCount, ...]:
     """Write how many verdicts there are of each word, the severest first."""
     return tuple(
-        VerdictCount(_counted(word, counts.get(word, 0)), MARKS[word], str(counts.get(word, 0)))
+        VerdictCount(
+            verdict_count(word, counts.get(word, 0)), MARKS[word], str(counts.get(word, 0))
+        )
         for word in _SEVERITY
     )
 
 
-def _counted(word: VerdictWord, count: int) -> str:
-    """Count and word; English has no plural of them, other languages have."""
+def verdict_count(word: VerdictWord, count: int) -> str:
+    """Write how many verdicts of a word; English has no plural of it, other languages have."""
     return {
         VerdictWord.PASS: say_counted("{count} pass", "{count} pass", count),
         VerdictWord.FAIL: say_counted("{count} fail", "{count} fail", count),

@@ -3,13 +3,22 @@
 from __future__ import annotations
 
 import dataclasses
+import re
 from typing import Any, TypeVar
 
 from generator.language import told
+from generator.sheets.number_format import grouped
 
 __all__ = ["finished"]
 
 Described = TypeVar("Described")
+
+_NO_BREAK_SPACE = "\u00a0"
+_BEFORE_UNIT = re.compile(r"(?<=\d) (?=(?:%|(?:k?Wh?|lm|lx|cd|nm|mA|Hz|kHz|mm|K|V|A|h|s)\b))")
+"""The space between a number and its unit, where no line may end."""
+
+_BEFORE_DEGREE = re.compile(r"(?<=\d)[ \u00a0](?=°(?!C))")
+"""No space stands before the sign of the degree of angle. Source: the SI brochure, 5.4.3."""
 
 
 def finished(described: Described) -> Described:
@@ -31,7 +40,11 @@ def finished(described: Described) -> Described:
 
 def _finished(value: Any) -> Any:
     if isinstance(value, str):
-        return told(value)
+        said = told(value, grouped)
+        # Drawings and data for the scripts are no running text: a space there may be syntax.
+        if said[:1] in ("<", "{"):
+            return said
+        return _BEFORE_DEGREE.sub("", _BEFORE_UNIT.sub(_NO_BREAK_SPACE, said))
     if isinstance(value, tuple):
         return tuple(_finished(item) for item in value)
     if dataclasses.is_dataclass(value) and not isinstance(value, type):

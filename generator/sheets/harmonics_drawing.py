@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from decimal import Decimal
 
-from generator.language import joined, say, say_as, sentence
+from generator.language import SEMICOLON, joined, say, say_as, sentence
 from generator.quantities import QUANTITIES
 from generator.records.clause_words import compared_text, with_unit
 from generator.records.curves import HarmonicComb
@@ -94,7 +94,7 @@ def harmonics_drawing(
 
 
 def _listed(parts: Iterable[str]) -> str:
-    return joined("; ", [part for part in parts if part])
+    return joined(SEMICOLON, [part for part in parts if part])
 
 
 def _finding(limits: Sequence[HarmonicLimit]) -> Iterable[str]:

@@ -7,7 +7,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 from decimal import Decimal
 
-from generator.language import Message, joined, say, say_as, sentence
+from generator.language import SEMICOLON, Message, joined, say, say_as, sentence
 from generator.records.assessment import Assessment
 from generator.records.curves import LampCurves, SpectrumCurve
 from generator.records.figure import Figure, FigureSet
@@ -87,7 +87,7 @@ class _Lamp:
 
 def _sentence(parts: Iterable[str], otherwise: str) -> str:
     found = [part for part in parts if part]
-    return sentence(joined("; ", found)) if found else otherwise
+    return sentence(joined(SEMICOLON, found)) if found else otherwise
 
 
 def lamp_drawings(

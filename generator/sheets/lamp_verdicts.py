@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
 
-from generator.language import Passage, joined, told
+from generator.language import SEMICOLON, Passage, joined, told
 from generator.records.clause import BUYER
 from generator.records.verdict import Basis, Verdict, VerdictWord
 from generator.sheets.description import Pair, VerdictText
@@ -77,7 +77,7 @@ def _left_out(verdicts: Iterable[Verdict]) -> tuple[Pair, ...]:
     reasons: dict[str, dict[str, None]] = {}
     for item in verdicts:
         reasons.setdefault(told(item.reason).rstrip("."), {})[item.title] = None
-    return tuple(Pair(joined("; ", titles), reason) for reason, titles in reasons.items())
+    return tuple(Pair(joined(SEMICOLON, titles), reason) for reason, titles in reasons.items())
 
 
 def clause_text(verdicts: Sequence[Verdict], colours: Palette) -> ClauseText:
@@ -117,7 +117,7 @@ def _ruler(
     places = {basis: distance_of(item) if item else None for basis, item in chosen.items()}
     if not any(places.values()):
         return ""
-    said = joined("; ", (_judged(text) for basis, text in shown.items() if places[basis]))
+    said = joined(SEMICOLON, (_judged(text) for basis, text in shown.items() if places[basis]))
     found = chosen[Basis.DETERMINED]
     return draw_margin_ruler(
         places[Basis.DETERMINED],
@@ -167,7 +167,7 @@ def verdict_notes(groups: Iterable[VerdictGroup]) -> tuple[Pair, ...]:
 
 
 def _first_titles(titles: list[str]) -> str:
-    named = joined("; ", titles[:_MOST_TITLES])
+    named = joined(SEMICOLON, titles[:_MOST_TITLES])
     left = len(titles) - _MOST_TITLES
     return AND_MORE.format(titles=named, count=left) if left > 0 else named
 

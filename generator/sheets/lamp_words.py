@@ -192,6 +192,13 @@ UNCERTAINTY_NAMES = {
     "wavelength_scale_nm": (say("wavelength scale"), "nm"),
     "spectral_noise_percent": (say("noise of a spectrum"), say("% of its peak")),
     "spectral_calibration_percent": (say("calibration of a spectrum"), "%"),
+    "light_noise_percent": (say("noise of a light record"), say("% of its mean")),
+    "light_offset_percent": (say("offset of a light record"), say("% of its mean")),
+    "time_base_percent": (say("time base"), "%"),
+    "voltage_current_skew_us": (say("delay between voltage and current"), "\u00b5s"),
+    "angle_deg": (say("angles of the goniophotometer"), "\u00b0"),
+    "flux_repeatability_percent": (say("repeatability of the flux"), "%"),
+    "chromaticity_repeatability": (say("repeatability of u\u2032 and v\u2032"), ""),
 }
 """Stated uncertainties that belong to no quantity -> name and unit."""
 

@@ -21,6 +21,7 @@ __all__ = [
     "decimals_of",
     "declared_text",
     "exact_text",
+    "grouped",
     "limits_in",
     "range_text",
     "readable",
@@ -34,6 +35,7 @@ _MOST_DECIMALS = 10
 _LONGEST_DECLARED = 6
 _DERIVED_DIGITS = 4
 _LONG_NUMBER = re.compile(r"(?<![\w.\-/])[\u2212-]?\d+\.\d{4,}(?![\w.]*\w)")
+_LONG_WHOLE = re.compile(r"\d{5,}(?:\.\d+)?")
 _RANGE = re.compile(r"(-?\d+(?:\.\d+)?) to (-?\d+(?:\.\d+)?)")
 _GROUPED_FROM = 5
 _ONE_DIGIT_FROM = 3
@@ -92,6 +94,17 @@ def shown(value: Decimal, decimals: int) -> str:
 def exact_text(value: Decimal) -> str:
     """Write a value with exactly the decimals it was given."""
     return _written(value)
+
+
+def grouped(number: str) -> str:
+    """Set the thousands of a whole number apart; anything else stays.
+
+    Parameters
+    ----------
+    number
+        A number as text, in English notation.
+    """
+    return _written(Decimal(number)) if _LONG_WHOLE.fullmatch(number) else number
 
 
 def _written(value: Decimal) -> str:
@@ -188,7 +201,7 @@ def readable(text: str, decimals: int, known: Mapping[Decimal, str] | None = Non
         return shown(value, max(decimals, _decimals_of_digits(value)))
 
     def shortened(part: str) -> str:
-        return _LONG_NUMBER.sub(short, part)
+        return grouped(_LONG_NUMBER.sub(short, part))
 
     return shortened(told(text, shortened))
 

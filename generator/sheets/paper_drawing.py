@@ -32,7 +32,8 @@ _KNOWN = {
     "path": _PAINT | {"d", "fill-opacity"},
     "rect": _PAINT | {"x", "y", "width", "height"},
     "circle": _PAINT | {"cx", "cy", "r"},
-    "text": {"class", "fill", "x", "y", "text-anchor", "font-weight", "font-size"},
+    "text": {"class", "fill", "x", "y", "text-anchor", "font-weight", "font-size"}
+    | {"stroke", "stroke-width"},
     "g": {"font-family", "font-size"},
     "linearGradient": {"id", "gradientUnits", "x1", "y1", "x2", "y2"},
 }
@@ -53,6 +54,7 @@ class _Label:
     family: str
     size: float
     weight: int
+    bordered: bool
 
 
 @dataclass(frozen=True, slots=True)
@@ -230,6 +232,12 @@ class _Reader:
         if not element.text:
             return
         self._state(fill=f"{_colour(attributes.get('fill', '#000000'))} rg")
+        if "stroke" in attributes:
+            self._state(
+                stroke=f"{_colour(attributes['stroke'])} RG",
+                width=f"{float(attributes['stroke-width']):g} w",
+                dash="[] 0 d",
+            )
         self.close()
         self.marks.append(
             _Label(
@@ -239,6 +247,7 @@ class _Reader:
                 family,
                 size,
                 int(attributes.get("font-weight", "400")),
+                "stroke" in attributes,
             )
         )
 
@@ -330,8 +339,12 @@ class PaperDrawing:
         share = {"start": 0.0, "middle": 0.5, "end": 1.0}[label.anchor]
         x, y = label.at
         stream.begin_text()
+        if label.bordered:
+            stream.stream.append(b"2 Tr")
         place = matrix(d=-1, e=x - share * width, f=y)
         draw_first_line(stream, text_box(layout, style), "none", "none", place)
+        if label.bordered:
+            stream.stream.append(b"0 Tr")
         stream.end_text()
 
 

@@ -13,11 +13,14 @@ from generator.language import told
 from generator.language.speaking import speaking
 from generator.sheets.description import Note
 from generator.sheets.drawings.drawing import Drawing
+from generator.sheets.figure_text import verdict_count
 from generator.sheets.lamp_description import LampSheet, VerdictGroup
 from generator.sheets.lamp_words import FOLDED
+from generator.sheets.words import MARKS
 
 __all__ = ["BUDGETS", "SHORT_BUDGETS", "Budget", "budgets_for", "fitted"]
 
+_WORDS = {mark: word for word, mark in MARKS.items()}
 _ORDER = ("fail", "inconclusive", "not-measured", "pass", "not-applicable")
 _FIRST_DRAWINGS = ("spectrum", "light", "mains", "rendering", "white", "watts")
 _THEN_DRAWINGS = ("harmonics", "ageing", "intensity", "plane", "hues")
@@ -67,6 +70,7 @@ SHORT_BUDGETS = (
     Budget(rows=38, note_length=900, drawings=6, entries=0, dense=True),
     Budget(rows=38, note_length=700, drawings=4, entries=0, dense=True),
     Budget(rows=38, note_length=0, drawings=4, entries=0, dense=True),
+    Budget(rows=30, note_length=700, drawings=4, entries=0, dense=True),
     Budget(rows=22, note_length=700, drawings=4, entries=0, dense=True),
     Budget(rows=12, note_length=300, drawings=4, entries=0, dense=True),
     Budget(rows=8, note_length=0, drawings=4, entries=0, dense=True),
@@ -156,8 +160,8 @@ def _fold(group: VerdictGroup, kept: set[int]) -> VerdictGroup:
     if not left:
         return group
     shown = tuple(clause for clause in group.clauses if id(clause) in kept)
-    words = Counter(text.word for clause in left for text in clause.verdicts)
-    counted = ", ".join(f"{count} {word}" for word, count in words.items())
+    marks = Counter(text.mark for clause in left for text in clause.verdicts)
+    counted = ", ".join(told(verdict_count(_WORDS[mark], count)) for mark, count in marks.items())
     return dataclasses.replace(
         group, clauses=shown, folded=told(FOLDED["verdicts"].format(counted=counted))
     )

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from decimal import Decimal
 
-from generator.language import joined, say, say_counted
+from generator.language import SEMICOLON, joined, say, say_counted
 from generator.records.risk import CampaignRisk
 from generator.sheets.description import Pair, RiskStatement, RiskText
 from generator.sheets.number_format import shown
@@ -83,4 +83,4 @@ def _unknown(risks: Sequence[CampaignRisk]) -> tuple[Pair, ...]:
         if _largest(item) is None:
             title = say("{title} ({regime})", title=item.title, regime=item.regime)
             reasons.setdefault(item.reason or _NO_REASON, {})[title] = None
-    return tuple(Pair(joined("; ", titles), reason) for reason, titles in reasons.items())
+    return tuple(Pair(joined(SEMICOLON, titles), reason) for reason, titles in reasons.items())

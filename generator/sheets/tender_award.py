@@ -166,9 +166,8 @@ def certainty_blocks(
         bid=names[first.lamp_id],
         share=chance(first.ranks[0]),
         trials=number(Decimal(sure.trials), 0),
-        seed=sure.seed,
+        seed=str(sure.seed),
     )
-    yield ParagraphBlock(says)
     yield DrawingBlock(_drawing(sure, names, says, colours))
     yield _chance_table(sure, names)
     if sure.swaps:

@@ -6,7 +6,7 @@ from collections.abc import Iterator, Mapping, Sequence
 from dataclasses import replace
 from decimal import Decimal
 
-from generator.language import joined, say, say_as, say_counted, told
+from generator.language import SEMICOLON, joined, say, say_as, say_counted, told
 from generator.records.tender import BidResult, BreakEven, CostItem, LifeCycleCost, LotResult
 from generator.records.tender_settings import Sensitivity
 from generator.sheets.drawings.drawing import DataTable, Drawing, Palette
@@ -44,7 +44,7 @@ def cost_blocks(lot: LotResult, titles: Mapping[str, str], currency: str) -> Ite
     costed = [item for item in lot.bids if item.cost is not None]
     yield HeadingBlock(say("Life-cycle cost"), 3)
     withheld = [
-        say("{bid}: {text}.", bid=item.shown_as, text=joined("; ", item.withheld))
+        say("{bid}: {text}.", bid=item.shown_as, text=joined(SEMICOLON, item.withheld))
         for item in lot.bids
         if item.withheld
     ]
@@ -248,7 +248,7 @@ def energy_blocks(lot: LotResult, titles: Mapping[str, str]) -> Iterator[Block]:
     ]
     for emission in bases:
         basis = EMISSION_BASES[emission.basis]
-        headings += [say("{basis}, t CO2e", basis=basis), say("saved, t CO2e")]
+        headings += [say("{basis}, t CO\u2082e", basis=basis), say("saved, t CO\u2082e")]
     yield TableBlock(_energy_caption(lot, titles), tuple(headings), tuple(rows))
     factors = tuple(
         _FACTOR.format(

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping, Sequence
 
-from generator.language import joined, say, say_as
+from generator.language import SEMICOLON, joined, say, say_as
 from generator.records.tender import BidResult, Eligibility, LotResult, Outcome
 from generator.records.tender_settings import TenderSettings
 from generator.sheets.tender_description import (
@@ -43,7 +43,7 @@ def asked_for(settings: TenderSettings, titles: Mapping[str, str]) -> tuple[str,
     if tender.accreditation_required:
         words.append(ASKED_REPORTS["accreditation"])
     if mandatory:
-        words.append(ASKED_REPORTS["clauses"].format(clauses=joined("; ", mandatory)))
+        words.append(ASKED_REPORTS["clauses"].format(clauses=joined(SEMICOLON, mandatory)))
     else:
         words.append(ASKED_REPORTS["own"])
     return (*words, ASKED_REPORTS["findings"])
@@ -143,7 +143,7 @@ def eligibility_blocks(
                 say(
                     "{bid}. Checks passed: {checks}.",
                     bid=item.shown_as,
-                    checks=joined("; ", _titled(item.eligibility.passed, titles)),
+                    checks=joined(SEMICOLON, _titled(item.eligibility.passed, titles)),
                 )
                 for item in passed
             )
@@ -160,7 +160,9 @@ def _refused(bids: Sequence[BidResult]) -> Iterator[Block]:
     further = tuple(
         OUTCOME_NOTES["further"].format(
             bid=item.shown_as,
-            titles=joined("; ", dict.fromkeys(part.title for part in item.eligibility.questions)),
+            titles=joined(
+                SEMICOLON, dict.fromkeys(part.title for part in item.eligibility.questions)
+            ),
         )
         for item in bids
         if item.eligibility.questions

@@ -14,6 +14,7 @@ from generator.records.tender import LotResult, Tender
 from generator.records.tender_settings import TenderSettings
 from generator.sheets.description import Pair, SheetFrame
 from generator.sheets.drawings.drawing import Palette
+from generator.sheets.number_format import date_words
 from generator.sheets.sheet_frame import sheet_frame
 from generator.sheets.shown_names import ShownNames
 from generator.sheets.tender_award import award_blocks, certainty_blocks
@@ -188,7 +189,7 @@ def _facts(assessment: Assessment) -> Iterator[Pair]:
     settings = assessment.campaign.settings
     use, tender = settings.use, settings.tender
     yield Pair(say("Client"), settings.campaign.client or say("not stated"))
-    yield Pair(say("Law as it stood on"), assessment.assessed_on.isoformat())
+    yield Pair(say("Law as it stood on"), date_words(assessment.assessed_on))
     if use.years is not None:
         study = say_counted(
             "{count} year, {prices}",
@@ -214,7 +215,7 @@ def _facts(assessment: Assessment) -> Iterator[Pair]:
         yield Pair(say("Energy"), price)
     names = say("Code names") if assessment.shown_bidders else say("Names of bidders and models")
     yield Pair(say("Bids are shown by"), names)
-    drawn = say("seed {seed}, {trials} trials", seed=tender.seed, trials=tender.trials)
+    drawn = say("seed {seed}, {trials} trials", seed=str(tender.seed), trials=tender.trials)
     yield Pair(say("Random numbers"), drawn)
 
 

@@ -7,7 +7,7 @@ from decimal import Decimal
 from generator.language import say, say_as, told
 from generator.quantities import QUANTITIES
 from generator.records.tender import money
-from generator.sheets.number_format import shown
+from generator.sheets.number_format import grouped, shown
 
 __all__ = [
     "NONE",
@@ -100,7 +100,7 @@ def worded(text: str) -> str:
 
     Gives plain text in the language that is being spoken.
     """
-    said = told(text)
+    said = told(text, grouped)
     for name in sorted((*_CRITERIA, *QUANTITIES), key=len, reverse=True):
         if "_" in name and name in said:
             said = said.replace(name, told(criterion_label(name)))

@@ -182,7 +182,7 @@ TENDER_CAUTIONS = (
     Caution(
         say("Decision"),
         say(
-            "This report supports a decision and does not take it. The contracting authority "
+            "This document supports a decision and does not take it. The contracting authority "
             "decides, after the questions are answered, and answers for the reasons it gives."
         ),
     ),

@@ -39,6 +39,7 @@ LAMPS = (
 )
 """Lamps of the demo issued here: all kinds, complete ones and sparse ones."""
 
+SPOKEN = '["en", "de"]'
 SMALL = ("veldrune-gu10-930", "sundrel-a70-stock")
 """A full lamp, and one to which hardly a clause applies."""
 
@@ -131,6 +132,14 @@ def part_of_the_demo() -> Callable[[Path, Collection[str]], Path]:
     return _reduced
 
 
+def _speak(campaign: Path, languages: str) -> None:
+    table = campaign / "campaign.toml"
+    text = table.read_text(encoding="utf-8")
+    text, count = re.subn(r"(?m)^languages = .*", f"languages = {languages}", text)
+    assert count == 1
+    table.write_text(text, encoding="utf-8")
+
+
 def _reduced(target: Path, lamps: Collection[str]) -> Path:
     shutil.copytree(DEMO, target)
     units = set()
@@ -145,6 +154,7 @@ def _reduced(target: Path, lamps: Collection[str]) -> Path:
             writer.writeheader()
             writer.writerows(kept)
     known = units | set(lamps) | {"campaign"}
+    _speak(target, '["en"]')
     for folder in ("spectra", "light", "mains", "intensity", "notes"):
         for path in (target / folder).iterdir():
             if path.name.split(".")[0] not in known:
@@ -177,6 +187,7 @@ def small_issue(tmp_path_factory: pytest.TempPathFactory) -> Callable[[str], Pat
         )
         assert count == 1
         table.write_text(text, encoding="utf-8")
+        _speak(campaign, SPOKEN)
         return issue(campaign, target=folder / "out", pdf=False).folder
 
     return issued_with
@@ -184,11 +195,12 @@ def small_issue(tmp_path_factory: pytest.TempPathFactory) -> Callable[[str], Pat
 
 @pytest.fixture(scope="session")
 def pages(small_issue: Callable[[str], Path]) -> list[Path]:
-    """One page of every type: comparison, report, letter, and a lamp in every theme."""
+    """One page of every type: comparison, report, letter, a lamp in every theme; some in German."""
     tender = small_issue("tender")
     found = [tender / "index.html", tender / "tender" / "report.html"]
     found.append(min((tender / "tender" / "letters").glob("*.html")))
     found += [tender / "lamps" / f"{name}.html" for name in SMALL]
+    found += [tender / "de" / name for name in ("index.html", f"lamps/{SMALL[0]}.html")]
     return [
         *found,
         *(

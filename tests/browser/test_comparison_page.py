@@ -273,7 +273,7 @@ def test_any_two_figures_against_each_other(page, measured):
     page.get_by_label("Across").select_option("colour temperature")
     page.get_by_label("Up").select_option("colour rendering")
     title = page.locator("#pair-plot svg > title")
-    title.filter(has_text="colour temperature against colour rendering").wait_for(state="attached")
+    title.filter(has_text="colour rendering against colour temperature").wait_for(state="attached")
     lamps = {lamp for lamp, name in measured if name == "cct_k"}
     drawn = page.locator("#pair-numbers tbody tr").count()
     assert drawn == len(lamps)

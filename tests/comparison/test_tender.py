@@ -7,6 +7,7 @@ import math
 import re
 from collections.abc import Iterator, Mapping
 from dataclasses import replace
+from datetime import date
 from decimal import Decimal
 from string import Formatter
 from typing import Any
@@ -457,6 +458,9 @@ class Blanked:
 
     def number(self, text: str) -> str:
         return text.replace(".", ",")
+
+    def day(self, day: date) -> str:
+        return day.isoformat()
 
 
 def texts_of(record: Any, fields: frozenset[str], name: str = "") -> Iterator[str]:

@@ -5,6 +5,7 @@ from __future__ import annotations
 import re
 from collections.abc import Callable, Iterator, Mapping
 from dataclasses import replace
+from datetime import date
 from decimal import Decimal
 from typing import Any
 
@@ -71,6 +72,9 @@ class Marker:
 
     def number(self, text: str) -> str:
         return text.replace(".", ",")
+
+    def day(self, day: date) -> str:
+        return day.isoformat()
 
 
 def printed(judgement: Judgement) -> Iterator[str]:

@@ -41,6 +41,9 @@ class Blanked:
     def number(self, text: str) -> str:
         return text.replace(".", ",")
 
+    def day(self, day: date) -> str:
+        return day.isoformat()
+
 
 class Bench:
     """Collects lamps, units, figures and raw data, and asks the room for its findings."""

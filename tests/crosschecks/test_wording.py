@@ -28,7 +28,7 @@ def test_numbers_are_short_and_without_exponent(value: str, digits: int, text: s
 
 def test_signed_numbers() -> None:
     assert number(Decimal(5), 3, signed=True) == "+5"
-    assert number(Decimal(-5), 3, signed=True) == "-5"
+    assert number(Decimal(-5), 3, signed=True) == "\u22125"
 
 
 def test_values_carry_the_unit_of_the_catalogue() -> None:

@@ -168,14 +168,8 @@ def test_polish_counts_have_three_forms():
 
 
 def test_languages_have_their_own_names():
-    assert [language_name(tag).lower() for tag in LANGUAGES] == [
-        "english",
-        "deutsch",
-        "français",
-        "español",
-        "italiano",
-        "polski",
-    ]
+    names = [language_name(tag) for tag in LANGUAGES]
+    assert names == ["English", "Deutsch", "Français", "Español", "Italiano", "Polski"]
 
 
 def test_an_unknown_language_is_refused():

@@ -40,6 +40,9 @@ class Backwards:
     def number(self, text):
         return text.replace(".", ",")
 
+    def day(self, day):
+        return day.isoformat()
+
 
 def test_a_message_is_its_english_text():
     message = say("{first} before {second}", first="a", second=Decimal("1.50"))

@@ -7,18 +7,23 @@ names, ids, symbols, titles of documents, the campaign's own words.
 from __future__ import annotations
 
 import dataclasses
+import io
 import re
 from collections.abc import Iterator
 from html.parser import HTMLParser
 from pathlib import Path
 
+import pikepdf
 import pytest
 
-from generator.datasets import sources
+from generator.datasets import method, sources
 from generator.language import speaking
+from generator.language.speaking import LANGUAGES
+from generator.metrics import curves_of
 from generator.pipeline import assess, issuing
 from generator.quantities import QUANTITIES
-from generator.sheets import number_format, render_html, themes
+from generator.records.comparison import SheetContext
+from generator.sheets import describe_lamp, number_format, render_html, render_pdf, themes
 from generator.sheets.html_sheet import render_paper
 
 DEMO = Path(__file__).parents[2] / "content" / "harbour-school-relamping"
@@ -26,6 +31,7 @@ SPOKEN_ATTRIBUTES = frozenset({"aria-label", "title", "alt", "placeholder"})
 PLACES = re.compile(r"(\{[^}]*\})")
 WORDS = re.compile(r"[A-Za-z]{3,}")
 LEAST_LAMPS = 3
+FULLEST = ("veldrune-a60-940", "veldrune-gu10-930")
 
 KNOWN = {
     # Units, symbols and their indices.
@@ -60,6 +66,9 @@ class Stranger:
 
     def number(self, text):
         return text.replace(".", ",")
+
+    def day(self, day):
+        return day.isoformat()
 
 
 def _by_places(pattern):
@@ -117,7 +126,8 @@ def _data(campaign) -> re.Pattern[str]:
         named |= {source.title, source.edition, source.publisher, source.date}
     named |= {entry.symbol for entry in QUANTITIES.values()}
     # A single small word may be a word of a message too; as data alone it is not let pass.
-    kept = [text for text in named if WORDS.search(text) and not re.fullmatch("[a-z]+", text)]
+    plain = (text.replace("\u00a0", " ") for text in named)
+    kept = [text for text in plain if WORDS.search(text) and not re.fullmatch("[a-z]+", text)]
     longest_first = sorted(kept, key=len, reverse=True)
     return re.compile(rf"(?<!\w)(?:{'|'.join(map(re.escape, longest_first))})(?!\w)")
 
@@ -137,7 +147,7 @@ def _left(page, data):
     spoken = SpokenText()
     spoken.feed(page)
     for text in spoken.texts:
-        rest = data.sub(" ", text)
+        rest = data.sub(" ", text.replace("\u00a0", " "))
         for pattern in DATA_SHAPES:
             rest = pattern.sub(" ", rest)
         if set(WORDS.findall(rest)) - KNOWN:
@@ -159,3 +169,23 @@ def test_nothing_on_any_page_is_out_of_reach_of_a_translation(quiet_demo, monkey
                 for page in (render_html(sheet), render_paper(sheet)):
                     left |= {(theme, name, text) for text in _left(page, data)}
     assert not left, "\n".join(map(str, sorted(left)))
+
+
+@pytest.mark.slow
+def test_the_fullest_lamps_fit_on_their_pages_in_every_language(quiet_demo):
+    """Two pages in the tender theme, four in the others; what does not fit is refused."""
+    for theme in themes():
+        assessment = _in_theme(quiet_demo, theme)
+        known = {
+            item.method: found for item in assessment.figures if (found := method(item.method))
+        }
+        curves = curves_of(assessment.campaign, assessment.figures)
+        context = SheetContext(sources(), curves, methods=known)
+        names = FULLEST if theme == "tender" else FULLEST[:1]
+        for tag in LANGUAGES:
+            with speaking.speaking(tag):
+                sheets = [describe_lamp(assessment, name, context) for name in names]
+            for sheet in sheets:
+                with pikepdf.open(io.BytesIO(render_pdf(sheet))) as pdf:
+                    assert len(pdf.pages) == (2 if theme == "tender" else 4), (theme, tag)
+                    assert str(pdf.Root.Lang) == tag

@@ -5,16 +5,17 @@ from __future__ import annotations
 import pickle
 import tomllib
 from collections.abc import Iterator
+from datetime import date
 from importlib.resources import files
 from pathlib import Path
 from typing import Any
 
 import pytest
 
-from generator.language import Message, say, told
+from generator.language import Message, capital, say, told
 from generator.language.messages import spoken_by
 from generator.lawbook import buyer_clauses, read_law_book
-from generator.lawbook.leaf_text import TRANSLATED_KEYS, Capital, pieces, source_of
+from generator.lawbook.leaf_text import TRANSLATED_KEYS, pieces, source_of
 from generator.records.clause import Clause, Constant, Exemption
 
 
@@ -26,6 +27,9 @@ class Shouting:
 
     def number(self, text: str) -> str:
         return text.replace(".", ",")
+
+    def day(self, day: date) -> str:
+        return day.isoformat()
 
 
 def leaf_texts(value: Any, key: str = "") -> Iterator[tuple[str, str]]:
@@ -113,8 +117,8 @@ def test_the_buyers_words_stay_and_what_stands_for_them_is_said() -> None:
 
 
 def test_a_capital_is_set_in_the_language_spoken_and_survives_pickling() -> None:
-    text = pickle.loads(pickle.dumps(Capital(say("été"))))  # noqa: S301 - pickled one line before
+    text = pickle.loads(pickle.dumps(capital(say("été"))))  # noqa: S301 - pickled one line before
     assert text == "Été"
     with spoken_by(Shouting()):
         assert told(text) == "ÉTÉ"
-    assert told(Capital("")) == ""
+    assert told(capital("")) == ""

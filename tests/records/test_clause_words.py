@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from datetime import date
 from decimal import Decimal
 from enum import StrEnum
 
@@ -32,6 +33,9 @@ class Marker:
 
     def number(self, text: str) -> str:
         return text.replace(".", ",")
+
+    def day(self, day: date) -> str:
+        return day.isoformat()
 
 
 @pytest.mark.parametrize(

@@ -113,7 +113,7 @@ def test_spectra_are_laid_over_one_another_white_by_white(invented_comparison):
     # Both invented lamps with a spectrum have about 2700 K; the band of the emitter is at 452 nm.
     (drawing,) = invented_comparison.spectra
     assert drawing.heading == "Spectra, about 2700\u00a0K"
-    assert "Strongest blue at 450 nm" in drawing.caption
+    assert "Strongest blue at 450\u00a0nm" in drawing.caption
     tree = ElementTree.fromstring(drawing.svg)  # noqa: S314 - our own drawing
     assert len(tree.findall(".//{http://www.w3.org/2000/svg}path[@fill='none']")) == 2
     assert drawing.table.headings[0] == "wavelength, nm"

@@ -296,6 +296,9 @@ def test_words_and_numbers_of_a_drawing_are_said_in_the_language():
         def number(self, text):
             return text.replace(".", ",")
 
+        def day(self, day):
+            return day.isoformat()
+
     curve = AgeingCurve(np.array([0.0, 3000.0]), np.array([1.0, 0.95]))
     with spoken_by(Speaker()):
         svg = draw_ageing_chart(curve, say("the finding"), TENDER)

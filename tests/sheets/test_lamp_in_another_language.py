@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import dataclasses
 import re
+from datetime import date
 from string import Formatter
 
 import pytest
@@ -29,6 +30,9 @@ class Loud:
 
     def number(self, text: str) -> str:
         return text.replace(".", ",")
+
+    def day(self, day: date) -> str:
+        return day.isoformat()
 
 
 @pytest.fixture

@@ -104,6 +104,9 @@ class DecimalComma:
     def number(self, text):
         return text.replace(".", ",")
 
+    def day(self, day):
+        return day.isoformat()
+
 
 def _upper(match):
     return match[0] if match[0].startswith("{") else match[0].upper()

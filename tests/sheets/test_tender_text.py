@@ -74,7 +74,7 @@ def test_parts_of_the_chances_fill_the_bar() -> None:
     chances = [RankChances("<A>", (0.7, 0.2), 0.1), RankChances("B", (0.3, 0.7), 0.0)]
     svg = draw_rank_chances(chances, "title", palette("tender"))
     widths = [float(width) for width in re.findall(r'<rect [^>]*width="([\d.]+)"', svg)]
-    full = 520 - 196 - 12
+    full = 520 - 236 - 12
     assert sum(widths[:3]) == pytest.approx(full - 3 * 0.8, abs=0.3)
-    assert widths[0] / widths[1] == pytest.approx(3.5, rel=0.01)
+    assert (widths[0] + 0.8) / (widths[1] + 0.8) == pytest.approx(3.5, rel=0.003)
     assert "&lt;A&gt;" in svg

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from datetime import date
 from decimal import Decimal
 from typing import get_args
 
@@ -34,6 +35,9 @@ class Shouting:
 
     def number(self, text: str) -> str:
         return text.replace(".", ",")
+
+    def day(self, day: date) -> str:
+        return day.isoformat()
 
 
 def test_every_outcome_item_rule_and_kind_of_price_has_words() -> None:

@@ -47,8 +47,8 @@ _NOTES = (
     ),
     say(
         "Swaps are sought from {lowest} % to {highest} % of each input.",
-        lowest=numeral(f"{FURTHEST_PERCENT[0]:+d}"),
-        highest=numeral(f"{FURTHEST_PERCENT[1]:+d}"),
+        lowest=numeral(f"{FURTHEST_PERCENT[0]:+d}".replace("-", "\u2212")),
+        highest=numeral(f"{FURTHEST_PERCENT[1]:+d}".replace("-", "\u2212")),
     ),
 )
 

@@ -138,8 +138,8 @@ def _check_date(
             say(
                 "The test report is dated {dated}, after the date of this assessment "
                 "({assessed}). Please check the date and state the right one.",
-                dated=report_date.isoformat(),
-                assessed=on.isoformat(),
+                dated=report_date,
+                assessed=on,
             ),
         )
     elif (begin is not None and report_date < begin) or (end is not None and report_date > end):
@@ -149,9 +149,9 @@ def _check_date(
             title,
             say(
                 "Dated {dated}; asked for: {begin} to {end}.",
-                dated=report_date.isoformat(),
-                begin=begin.isoformat() if begin else any_date,
-                end=end.isoformat() if end else any_date,
+                dated=report_date,
+                begin=begin or any_date,
+                end=end or any_date,
             ),
             _SOURCE,
         )

@@ -9,7 +9,7 @@ from itertools import chain
 
 import numpy as np
 
-from generator.language import Message, Numeral, joined, numeral, say
+from generator.language import SEMICOLON, Message, Numeral, joined, numeral, say
 from generator.metrics.assembly.exact_numbers import exact_mean
 from generator.metrics.uncertainty import mean_with_spread
 from generator.records.figure import MEAN, Figure, Grade, exact
@@ -100,7 +100,7 @@ def _methods(group: Sequence[Figure]) -> str:
 def _listed(texts: Iterable[str]) -> str:
     """Different texts one after another; a single one as it is."""
     found = tuple(dict.fromkeys(texts))
-    return found[0] if len(found) == 1 else joined("; ", found)
+    return found[0] if len(found) == 1 else joined(SEMICOLON, found)
 
 
 def _shared_remarks(group: Sequence[Figure], shared: Shared) -> tuple[str, ...]:

@@ -55,7 +55,7 @@ def draw_ageing_chart(curve: AgeingCurve, title: str, palette: Palette) -> str:
         x, y = frame.x(curve.limit_hours_h), frame.y(curve.limit)
         canvas.line((frame.x.start, y), (x, y), "ink", width=1.2)
         canvas.line((x, y - 5), (x, y + 5), "ink", width=1.2)
-        canvas.text((x + 5, y + 3.5), say_as("mark in a drawing", "limit"), "ink")
+        canvas.text((x - 4, y - 4), say_as("mark in a drawing", "limit"), "ink", anchor="end")
     for hours, value in list(zip(curve.hours_h, curve.maintenance, strict=True))[:_MOST_DOTS]:
         canvas.dot((frame.x(float(hours)), frame.y(float(value))), 2.2, "accent")
     frame.draw_x(canvas, ticks(0, frame.x.high, 6), say("operating time, h"))

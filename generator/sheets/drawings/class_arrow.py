@@ -2,8 +2,9 @@
 
 Source: eu_2019_2015, Annex VII, points 2 and 4, with the colours of Annex III, point 2.3(e). The
 act gives the colours for print, in cyan, magenta, yellow and black; they stand here as
-255 (1 - c) (1 - k) per channel. The letter is white as the act says; since white on some of the
-colours is hard to read, the class always stands beside the arrow in words as well.
+255 (1 - c) (1 - k) per channel. The letter is white as the act says, in the middle of the
+rectangular part, and has a black border like the arrow; since white on some of the colours is
+hard to read, the class always stands beside the arrow in words as well.
 """
 
 from __future__ import annotations
@@ -59,5 +60,8 @@ def draw_class_arrow(letter: str, title: str, palette: Palette) -> str:
     )
     canvas.area(arrow, CLASS_COLOURS[letter])
     canvas.path(arrow, "#000000", width=_BORDER, closed=True)
-    canvas.text((_RANGE + 15, 21.5), letter, "#ffffff", anchor="middle", bold=True, size=21)
+    centre = (_RANGE + _WIDTH - 14) / 2
+    canvas.text(
+        (centre, 21.5), letter, "#ffffff", anchor="middle", bold=True, size=21, edge="#000000"
+    )
     return canvas.finish(title, kind="class-arrow")

@@ -13,7 +13,7 @@ from generator.sheets.drawings.svg import Canvas
 __all__ = ["draw_colour_strip"]
 
 _WIDTH, _HEIGHT = 440.0, 190.0
-_LEFT = 34.0
+_LEFT = 46.0
 _STRIP, _THICK = 112.0, 14.0
 
 

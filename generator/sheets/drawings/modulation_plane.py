@@ -42,7 +42,7 @@ def draw_modulation_plane(
     """
     canvas = Canvas(_WIDTH, _HEIGHT, palette)
     frame = Frame(
-        Scale(_DECADES[0], _DECADES[-1], 38, _WIDTH - 14, logarithmic=True),
+        Scale(_DECADES[0], _DECADES[-1], 38, _WIDTH - 22, logarithmic=True),
         Scale(_DEPTHS[0], _DEPTHS[-1], _HEIGHT - 32, 18, logarithmic=True),
     )
     line = thinned(_line(frame, low_risk))

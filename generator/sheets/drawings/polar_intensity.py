@@ -47,7 +47,8 @@ def draw_polar_intensity(planes: tuple[IntensityCurve, ...], title: str, palette
     for mark in ticks(0, top, 4)[1:]:
         circle = _points(np.rad2deg(_TURN), np.full(_TURN.shape, mark * scale))
         canvas.path(circle, "hair", width=0.8)
-        canvas.text((_WIDTH / 2 + 3, _HEIGHT / 2 + mark * scale - 2), label(mark))
+        at = _points(np.array([135.0]), np.array([mark * scale]))[0]
+        canvas.text((at[0] + 3, at[1]), f"{label(mark)} cd")
     for angle in range(-150, 181, 30):
         ends = _points(np.array([angle, angle], float), np.array([0.0, _RADIUS]))
         canvas.line((ends[0, 0], ends[0, 1]), (ends[1, 0], ends[1, 1]), "hair", width=0.6)
@@ -59,7 +60,6 @@ def draw_polar_intensity(planes: tuple[IntensityCurve, ...], title: str, palette
         height = 12 + 14 * row
         canvas.line((0, height), (22, height), role, width=1.6, dash=dash)
         canvas.text((27, height + 3.5), plane.plane, "ink")
-    canvas.text((_WIDTH, 12), "cd", anchor="end")
     return canvas.finish(title)
 
 

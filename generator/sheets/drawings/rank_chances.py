@@ -11,8 +11,8 @@ from generator.sheets.drawings.svg import Canvas
 
 __all__ = ["RankChances", "draw_rank_chances"]
 
-_WIDTH, _ROW, _TOP, _BOTTOM, _LEFT, _RIGHT = 520.0, 24.0, 8.0, 40.0, 196.0, 12.0
-_LONGEST_NAME = 34
+_WIDTH, _ROW, _TOP, _BOTTOM, _LEFT, _RIGHT = 520.0, 24.0, 8.0, 40.0, 236.0, 12.0
+_LONGEST_NAME = 44
 _NAMED_FROM = 0.06
 
 

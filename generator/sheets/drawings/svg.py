@@ -230,8 +230,9 @@ class Canvas:
         anchor: str = "start",
         bold: bool = False,
         size: float | None = None,
+        edge: str = "",
     ) -> None:
-        """Write words; ``anchor`` is ``start``, ``middle`` or ``end``."""
+        """Write words; ``anchor`` is ``start``, ``middle`` or ``end``, ``edge`` their border."""
         attributes = {"x": coordinate(at[0]), "y": coordinate(at[1])} | self._fill(role)
         if anchor != "start":
             attributes["text-anchor"] = anchor
@@ -239,6 +240,8 @@ class Canvas:
             attributes["font-weight"] = "600"
         if size is not None:
             attributes["font-size"] = coordinate(size)
+        if edge:
+            attributes |= {"stroke": self.palette.get(edge, edge), "stroke-width": "0.7"}
         self._element("text", attributes, escape(told(words), quote=False))
 
     def gradient(self, name: str, stops: Sequence[tuple[float, str]]) -> str:

@@ -13,7 +13,7 @@ from generator.sheets.drawings.svg import Canvas
 __all__ = ["draw_tornado"]
 
 _WIDTH, _ROW, _TOP, _BOTTOM = 520.0, 26.0, 20.0, 34.0
-_LEFT, _RIGHT = 96.0, 16.0
+_LEFT, _RIGHT = 106.0, 16.0
 _EDGE = 0.16
 
 

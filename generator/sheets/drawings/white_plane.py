@@ -89,7 +89,8 @@ def _locus(canvas: Canvas, frame: Frame, plane: WhitePlane) -> None:
     for mark in ticks(low, high, 4):
         x, y = (float(np.interp(mark, temperatures[order], seen[order, axis])) for axis in (0, 1))
         canvas.line((x, y - 3.5), (x, y + 3.5), "ink", width=1)
-        canvas.text((x + away[0], y + away[1]), f"{label(mark)} K", anchor=anchor)
+        if y + away[1] < frame.y.start - 2:
+            canvas.text((x + away[0], y + away[1]), f"{label(mark)} K", anchor=anchor)
 
 
 def white_table(plane: WhitePlane) -> DataTable:

@@ -108,7 +108,7 @@
       .map((at) => data.lamps[at])
       .map((lamp) => ({ lamp, x: lamp.cells[places.get(xKey)], y: lamp.cells[places.get(yKey)] }))
       .filter(({ x, y }) => x !== null && y !== null && typeof x[0] === "number" && typeof y[0] === "number");
-    const told = lampassay.filled(words.scatter_note, { x: xColumn.label, y: yColumn.label, count: points.length });
+    const told = lampassay.filled(words.scatter_note, { up: yColumn.label, across: xColumn.label, count: points.length });
     if (!points.length) {
       place.replaceChildren();
       return told;

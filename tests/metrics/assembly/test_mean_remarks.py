@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from datetime import date
 from decimal import Decimal
 
 import pytest
@@ -54,6 +55,9 @@ def test_a_range_can_be_said_in_another_language() -> None:
 
         def number(self, text: str) -> str:
             return text.replace(".", ",")
+
+        def day(self, day: date) -> str:
+            return day.isoformat()
 
     with spoken_by(Speaker()):
         assert told(remark) == "1,5–2,5 % bei 3 [2/3]"
