@@ -18,7 +18,7 @@ from generator.sheets.lamp_description import LampSheet, VerdictGroup
 from generator.sheets.lamp_words import FOLDED
 from generator.sheets.words import MARKS
 
-__all__ = ["BUDGETS", "SHORT_BUDGETS", "Budget", "budgets_for", "fitted"]
+__all__ = ["REST", "ROOMY", "ROWS", "SHORT_REST", "SHORT_ROWS", "Budget", "Trials", "fitted"]
 
 _WORDS = {mark: word for word, mark in MARKS.items()}
 _ORDER = ("fail", "inconclusive", "not-measured", "pass", "not-applicable")
@@ -54,43 +54,71 @@ class Budget:
     products: bool = False
 
 
-BUDGETS = (
-    Budget(rows=24, note_length=1600, drawings=11, entries=60, dense=False, products=True),
+ROOMY = Budget(rows=24, note_length=1600, drawings=11, entries=60, dense=False, products=True)
+"""For a sheet that folds no clause in it."""
+
+ROWS = (38, 32, 24, 16, 8)
+"""Clauses on page one, tried in turn until it stands alone."""
+
+REST = (
     Budget(rows=38, note_length=900, drawings=11, entries=60, dense=True, products=True),
     Budget(rows=38, note_length=900, drawings=11, entries=60, dense=True),
-    Budget(rows=32, note_length=900, drawings=11, entries=40, dense=True),
-    Budget(rows=24, note_length=700, drawings=10, entries=20, dense=True),
-    Budget(rows=16, note_length=500, drawings=6, entries=6, dense=True),
-    Budget(rows=8, note_length=0, drawings=4, entries=0, dense=True),
+    Budget(rows=38, note_length=900, drawings=11, entries=40, dense=True),
+    Budget(rows=38, note_length=700, drawings=10, entries=20, dense=True),
+    Budget(rows=38, note_length=500, drawings=6, entries=6, dense=True),
+    Budget(rows=38, note_length=0, drawings=4, entries=0, dense=True),
 )
-"""Tried in turn until the pages suffice."""
+"""What stands behind page one, tried in turn until the pages suffice."""
 
-
-SHORT_BUDGETS = (
+SHORT_ROWS = (38, 30, 22, 12, 8)
+SHORT_REST = (
     Budget(rows=38, note_length=900, drawings=6, entries=0, dense=True),
     Budget(rows=38, note_length=700, drawings=4, entries=0, dense=True),
     Budget(rows=38, note_length=0, drawings=4, entries=0, dense=True),
-    Budget(rows=30, note_length=700, drawings=4, entries=0, dense=True),
-    Budget(rows=22, note_length=700, drawings=4, entries=0, dense=True),
-    Budget(rows=12, note_length=300, drawings=4, entries=0, dense=True),
-    Budget(rows=8, note_length=0, drawings=4, entries=0, dense=True),
-    Budget(rows=8, note_length=0, drawings=2, entries=0, dense=True),
+    Budget(rows=38, note_length=0, drawings=2, entries=0, dense=True),
 )
 """The same for the short form, which has no tables behind page one."""
 
 
-def budgets_for(sheet: LampSheet) -> tuple[Budget, ...]:
-    """Give the budgets worth trying: the roomy one only where it folds no clause.
+class Trials:
+    """The budgets to try for a sheet: each follows from what the one before was too much for.
 
     Parameters
     ----------
     sheet
         The whole description.
     """
-    if sheet.frame.short:
-        return SHORT_BUDGETS
-    clauses = sum(len(group.clauses) for group in sheet.verdicts)
-    return tuple(budget for budget in BUDGETS if budget.dense or clauses <= budget.rows)
+
+    def __init__(self, sheet: LampSheet) -> None:
+        self._rows: tuple[int, ...] = SHORT_ROWS if sheet.frame.short else ROWS
+        self._rest: tuple[Budget, ...] = SHORT_REST if sheet.frame.short else REST
+        clauses = sum(len(group.clauses) for group in sheet.verdicts)
+        self._roomy = not sheet.frame.short and clauses <= ROOMY.rows
+        self._row = self._at = 0
+
+    @property
+    def budget(self) -> Budget | None:
+        """The budget to try; ``None`` where there is none left."""
+        if self._roomy:
+            return ROOMY
+        if self._row >= len(self._rows) or self._at >= len(self._rest):
+            return None
+        return dataclasses.replace(self._rest[self._at], rows=self._rows[self._row])
+
+    def tighten(self, *, page_one: bool) -> None:
+        """Take less.
+
+        Parameters
+        ----------
+        page_one
+            Whether it was page one that did not suffice; else the pages behind it.
+        """
+        if self._roomy:
+            self._roomy = False
+        elif page_one:
+            self._row += 1
+        else:
+            self._at += 1
 
 
 def fitted(sheet: LampSheet, budget: Budget) -> LampSheet:

@@ -9,7 +9,7 @@ import io
 import logging
 import warnings
 from collections.abc import Iterable, Iterator
-from dataclasses import dataclass, replace
+from dataclasses import dataclass
 from datetime import UTC, date, datetime
 from functools import cache
 from pathlib import Path
@@ -19,7 +19,7 @@ from generator.errors import SheetError
 from generator.sheets.engine_shortcuts import lean_defaults, put_aside_drawings, take_shortcuts
 from generator.sheets.html_sheet import Sheet, render_paper
 from generator.sheets.lamp_description import LampSheet
-from generator.sheets.paper_fit import budgets_for, fitted
+from generator.sheets.paper_fit import Trials, fitted
 from generator.sheets.paper_tree import page_tree
 from generator.sheets.pdf_archive import ACCESSIBILITY_CLAIM, finish_archive
 from generator.sheets.themes import FACES, font_bytes, paper_style
@@ -211,18 +211,15 @@ class PdfEngine:
         if not isinstance(sheet, LampSheet):
             return self.lay_out(render_paper(sheet), of_lamp=False)
         most = MOST_SHORT_PAGES if sheet.frame.short else MOST_LAMP_PAGES
-        rows, tried = 0, ""
-        for entry in budgets_for(sheet):
-            budget = replace(entry, rows=max(entry.rows, rows))
+        trials, tried, alone = Trials(sheet), "", False
+        while (budget := trials.budget) is not None:
             page = render_paper(fitted(sheet, budget), dense=budget.dense)
-            if page == tried:
-                continue
-            document, tried = self.lay_out(page), page
-            alone = _short_form_fits(document)
-            if alone and len(document.pages) <= most:
-                return document
-            # Where page one stands alone, fewer clauses on it would help no other page.
-            rows = budget.rows if alone else 0
+            if page != tried:
+                document, tried = self.lay_out(page), page
+                alone = _short_form_fits(document)
+                if alone and len(document.pages) <= most:
+                    return document
+            trials.tighten(page_one=not alone)
         raise SheetError(f"the sheet of {sheet.lamp_id} does not fit on {most} pages")
 
 

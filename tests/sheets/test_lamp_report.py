@@ -11,7 +11,7 @@ from generator.records.report_settings import Amendment, Equipment, ReportMethod
 from generator.records.settings import SheetTable
 from generator.sheets import describe_lamp, render_html
 from generator.sheets.html_sheet import render_paper
-from generator.sheets.paper_fit import BUDGETS, fitted
+from generator.sheets.paper_fit import REST, fitted
 from generator.sheets.themes import themes
 
 REPORT = ReportTable(
@@ -130,7 +130,7 @@ def test_product_information_carries_its_warning(reported_sheets, write):
 
 def test_product_information_is_folded_first(reported_sheets):
     sheet = reported_sheets["laboratory"]
-    first = next(budget for budget in BUDGETS if not budget.products)
+    first = next(budget for budget in REST if not budget.products)
     folded = fitted(sheet, first)
     assert folded.product is None
     assert folded.folded == ("Product information, 4 fields, stands on the HTML sheet.",)

@@ -23,7 +23,7 @@ from generator.sheets import (
 )
 from generator.sheets.description import Note
 from generator.sheets.html_sheet import render_paper
-from generator.sheets.paper_fit import BUDGETS, fitted
+from generator.sheets.paper_fit import REST, Trials, fitted
 from generator.sheets.paper_tree import page_tree
 from generator.sheets.pdf_archive import finish_archive
 from generator.sheets.pdf_sheet import MOST_LAMP_PAGES, MOST_SHORT_PAGES
@@ -262,7 +262,7 @@ def test_an_overfull_sheet_is_folded_and_says_so(lamp_sheet):
 
 def test_page_one_stands_alone(lamp_sheet):
     engine = pdf_engine("tender")
-    page = render_paper(fitted(_crowded(lamp_sheet, 2), BUDGETS[1]), dense=True)
+    page = render_paper(fitted(_crowded(lamp_sheet, 2), REST[0]), dense=True)
     pages = engine.lay_out(page).pages
     assert "verdicts" in pages[0].anchors
     assert set(pages[1].anchors) >= {"behind", "drawings"}
@@ -270,7 +270,7 @@ def test_page_one_stands_alone(lamp_sheet):
 
 def test_a_failed_clause_is_folded_last(lamp_sheet):
     most = len(lamp_sheet.verdicts[0].clauses) - 3
-    folded = fitted(lamp_sheet, dataclasses.replace(BUDGETS[-1], rows=most))
+    folded = fitted(lamp_sheet, dataclasses.replace(REST[-1], rows=most))
     marks = [clause.mark for group in folded.verdicts for clause in group.clauses]
     assert len(marks) == most
     assert "fail" in marks
@@ -280,7 +280,7 @@ def test_a_failed_clause_is_folded_last(lamp_sheet):
 
 
 def test_what_is_left_out_is_counted(lamp_sheet):
-    folded = fitted(lamp_sheet, BUDGETS[-1])
+    folded = fitted(lamp_sheet, dataclasses.replace(REST[-1], rows=8))
     assert folded.folded == (
         "Further drawings on the HTML sheet: 7.",
         "Further methods on the HTML sheet: 1.",
@@ -371,3 +371,19 @@ def test_length_of_a_stream_can_be_told_from_its_end(compress):
     assert all(int(length) == len(data) for length, data in told)
     with pikepdf.open(written) as again:
         assert len(again.objects) >= len(told)
+
+
+def test_a_sheet_is_tightened_where_it_was_too_full(lamp_sheet):
+    short = dataclasses.replace(lamp_sheet, frame=dataclasses.replace(lamp_sheet.frame, short=True))
+    trials = Trials(short)
+    whole = trials.budget
+    trials.tighten(page_one=True)
+    fewer = trials.budget
+    assert fewer.rows < whole.rows
+    assert fewer == dataclasses.replace(whole, rows=fewer.rows)
+    trials.tighten(page_one=False)
+    assert trials.budget.rows == fewer.rows
+    assert trials.budget.drawings < fewer.drawings
+    for _ in range(9):
+        trials.tighten(page_one=True)
+    assert trials.budget is None
