@@ -169,6 +169,7 @@ def _table(case: _Lamp, question: Question, *, judged: bool) -> HarmonicTable:
         option=option_letter(role),
         decided=_decided(results),
         judged=judged,
+        met=results[role].met,
         limits=tuple(limits),
         notes=tuple(notes),
     )

@@ -54,7 +54,7 @@ def in_processes(
     """
     waiting = list(reversed(tasks))
     failures: list[str] = []
-    workers = [_worker() for _ in range(min(jobs, len(tasks)))]
+    workers = [_worker() for _ in range(max(1, min(jobs, len(tasks))))]
     idle = list(range(len(workers)))
     running: dict[Future[Result], tuple[str, int]] = {}
     try:

@@ -68,6 +68,9 @@ class HarmonicTable:
         Whether the verdict on the table can be told; false where figures are missing for it.
     judged
         Whether the campaign is judged by the clause.
+    met
+        Whether the option or table itself is met, whatever a buyer asks beside it; ``None`` where
+        figures are missing for it.
     limits
         Every limit of the table, those of orders by order, and those of a buyer.
     percent_per_ma_per_w
@@ -85,6 +88,7 @@ class HarmonicTable:
     option: str = ""
     decided: bool = True
     judged: bool = True
+    met: bool | None = None
     limits: tuple[HarmonicLimit, ...] = ()
     percent_per_ma_per_w: float | None = None
     reason: str = ""

@@ -71,6 +71,8 @@ CONTROL_WORDS: Mapping[str, str] = {
     "range_high": say_as("range", "at most"),
     "range_add": say("Add the range"),
     "range_remove": say("Remove the range: {range}"),
+    "range_unread": say("\u201c{text}\u201d is no number, or can be read in two ways."),
+    "range_reversed": say("The lower end is above the upper end."),
     "range_from": say("{column} at least {low}"),
     "range_to": say("{column} at most {high}"),
     "range_between": say("{column} at least {low}, at most {high}"),

@@ -20,6 +20,9 @@ _BEFORE_UNIT = re.compile(r"(?<=\d) (?=(?:%|(?:k?Wh?|lm|lx|cd|nm|mA|Hz|kHz|mm|K|
 _BEFORE_DEGREE = re.compile(r"(?<=\d)[ \u00a0](?=°(?!C))")
 """No space stands before the sign of the degree of angle. Source: the SI brochure, 5.4.3."""
 
+_AS_THEY_ARE = frozenset({"bidders"})
+"""Fields that the scripts compare with their data, letter by letter."""
+
 
 def finished(described: Described) -> Described:
     """Say every message of a description, so that plain text is left.
@@ -48,7 +51,11 @@ def _finished(value: Any) -> Any:
     if isinstance(value, tuple):
         return tuple(_finished(item) for item in value)
     if dataclasses.is_dataclass(value) and not isinstance(value, type):
-        fields = {item.name: getattr(value, item.name) for item in dataclasses.fields(value)}
+        fields = {
+            item.name: getattr(value, item.name)
+            for item in dataclasses.fields(value)
+            if item.name not in _AS_THEY_ARE
+        }
         return dataclasses.replace(
             value, **{name: _finished(kept) for name, kept in fields.items()}
         )

@@ -108,7 +108,7 @@ def _finding(limits: Sequence[HarmonicLimit]) -> Iterable[str]:
         if item.order is None:
             value = _exact(item.value, item.unit)
             yield _NOT_KEPT.format(quantity=_what(item), value=value, limit=_limit_text(item))
-    if not missed and any(item.kept for item in limits):
+    if limits and all(item.kept for item in limits):
         yield HARMONICS_WITHIN
     shared = [item for item in limits if item.share is not None and not item.lower]
     worst = max(shared, key=lambda item: item.share or 0, default=None)
@@ -138,17 +138,20 @@ def _share_text(item: HarmonicLimit) -> str:
 def _reference(table: HarmonicTable) -> Iterable[str]:
     """Which limits they are, from which clause, how they are known, and how they are drawn."""
     if table.source:
-        pattern = _NONE_DRAWN if table.reason else _OPTION if table.option else _TABLE
-        said = {"letter": table.option} if pattern is _OPTION else {}
-        yield pattern.format(source=table.source, status=_STATUS[table.status], **said)
+        pattern = _OPTION if table.option else _TABLE
+        said = {"letter": table.option} if table.option else {}
+        if table.reason and not table.limits:
+            pattern, said = _NONE_DRAWN, {}
+        if not table.reason or not table.limits:
+            yield pattern.format(source=table.source, status=_STATUS[table.status], **said)
         yield "" if table.decided else _UNDECIDED
-        failed = table.decided and any(item.kept is False for item in table.limits)
-        yield _NO_OPTION if table.option and failed else ""
+        yield _NO_OPTION if table.option and table.decided and table.met is False else ""
         yield "" if table.judged else _NOT_JUDGED
     for status in dict.fromkeys(item.status for item in table.limits):
         if status != table.status:
-            other = [str(item.order) for item in table.limits if item.status == status]
-            yield _OTHER_STATUS.format(orders=", ".join(other), status=_STATUS[status])
+            other = (str(item.order) for item in table.limits if item.status == status)
+            orders = ", ".join(dict.fromkeys(other))
+            yield _OTHER_STATUS.format(orders=orders, status=_STATUS[status])
     if table.percent_per_ma_per_w is not None:
         yield _CONVERTED.format(percent=table.percent_per_ma_per_w)
 

@@ -35,7 +35,7 @@ _MOST_DECIMALS = 10
 _LONGEST_DECLARED = 6
 _DERIVED_DIGITS = 4
 _LONG_NUMBER = re.compile(r"(?<![\w.\-/])[\u2212-]?\d+\.\d{4,}(?![\w.]*\w)")
-_LONG_WHOLE = re.compile(r"\d{5,}(?:\.\d+)?")
+_LONG_WHOLE = re.compile(r"[\u2212-]?\d{5,}(?:\.\d+)?")
 _RANGE = re.compile(r"(-?\d+(?:\.\d+)?) to (-?\d+(?:\.\d+)?)")
 _GROUPED_FROM = 5
 _ONE_DIGIT_FROM = 3
@@ -104,7 +104,9 @@ def grouped(number: str) -> str:
     number
         A number as text, in English notation.
     """
-    return _written(Decimal(number)) if _LONG_WHOLE.fullmatch(number) else number
+    if not _LONG_WHOLE.fullmatch(number):
+        return number
+    return _written(Decimal(number.replace(_MINUS, "-")))
 
 
 def _written(value: Decimal) -> str:
@@ -203,7 +205,7 @@ def readable(text: str, decimals: int, known: Mapping[Decimal, str] | None = Non
     def shortened(part: str) -> str:
         return grouped(_LONG_NUMBER.sub(short, part))
 
-    return shortened(told(text, shortened))
+    return _LONG_NUMBER.sub(short, told(text, shortened))
 
 
 def telling_decimals(value: Decimal, limits: Iterable[Decimal], decimals: int) -> int:

@@ -122,4 +122,10 @@ def _hidden_words(
             for place, unit in enumerate(units, 1)
         }
         words[lamp.lamp_id] = code
-    return {word: said for word, said in words.items() if len(word) >= _LEAST_LETTERS}
+    # A name is sought as it was written and as the page has it, with its spaces before units.
+    return {
+        form: said
+        for word, said in words.items()
+        if len(word) >= _LEAST_LETTERS
+        for form in (word, finished(word))
+    }

@@ -49,6 +49,11 @@ def test_axe_finds_nothing(visit, pages, pytestconfig, mode):
     assert {name: broken for name, broken in found.items() if broken} == {}
 
 
+def test_axe_finds_nothing_on_a_narrow_screen(visit, pages, pytestconfig):
+    page = visit(pages[0], viewport={"width": 320, "height": 800})
+    assert violations(page, pytestconfig) == []
+
+
 def test_axe_finds_nothing_with_lamps_side_by_side(visit, issued, pytestconfig):
     view = "side=veldrune-a60-940,corvath-a60-827&reference=corvath-a60-827&range=ra:80:&sort=ra"
     page = visit(issued / "index.html", view)

@@ -252,6 +252,23 @@ def test_what_is_shown_comes_down_as_csv(page, measured):
         assert float(written) == pytest.approx(float(measured[row["lamp_id"], "efficacy_lm_per_w"]))
     assert {"u_efficacy_lm_per_w", "unit_price", "currency"} <= set(rows[0])
     assert "displacement_factor" not in rows[0]
+    assert "difference_efficacy_lm_per_w" not in rows[0]
+
+
+def test_differences_that_are_shown_come_down_too(page, measured):
+    reference = "corvath-a60-827"
+    page.select_option("#reference", reference)
+    with page.expect_download() as waiting:
+        page.get_by_role("button", name="Download as CSV").click()
+    rows = list(csv.DictReader(io.StringIO(Path(waiting.value.path()).read_text("utf-8"))))
+    assert {row["reference_lamp"] for row in rows} == {reference}
+    base = float(measured[reference, "efficacy_lm_per_w"])
+    for row in rows:
+        written = row["difference_efficacy_lm_per_w"]
+        if row["lamp_id"] == reference:
+            assert written == ""
+        elif row["efficacy_lm_per_w"]:  # with the digits of the coarser value, whole lm/W at worst
+            assert float(written) == pytest.approx(float(row["efficacy_lm_per_w"]) - base, abs=0.51)
 
 
 def test_text_that_looks_like_a_formula_stays_text(page):
@@ -456,3 +473,36 @@ def test_numbers_of_the_scripts_have_the_decimal_sign_of_the_page(visit, index, 
     rows = list(csv.DictReader(io.StringIO(Path(waiting.value.path()).read_text("utf-8"))))
     assert all(90.5 <= float(row["efficacy_lm_per_w"]) <= 200 for row in rows)
     assert any("." in row["efficacy_lm_per_w"] for row in rows)
+
+
+@pytest.mark.parametrize(
+    ("low", "high", "words"),
+    [
+        ("1,000", "", "\u201c1,000\u201d is no number, or can be read in two ways."),
+        ("", "1e3", "\u201c1e3\u201d is no number, or can be read in two ways."),
+        ("900", "800", "The lower end is above the upper end."),
+    ],
+)
+def test_a_range_that_cannot_be_read_in_one_way_is_refused(page, low, high, words):
+    before = page.locator("#matrix tbody tr:visible").count()
+    page.locator("#range-choice > summary").click()
+    page.fill("#range-low", low)
+    page.fill("#range-high", high)
+    page.get_by_role("button", name="Add the range").click()
+    assert page.locator("#status").inner_text() == words
+    assert page.locator("input[aria-invalid=true]").count() > 0
+    assert page.locator("#matrix tbody tr:visible").count() == before
+    page.fill("#range-low", "0,85")
+    page.fill("#range-high", "")
+    page.get_by_role("button", name="Add the range").click()
+    assert page.locator("input[aria-invalid=true]").count() == 0
+
+
+def test_the_other_languages_open_on_the_same_view(visit, pages):
+    page = visit(pages[0], "sort=ra")
+    page.select_option("#reference", index=1)
+    link = page.locator(".languages a").first
+    page.wait_for_function(
+        "() => document.querySelector('.languages a').hash.includes('reference')"
+    )
+    assert "sort=ra" in link.get_attribute("href")

@@ -171,7 +171,13 @@ def test_two_ids_that_would_become_one_are_refused(named_campaign: Path) -> None
         code_names(read_campaign(named_campaign), SALT)
 
 
-@pytest.mark.parametrize("text", ["Power & Sons", "veldrune-a60", "Moorgarth Trust"])
+@pytest.mark.parametrize(
+    "text",
+    [
+        *("Power & Sons", "Power &amp; Sons", "Power \\u0026 Sons"),
+        *("veldrune-a60", "Moorgarth Trust", "Moorgarth\u00a0Trust", "Moorgarth&nbsp;Trust"),
+    ],
+)
 def test_a_name_that_is_left_is_refused(named_campaign: Path, tmp_path: Path, text: str) -> None:
     names = code_names(read_campaign(named_campaign), SALT)
     folder = tmp_path / "edition"

@@ -116,7 +116,7 @@ def test_an_angle_stands_below_the_orders():
         *("current_last_peak_deg", "°", "at most", Decimal(65), "quoted", None, None),
         *(Decimal(78), Decimal("1.2"), False),
     )
-    drawing, _ = _drawn(_table(_limit(3, "20", "86"), angle, option="B"))
+    drawing, _ = _drawn(_table(_limit(3, "20", "86"), angle, option="B", met=False))
     label, value, *limit = drawing.table.rows[-1]
     assert "last peak" in label
     assert (value, limit[0], limit[1]) == ("78 °", "", "at most 65 °")
@@ -148,3 +148,25 @@ def test_the_sheet_draws_the_table_of_its_lamp(invented_assessment, invented_con
     drawn = comb(replace(invented_context, harmonic_tables=tables))
     assert "above the limit: order 5" in drawn.caption
     assert "38.4" in drawn.caption
+
+
+def test_a_limit_of_the_buyer_says_nothing_of_the_options():
+    missed = _limit(3, "20", "1", status="buyer")
+    twice = _limit(3, "20", "30", status="buyer", comparison="at least")
+    drawing, _ = _drawn(_table(_limit(5, "12", "30"), missed, twice, option="A", met=True))
+    assert "Above the limit: order 3" in drawing.caption
+    assert "no option holds" not in drawing.caption
+    assert "limit of order 3 asked by the buyer" in drawing.caption
+
+
+def test_a_limit_without_a_value_is_not_said_to_be_kept():
+    unknown = replace(_limit(5, "12", "30"), value=None, share=None, kept=None)
+    drawing, _ = _drawn(_table(_limit(3, "20", "27"), unknown, decided=False))
+    assert "every limit drawn is kept" not in drawing.caption
+
+
+def test_limits_of_a_buyer_are_drawn_where_the_act_has_none():
+    buyers = _limit(3, "20", "30", status="buyer")
+    drawing, _ = _drawn(_table(buyers, reason="no limit up to 5 W", status="quoted"))
+    assert "no limits drawn" not in drawing.caption.lower()
+    assert "No limit up to 5 W" in drawing.caption

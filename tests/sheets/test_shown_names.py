@@ -10,6 +10,7 @@ from decimal import Decimal
 import html5lib
 import pytest
 
+from generator.language import say
 from generator.records.finding import Finding, Severity
 from generator.records.lamp import Offer
 from generator.records.product_field import ProductField
@@ -35,7 +36,7 @@ def coded(invented_assessment, invented_context):
     offer = Offer(Decimal("3.90"), "EUR", 400, "TR-117", report_model="Harbour 806")
     lamps = (
         replace(first, bidder="Quarrow", offer=offer),
-        replace(second, bidder="Bidder Two", model="Globe ninety"),
+        replace(second, bidder="Bidder Two", model="Globe of 9 W"),
         third,
     )
     finding = Finding(
@@ -93,9 +94,10 @@ def shown(page):
 
 
 def told(text):
-    names = ("Quarrow", "Harbour 806", "TR-117", "Globe ninety", "Bidder Two")
+    names = ("Quarrow", "Harbour 806", "TR-117", "Globe of 9 W", "Bidder Two")
     ids = r"(?<![\w-])L-0[123](?:-\d)?(?![\w-])"
-    return [name for name in names if name in text] + re.findall(ids, text)
+    plain = text.replace("\u00a0", " ")
+    return [name for name in names if name in plain] + re.findall(ids, text)
 
 
 @pytest.mark.parametrize("theme", themes())
@@ -146,6 +148,17 @@ def test_running_text_keeps_its_sense(coded):
     assert finding.compared == (
         "Unit unit 1 against Bidder B, lamp 1; the report is the report of Bidder B."
     )
+
+
+def test_a_name_with_a_number_and_a_unit_is_masked_however_it_is_set(coded):
+    assessment, _ = coded
+    names = ShownNames(assessment)
+    for text in (
+        "like Globe of 9 W",
+        "like Globe of 9\u00a0W",
+        say("like {lamp}", lamp="Globe of 9 W"),
+    ):
+        assert names.masked(text) == "like Bidder A, lamp 1"
 
 
 def test_a_model_of_two_bidders_tells_neither(coded):

@@ -86,14 +86,16 @@ const lampassay = Object.create(null);
     });
   }
 
-  const tooMuch = /[^-+.,\d\se]/i;
+  const plainNumber = /^[-+]?(?:\d+(?:\.\d*)?|\.\d+)$/;
+  const grouped = { ".": /^[-+]?[1-9]\d{0,2}(?:,\d{3})+$/, ",": /^[-+]?[1-9]\d{0,2}(?:\.\d{3})+$/ };
 
-  /** The number that somebody typed, with a point or a comma; null where it is none. */
-  function typedNumber(text) {
-    const plain = text.trim().replace(/\s/g, "").replace("\u2212", "-").replace(",", ".");
-    if (plain === "" || tooMuch.test(plain)) return null;
-    const number = Number(plain);
-    return Number.isFinite(number) ? number : null;
+  /** The number that somebody typed, with a point or a comma; null for nothing, not-a-number for
+   *  what is no number, or could be read in two ways by those who write `decimal` before decimals. */
+  function typedNumber(text, decimal = ".") {
+    const typed = text.replace(/\s/g, "").replace("\u2212", "-");
+    if (typed === "") return null;
+    const plain = typed.replace(",", ".");
+    return plainNumber.test(plain) && !grouped[decimal]?.test(typed) ? Number(plain) : NaN;
   }
 
   /** The view as the fragment of an address; empty for the view that shows everything. */
@@ -133,7 +135,8 @@ const lampassay = Object.create(null);
     view.side = [...new Set((parts.get("side") ?? "").split(","))].filter((id) => ids.has(id)).slice(0, MOST_SIDE);
     for (const text of parts.getAll("range")) {
       const [key, low, high] = text.split(":");
-      const range = { key, low: typedNumber(low ?? ""), high: typedNumber(high ?? "") };
+      const [least, most] = [low, high].map((text) => typedNumber(text ?? ""));
+      const range = { key, low: Number.isNaN(least) ? null : least, high: Number.isNaN(most) ? null : most };
       if (keys.has(key) && (range.low !== null || range.high !== null)) view.ranges.push(range);
     }
     return view;
@@ -155,23 +158,35 @@ const lampassay = Object.create(null);
       columns.filter((column) => data.lamps.some((lamp) => lamp.cells[places.get(column.key)]?.[1] != null)).map((column) => column.key),
     );
     const heads = ["lamp_id", "model", "bidder", "verdicts_fail", "verdicts_inconclusive", "verdicts_not_measured", "verdicts_pass"];
+    const base = data.lamps.find((lamp) => lamp.id === view.reference);
+    if (base) heads.push("reference_lamp");
     for (const column of columns) {
       heads.push(column.key);
       if (column.key === "unit_price") heads.push("currency");
       if (spread.has(column.key)) heads.push(`u_${column.key}`);
+      if (base) heads.push(`difference_${column.key}`);
     }
     const rows = shown.map((at) => {
       const lamp = data.lamps[at];
       const row = [lamp.id, lamp.model, lamp.bidder, lamp.counts.fail, lamp.counts.inconclusive, lamp.counts["not-measured"], lamp.counts.pass];
+      if (base) row.push(base.id);
       for (const column of columns) {
-        const cell = lamp.cells[places.get(column.key)];
+        const place = places.get(column.key);
+        const cell = lamp.cells[place];
         row.push(cell === null ? null : cell[0]);
         if (column.key === "unit_price") row.push(lamp.currency);
         if (spread.has(column.key)) row.push(cell === null ? null : cell[1]);
+        if (base) row.push(lamp === base ? null : plainDifference(cell, base.cells[place]));
       }
       return row;
     });
     return [heads, ...rows].map((row) => row.map(csvField).join(",") + "\r\n").join("");
+  }
+
+  /** A cell less that of the reference, as a number with the digits of the coarser of the two. */
+  function plainDifference(cell, base) {
+    if (cell === null || base === null || typeof cell[0] !== "number" || typeof base[0] !== "number") return null;
+    return Number((cell[0] - base[0]).toFixed(Math.min(cell[2], base[2])));
   }
 
   /** Digits as the page prints them: a true minus, and the decimal sign of the page's language. */

@@ -273,6 +273,7 @@
     const fragment = toFragment(data, view);
     if (fragment === remembered) return;
     remembered = fragment;
+    for (const link of document.querySelectorAll(".languages a")) link.hash = fragment;
     try {
       history.replaceState(null, "", fragment ? `#${fragment}` : location.pathname + location.search);
     } catch {
@@ -335,9 +336,23 @@
   }
 
   function addRange() {
-    const [low, high] = ["range-low", "range-high"].map((id) => typedNumber(byId(id).value));
+    const fields = ["range-low", "range-high"].map(byId);
+    const [low, high] = fields.map((field) => typedNumber(field.value, data.decimal));
+    for (const [at, number] of [low, high].entries()) fields[at].setAttribute("aria-invalid", String(Number.isNaN(number)));
+    const unread = fields.find((field) => field.getAttribute("aria-invalid") === "true");
+    if (unread) {
+      say(filled(words.range_unread, { text: unread.value }));
+      unread.focus();
+      return;
+    }
     if (low === null && high === null) {
-      byId("range-low").focus();
+      fields[0].focus();
+      return;
+    }
+    if (low !== null && high !== null && low > high) {
+      for (const field of fields) field.setAttribute("aria-invalid", "true");
+      say(words.range_reversed);
+      fields[0].focus();
       return;
     }
     const key = byId("range-figure").value;
