@@ -13,7 +13,7 @@ from generator.conformity.evidence import Evidence, LampRecord
 from generator.conformity.exact_number import decimal_of, number_text
 from generator.conformity.limits import Question
 from generator.conformity.ruling import Ruling, not_measured
-from generator.language import joined, say, say_counted, sentence
+from generator.language import joined, numeral, say, say_counted, sentence
 from generator.quantities import QUANTITIES
 from generator.records.clause import DatedValue
 from generator.records.clause_words import number_of, with_unit
@@ -23,6 +23,8 @@ __all__ = ["in_scope", "light_source_scope", "unit_in_scope", "window_bounds"]
 
 _NEEDED = ("x", "y", "luminous_flux_lm", "ra")
 _AREA = "light_emitting_area_mm2"
+_FORMATS = {"x": ".5f", "y": ".5f", "luminous_flux_lm": ".2f", "ra": ".2f"}
+"""How figures are written in the steps; the declared area is shown as it was declared."""
 _NO_AREA = say("The flux density is not checked: the light-emitting area is not given.")
 _OUTSIDE = say("Every unit is outside the definition, so the act does not cover the lamp")
 _FOUND = {
@@ -209,20 +211,21 @@ def _unit_step(
 
 def _figure_text(name: str, figures: dict[str, Fraction], window: DatedValue) -> str:
     """One figure of a unit, with what it is compared with."""
-    figure = QUANTITIES[name]
-    shown = number_text(Fraction(f"{float(figures[name]):.6g}"))
+    figure, number = QUANTITIES[name], figures[name]
+    spec = _FORMATS.get(name)
+    shown = numeral(format(float(number), spec)) if spec else number_text(number)
     text = joined(" ", (figure.label, with_unit(shown, figure.unit)))
     if name == "y" and "x" in figures:
         lower, upper = window_bounds(figures["x"], window)
         return say(
-            "{figure} (window {lower:.6f} to {upper:.6f})",
+            "{figure} (window {lower:.5f} to {upper:.5f})",
             figure=text,
             lower=float(lower),
             upper=float(upper),
         )
     if name == _AREA and "luminous_flux_lm" in figures:
         return say(
-            "{figure} (flux density {density:.6g} lm/mm², to be below {limit:f} lm/mm²)",
+            "{figure} (flux density {density:.2f} lm/mm², to be below {limit:f} lm/mm²)",
             figure=text,
             density=float(figures["luminous_flux_lm"] / figures[name]),
             limit=window.number("flux_density_below_lm_per_mm2"),

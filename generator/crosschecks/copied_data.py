@@ -113,11 +113,10 @@ def _identical(
         unit.unit_id,
         severity,
         say_counted(
-            "the reported value ({digits} digits) is the same as that of {others}: {values}",
-            "all {count} reported values ({digits} digits) are the same as those of {others}: "
-            "{values}",
+            "the reported value ({digits}) is the same as that of {others}: {values}",
+            "all {count} reported values ({digits}) are the same as those of {others}: {values}",
             len(values),
-            digits=digits,
+            digits=say_counted("{count} digit", "{count} digits", digits),
             others=listed(others),
             values=_sample(values),
         ),

@@ -8,7 +8,7 @@ from decimal import Decimal
 from generator.crosschecks.evidence import LampEvidence
 from generator.crosschecks.tolerances import NO_SOURCE, tolerance
 from generator.crosschecks.wording import CheckText, listed
-from generator.language import say
+from generator.language import say, say_counted
 from generator.records.campaign import Campaign
 from generator.records.figure import MEAN
 from generator.records.finding import Finding, Severity
@@ -60,17 +60,19 @@ def report_older_than_model(evidence: LampEvidence) -> Iterator[Finding]:
         lamp.lamp_id,
         MEAN,
         Severity.REMARK if days <= usual.value else Severity.DOUBT,
-        say(
-            "report of {report}, placed on the market on {market}: the report is {days} days "
+        say_counted(
+            "report of {report}, placed on the market on {market}: the report is {count} day "
             "older, up to {usual} are usual ({reason})",
+            "report of {report}, placed on the market on {market}: the report is {count} days "
+            "older, up to {usual} are usual ({reason})",
+            days,
             report=report,
             market=market,
-            days=days,
-            usual=usual.words,
+            usual=say_counted("{count} day", "{count} days", int(usual.value)),
             reason=usual.reason,
         ),
         Decimal(-days),
-        say("days"),
+        "d",
     )
 
 
@@ -84,14 +86,15 @@ def report_after_assessment(evidence: LampEvidence) -> Iterator[Finding]:
         evidence.lamp.lamp_id,
         MEAN,
         Severity.CONTRADICTION,
-        say(
-            "report of {report}, assessment of {assessed}: the report is {days} days younger",
+        say_counted(
+            "report of {report}, assessment of {assessed}: the report is {count} day younger",
+            "report of {report}, assessment of {assessed}: the report is {count} days younger",
+            days,
             report=report,
             assessed=assessed,
-            days=days,
         ),
         Decimal(days),
-        say("days"),
+        "d",
     )
 
 

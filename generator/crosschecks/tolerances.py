@@ -187,26 +187,26 @@ _ROWS: tuple[Tolerance, ...] = (
     Tolerance(
         "report_before_market_d",
         Decimal(365),
-        say("days"),
+        "d",
         say("testing comes before placing on the market, seldom by more than a year"),
     ),
     # copied data
     Tolerance(
         "identical_quantities",
         Decimal(3),
-        say("quantities"),
+        "",
         say("fewer agree by chance"),
     ),
     Tolerance(
         "identical_digits",
         Decimal(10),
-        say("digits"),
+        "",
         say("that many significant digits in all do not agree by chance"),
     ),
     Tolerance(
         "digits_of_one_value",
         Decimal(3),
-        say("digits"),
+        "",
         say("values of fewer significant digits agree by rounding"),
     ),
     Tolerance(

@@ -19,6 +19,7 @@ from generator.intake.endurance_csv import read_endurance
 from generator.intake.folder_listing import CampaignFile, list_campaign
 from generator.intake.intensity_csv import read_intensity
 from generator.intake.lamps_csv import read_lamps
+from generator.intake.lettering import UncoveredCharacters, note_remarks
 from generator.intake.register import Register
 from generator.intake.spectra_csv import read_spectra
 from generator.intake.tables.problem_list import ProblemList, nearest
@@ -56,6 +57,7 @@ def read_campaign(
     folder: Path,
     check_tables: TablesCheck | None = None,
     check_whole: WholeCheck | None = None,
+    uncovered: UncoveredCharacters | None = None,
 ) -> Campaign:
     """Read a campaign folder.
 
@@ -69,6 +71,9 @@ def read_campaign(
     check_whole
         What other rooms have to say on settings and lamps together, where both could be read;
         its problems join the others.
+    uncovered
+        Gives the characters of a text that the sheets cannot print; where they stand is a
+        warning.
 
     Returns
     -------
@@ -80,7 +85,7 @@ def read_campaign(
     DataProblems
         If anything does stop it; carries every problem of every file.
     """
-    reading = _Reading(folder, check_tables, check_whole)
+    reading = _Reading(folder, check_tables, check_whole, uncovered)
     campaign = reading.campaign()
     if campaign is None:
         raise DataProblems(reading.problems)
@@ -114,6 +119,7 @@ class _Reading:
     folder: Path
     check_tables: TablesCheck | None = None
     check_whole: WholeCheck | None = None
+    uncovered: UncoveredCharacters | None = None
     problems: list[Problem] = field(default_factory=list)
     files: list[InputFile] = field(default_factory=list)
     register: Register = field(default_factory=Register)
@@ -179,7 +185,7 @@ class _Reading:
     def _settings(self) -> Settings | None:
         def read(text: str, _: CampaignFile, problems: ProblemList) -> Settings | None:
             self.setting_lines = key_lines(text)
-            return read_settings(text, problems, self.check_tables)
+            return read_settings(text, problems, self.check_tables, self.uncovered)
 
         settings = self._each(("campaign",), read)
         return settings[0] if settings else None
@@ -187,7 +193,8 @@ class _Reading:
     def _lamps(self) -> tuple[Lamp, ...]:
         self.register.lamps_whole = False
         read = self._each(
-            ("lamps",), lambda text, _, problems: read_lamps(text, self.register, problems)
+            ("lamps",),
+            lambda text, _, problems: read_lamps(text, self.register, problems, self.uncovered),
         )
         return read[0] if read else ()
 
@@ -248,6 +255,8 @@ class _Reading:
                     found=file.owner,
                     expected=nearest(file.owner, known) or "a lamp_id of lamps.csv, or campaign",
                 )
+            elif self.uncovered is not None:
+                note_remarks(text, self.uncovered, problems)
             return file.owner, text
 
         return {owner: text for owner, text in self._each(("notes",), read) if owner in known}

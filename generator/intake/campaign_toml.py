@@ -9,8 +9,12 @@ from decimal import Decimal
 from typing import TYPE_CHECKING, Any, get_args
 
 from generator.errors import Problem
+from generator.intake.lettering import UncoveredCharacters, note_uncovered, texts_in
 from generator.intake.tables.problem_list import ProblemList, nearest
+from generator.language import say
+from generator.language.speaking import LANGUAGES
 from generator.quantities import QUANTITIES
+from generator.records.setting_words import alternatives, as_written, expected_words
 
 if TYPE_CHECKING:
     from pydantic import BaseModel, ValidationError
@@ -80,7 +84,10 @@ TablesCheck = Callable[[Mapping[str, Any]], Iterable[Problem]]
 
 
 def read_settings(
-    text: str, problems: ProblemList, check_tables: TablesCheck | None = None
+    text: str,
+    problems: ProblemList,
+    check_tables: TablesCheck | None = None,
+    uncovered: UncoveredCharacters | None = None,
 ) -> Settings | None:
     """Read the settings.
 
@@ -92,6 +99,8 @@ def read_settings(
         Where to note what is wrong.
     check_tables
         Further checks on the parsed tables, run whether or not these are otherwise right.
+    uncovered
+        Gives the characters of a text that the sheets cannot print.
 
     Returns
     -------
@@ -116,8 +125,11 @@ def read_settings(
         _note_all(failure, raw, lines, problems, moved=moved)
     if settings is not None:
         _check_weights(settings, lines, problems)
+        _check_language(settings, lines, problems)
     for problem in check_tables(raw) if check_tables else ():
         note_further(problem, lines, problems)
+    if uncovered is not None:
+        _check_lettering(raw, uncovered, lines, problems)
     return settings if problems.errors == before else None
 
 
@@ -178,10 +190,11 @@ def key_lines(text: str) -> dict[_Path, int]:
 
 
 def line_of(path: tuple[str | int, ...], lines: Mapping[_Path, int]) -> int | None:
-    """The line of a key, or of the nearest key or table that holds it."""
+    """The line of a key (of a list, where it begins), or of the nearest table that holds it."""
     for end in range(len(path), 0, -1):
-        if path[:end] in lines:
-            return lines[path[:end]]
+        for known in (path[:end], (*path[:end], 0)):
+            if known in lines:
+                return lines[known]
     return None
 
 
@@ -218,7 +231,7 @@ def _parsed(text: str, problems: ProblemList) -> dict[str, Any] | None:
     try:
         return tomllib.loads(text, parse_float=Decimal)
     except (ValueError, RecursionError) as failure:
-        message = str(failure)
+        message = _mistake(failure)
         place = _AT_LINE.search(message)
         last = text.rstrip("\n").count("\n") + 1
         problems.error(
@@ -228,6 +241,15 @@ def _parsed(text: str, problems: ProblemList) -> dict[str, Any] | None:
             expected="TOML 1.0",
         )
         return None
+
+
+def _mistake(failure: ValueError | RecursionError) -> str:
+    """What the parser says of the file; not what it says of itself."""
+    if isinstance(failure, tomllib.TOMLDecodeError):
+        return str(failure)
+    if isinstance(failure, RecursionError):
+        return "lists or tables too deep inside one another"
+    return "a number of too many digits"
 
 
 def _move_spectra_unit(raw: dict[str, Any], lines: dict[_Path, int], problems: ProblemList) -> bool:
@@ -272,22 +294,24 @@ def _note_all(
 ) -> None:
     from generator.records.setting_values import WRONG_KEY
 
-    found: dict[_Path, ErrorDetails] = {}
+    found: dict[_Path, list[ErrorDetails]] = {}
     for error in failure.errors(include_url=False):
         blamed = _real_path(error["loc"], raw)
         if error["type"] == WRONG_KEY:
             blamed = (*blamed, str(error["ctx"]["key"]))
-        found.setdefault(blamed, error)
+        found.setdefault(blamed, []).append(error)
     unit = ("campaign", "spectra_unit")
-    for path, detail in sorted(found.items(), key=lambda item: line_of(item[0], lines) or 0):
-        _note(detail, path[1:] if moved and path == unit else path, lines, problems)
+    for path, details in sorted(found.items(), key=lambda item: line_of(item[0], lines) or 0):
+        _note(details, path[1:] if moved and path == unit else path, lines, problems)
 
 
 def _note(
-    detail: ErrorDetails, path: _Path, lines: dict[_Path, int], problems: ProblemList
+    details: list[ErrorDetails], path: _Path, lines: dict[_Path, int], problems: ProblemList
 ) -> None:
-    key = ".".join(str(part + 1) if isinstance(part, int) else part for part in path)
+    """Note what is wrong with one key; several details are what it could have been instead."""
+    key = _dotted(path)
     row = line_of(path, lines)
+    detail = details[0]
     if detail["type"] == "missing":
         problems.error(
             f"{key} is missing.", row=row, column=key, found="no such key", expected=f"{key} = …"
@@ -303,39 +327,26 @@ def _note(
             expected=near or "one of " + ", ".join(keys),
         )
     else:
+        heading = ".".join(part for part in path if isinstance(part, str))
         problems.error(
             f"{key} is not as it must be.",
             row=row,
             column=key,
             found=_found(detail, path),
-            expected=_expectation(detail["msg"]),
+            expected=alternatives(expected_words(item, heading) for item in details),
         )
+
+
+def _dotted(path: _Path) -> str:
+    return ".".join(str(part + 1) if isinstance(part, int) else part for part in path)
 
 
 def _found(detail: ErrorDetails, path: _Path) -> str:
     """What stands there; of a table whose keys do not go together, under the key to blame."""
     found = detail["input"]
     if "key" in detail.get("ctx", {}) and isinstance(found, dict):
-        return _as_written(found[path[-1]]) if path[-1] in found else "no such key"
-    return _as_written(found)
-
-
-def _expectation(message: str) -> str:
-    for beginning in ("Input should be ", "Value error, "):
-        message = message.removeprefix(beginning)
-    return message
-
-
-def _as_written(value: object) -> str:
-    if isinstance(value, bool):
-        return str(value).lower()
-    if isinstance(value, str):
-        return f'"{value}"'
-    if isinstance(value, dict):
-        return "a table with " + (", ".join(map(str, value)) or "no keys")
-    if isinstance(value, list | tuple):
-        return "[" + ", ".join(_as_written(item) for item in value) + "]"
-    return str(value)
+        return as_written(found[path[-1]]) if path[-1] in found else "no such key"
+    return as_written(found)
 
 
 def _real_path(loc: tuple[str | int, ...], raw: object) -> _Path:
@@ -381,8 +392,35 @@ def _check_weights(settings: Settings, lines: Mapping[_Path, int], problems: Pro
     if criteria and total != _WHOLE:
         problems.error(
             "The weights of the award criteria do not add up to 100 %.",
-            row=lines.get(("award", "criteria", 0)) or line_of(("award", "criteria"), lines),
+            row=line_of(("award", "criteria"), lines),
             column="award.criteria",
             found=f"{total} %",
             expected="100 %",
         )
+
+
+def _check_language(settings: Settings, lines: Mapping[_Path, int], problems: ProblemList) -> None:
+    """Say so where the sheets do not speak the language that the campaign names."""
+    if settings.sheet.languages or settings.campaign.catalogue:
+        return
+    problems.warning(
+        say("There is no catalogue for the language of the campaign; its sheets are in English."),
+        row=line_of(("campaign", "language"), lines),
+        column="campaign.language",
+        found=as_written(settings.campaign.language),
+        expected=f"one of {', '.join(LANGUAGES)}, or languages of the sheets under [sheet]",
+    )
+
+
+def _check_lettering(
+    raw: Mapping[str, Any],
+    uncovered: UncoveredCharacters,
+    lines: Mapping[_Path, int],
+    problems: ProblemList,
+) -> None:
+    """Name the texts that paper cannot show; what is refused anyway is not printed."""
+    named = {problem.column or "" for problem in problems.problems}
+    for path, text in texts_in(raw):
+        key = _dotted(path)
+        if not any(f"{key}.".startswith(f"{column}.") for column in named):
+            note_uncovered(text, uncovered, problems, row=line_of(path, lines), column=key)

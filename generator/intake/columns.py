@@ -14,6 +14,7 @@ from generator.language import numeral, say
 __all__ = [
     "DECLARED_COLUMNS",
     "LAMP_COLUMNS",
+    "LAMP_TEXTS",
     "SPANS",
     "UNIT_COLUMNS",
     "UNIT_FIGURES",
@@ -171,6 +172,19 @@ LAMP_COLUMNS = (
     "report_laboratory",
     "report_accreditation",
 )
+
+LAMP_TEXTS = (
+    "bidder",
+    "model",
+    "cap",
+    "technology",
+    "lot",
+    "report_no",
+    "report_model",
+    "report_laboratory",
+    "report_accreditation",
+)
+"""Columns of ``lamps.csv`` whose text the sheets print as it stands."""
 
 UNIT_FIGURES = (
     "luminous_flux_lm",

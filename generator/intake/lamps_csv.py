@@ -9,10 +9,12 @@ from decimal import Decimal
 from generator.intake.columns import (
     DECLARED_COLUMNS,
     LAMP_COLUMNS,
+    LAMP_TEXTS,
     SPANS,
     check_heading,
     check_span,
 )
+from generator.intake.lettering import UncoveredCharacters, note_uncovered
 from generator.intake.register import Register
 from generator.intake.tables.cells import CellReader
 from generator.intake.tables.problem_list import ProblemList
@@ -28,7 +30,12 @@ _CLASSES = frozenset("ABCDEFG")
 _LACKING = {"bidder": say("The lamp has no bidder."), "model": say("The lamp has no model.")}
 
 
-def read_lamps(text: str, register: Register, problems: ProblemList) -> tuple[Lamp, ...]:
+def read_lamps(
+    text: str,
+    register: Register,
+    problems: ProblemList,
+    uncovered: UncoveredCharacters | None = None,
+) -> tuple[Lamp, ...]:
     """Read the lamps and enter them in the register.
 
     Parameters
@@ -39,6 +46,8 @@ def read_lamps(text: str, register: Register, problems: ProblemList) -> tuple[La
         Where to enter the lamps.
     problems
         Where to note what is wrong.
+    uncovered
+        Gives the characters of a text that the sheets cannot print.
 
     Returns
     -------
@@ -59,6 +68,10 @@ def read_lamps(text: str, register: Register, problems: ProblemList) -> tuple[La
         register.lamps_whole = False
         problems.error("The file has no lamp.", found="a heading alone", expected="a row per lamp")
     _check_currencies(table.rows, problems)
+    if uncovered is not None:
+        for row, record in table.rows:
+            for column in LAMP_TEXTS:
+                note_uncovered(record.get(column, ""), uncovered, problems, row=row, column=column)
     return tuple(lamps)
 
 

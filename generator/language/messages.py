@@ -18,6 +18,8 @@ from string import Formatter
 from types import MappingProxyType
 from typing import Any, Protocol, Self, SupportsIndex
 
+from generator.language.quotations import MARKS, after_marks, are_marked, quoted
+
 __all__ = [
     "SEMICOLON",
     "Capital",
@@ -150,17 +152,19 @@ class Message(Worded):
         return message
 
     def format(self, *args: object, **values: object) -> Message:
-        """Fill the places; gives a message again."""
+        """Fill the places; gives a message again. A count given here is counted by."""
         if args:
             raise TypeError("the places of a message have names")
-        return Message(
-            self.singular, {**self.values, **values}, self.context, self.plural, self.counted
-        )
+        count = values.get("count")
+        counted = count if self.plural and isinstance(count, int) else self.counted
+        return Message(self.singular, {**self.values, **values}, self.context, self.plural, counted)
 
     def said_by(self, speaker: Speaker, renumber: Renumber | None = None) -> str:
         """Say the message in the language of the speaker."""
         pattern = speaker.pattern(self)
-        return _filled(pattern, self.values, speaker, renumber) if self.values else pattern
+        if self.values:
+            return _filled(pattern, self.values, speaker, renumber)
+        return quoted(pattern) if pattern == self.singular else pattern
 
     def __reduce_ex__(self, protocol: SupportsIndex) -> tuple[Any, ...]:
         kept = (self.singular, dict(self.values), self.context, self.plural, self.counted)
@@ -224,7 +228,8 @@ def _as_sentence(text: str) -> str:
     text = text.strip()
     if not text:
         return ""
-    return f"{_with_capital(text)}{'' if text.endswith(('.', '?', '!')) else '.'}"
+    ended = text.rstrip(MARKS).endswith((".", "?", "!"))
+    return f"{_with_capital(text)}{'' if ended else '.'}"
 
 
 class Capital(Worded):
@@ -249,11 +254,12 @@ class Capital(Worded):
 
 
 def _with_capital(text: str) -> str:
-    return f"{text[:1].upper()}{text[1:]}"
+    at = after_marks(text)
+    return f"{text[:at]}{text[at : at + 1].upper()}{text[at + 1 :]}"
 
 
 def _said(value: str, speaker: Speaker, renumber: Renumber | None) -> str:
-    return value.said_by(speaker, renumber) if isinstance(value, Worded) else value
+    return value.said_by(speaker, renumber) if isinstance(value, Worded) else quoted(value)
 
 
 def _filled(
@@ -277,6 +283,8 @@ def _value_text(value: Any, spec: str, speaker: Speaker | None, renumber: Renumb
     if isinstance(value, date) and speaker is not None:
         return speaker.day(value)
     text = format(value, spec)
+    if isinstance(value, str) and speaker is not None:
+        return quoted(text)
     if isinstance(value, int | float | Decimal) and not isinstance(value, bool):
         text = text.replace("-", "\u2212")
         return speaker.number(renumber(text) if renumber else text) if speaker else text
@@ -310,7 +318,7 @@ def say_as(context: str, pattern: str, /, **values: object) -> Message:
     return Message(pattern, values, context)
 
 
-def say_counted(one: str, many: str, count: int, /, **values: object) -> Message:
+def say_counted(one: str, many: str, count: int | None = None, /, **values: object) -> Message:
     """Write a message that depends on a count.
 
     Parameters
@@ -318,10 +326,12 @@ def say_counted(one: str, many: str, count: int, /, **values: object) -> Message
     one, many
         English patterns, literals, for a count of one and for others; ``{count}`` is the count.
     count
-        The count.
+        The count; ``None`` where it is filled later with ``format``.
     values
-        What stands in the other places.
+        What stands in the other places; none where the count comes later.
     """
+    if count is None:
+        return Message(one, values, "", many)
     return Message(one, {"count": count, **values}, "", many, count)
 
 
@@ -384,14 +394,16 @@ def told(text: str, renumber: Renumber | None = None) -> str:
     Returns
     -------
     str
-        Plain text; English where no language is being spoken.
+        Plain text; English where no language is being spoken. What it quotes in another language
+        has its marks (:mod:`generator.language.quotations`).
     """
     if not isinstance(text, Worded):
-        return text
+        return quoted(text)
     speaker = _SPEAKER.get()
     if speaker is not None:
         return text.said_by(speaker, renumber)
-    return text.said_by(_ENGLISH, renumber) if renumber else "".join(text)
+    spoken = renumber is not None or are_marked()
+    return text.said_by(_ENGLISH, renumber) if spoken else "".join(text)
 
 
 class _English:

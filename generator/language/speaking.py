@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import io
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator
 from contextlib import contextmanager
 from contextvars import ContextVar
 from datetime import date
@@ -12,6 +12,7 @@ from importlib.resources import files
 from typing import TYPE_CHECKING
 
 from generator.language.messages import Message, spoken_by
+from generator.language.quotations import marked, marking
 
 if TYPE_CHECKING:
     from babel import Locale
@@ -21,7 +22,9 @@ __all__ = [
     "LANGUAGES",
     "date_in_words",
     "decimal_sign",
+    "in_language",
     "language_name",
+    "quoting",
     "speaking",
     "spoken_language",
 ]
@@ -115,6 +118,45 @@ def speaking(tag: str) -> Iterator[None]:
 def spoken_language() -> str:
     """Give the tag of the language that is being spoken; English where none is."""
     return _TAG.get()
+
+
+def in_language(text: str, language: str) -> str:
+    """Mark text that is in another language than the one being spoken.
+
+    Parameters
+    ----------
+    text
+        Plain text.
+    language
+        Tag of its language.
+
+    Returns
+    -------
+    str
+        The text, with marks (:mod:`generator.language.quotations`) where its language is another.
+    """
+    return text if _primary(language) == _primary(spoken_language()) else marked(text, language)
+
+
+@contextmanager
+def quoting(texts: Iterable[str], language: str) -> Iterator[None]:
+    """Mark some texts wherever they are said as a whole, for the length of a ``with`` block.
+
+    Parameters
+    ----------
+    texts
+        Texts that stay as they are, whatever is being spoken.
+    language
+        Tag of their language; where it is the one being spoken, nothing is marked.
+    """
+    of_others = {text: in_language(text, language) for text in texts}
+    with marking({text: said for text, said in of_others.items() if said != text}):
+        yield
+
+
+def _primary(tag: str) -> str:
+    """The language of a tag, without region or script."""
+    return tag.partition("-")[0].lower()
 
 
 def date_in_words(day: date) -> str:

@@ -61,14 +61,23 @@ def _clause(
         leaf = BuyerLeaf.model_validate(table)
     except ValidationError as error:
         known = [field.alias or name for name, field in BuyerLeaf.model_fields.items()]
-        for key, message, found in first_problems(error):
+        for key, message, found in first_problems(error, "clause"):
             place = f"clause.{number}.{key}" if key else f"clause.{number}"
             expected = _expected(key, table, known, message)
-            text = f"{message[:1].upper()}{message[1:]}{'' if message.endswith('?') else '.'}"
-            problems.append(Problem("error", file, None, place, found, expected, text))
+            text = _text(place, message)
+            stands = "no such key" if message == "missing key" else found
+            problems.append(Problem("error", file, None, place, stands, expected, text))
         return None
     clause_id = leaf.id or f"buyer-{number}-{leaf.quantities[0].replace('_', '-')}"
     return leaf.record(clause_id, file)
+
+
+def _text(place: str, message: str) -> str:
+    if message.startswith("expected "):
+        return f"{place} is not as it must be."
+    if message == "missing key":
+        return f"{place} is missing."
+    return f"{message[:1].upper()}{message[1:]}{'' if message.endswith('?') else '.'}"
 
 
 def _expected(key: str, table: Mapping[str, Any], known: list[str], message: str) -> str:
@@ -78,4 +87,6 @@ def _expected(key: str, table: Mapping[str, Any], known: list[str], message: str
     if message == "unknown key":
         matches = difflib.get_close_matches(key, known, n=1, cutoff=0.6)
         return matches[0] if matches else f"one of {', '.join(sorted(known))}"
-    return ""
+    if message == "missing key":
+        return f"{key} = …"
+    return message.removeprefix("expected ") if message.startswith("expected ") else ""

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from types import MappingProxyType
-from typing import Annotated, Any, Literal, Self
+from typing import TYPE_CHECKING, Annotated, Any, Literal, Self
 
 from pydantic import BeforeValidator, Field, ValidationError, model_validator
 
@@ -32,6 +32,10 @@ from generator.lawbook.leaf_parts import (
 from generator.lawbook.leaf_text import source_of
 from generator.quantities import QUANTITIES
 from generator.records.clause import BUYER, Clause, Condition, Constant, Exemption, Source
+from generator.records.setting_words import alternatives, as_written, expected_words
+
+if TYPE_CHECKING:
+    from pydantic_core import ErrorDetails
 
 __all__ = [
     "BuyerLeaf",
@@ -311,6 +315,9 @@ class BuyerLeaf(_Judged):
         )
 
 
+_EXPECTED = "expected "
+_BRANCHES = frozenset({"bool", "decimal", "str", "SourceTable"})
+
 _KINDS: dict[str, type[ClauseLeaf | VerificationLeaf | ConstantLeaf | ExemptionLeaf]] = {
     "clause": ClauseLeaf,
     "verification": VerificationLeaf,
@@ -347,13 +354,15 @@ def leaf_of(
     return _KINDS[kind].model_validate(raw)
 
 
-def first_problems(error: ValidationError) -> list[tuple[str, str, str]]:
+def first_problems(error: ValidationError, table: str = "") -> list[tuple[str, str, str]]:
     """Give key, message and what was found for every fault of a leaf.
 
     Parameters
     ----------
     error
         What the model raised.
+    table
+        Heading of the table that the leaf is; empty where it is a file of its own.
 
     Returns
     -------
@@ -361,21 +370,30 @@ def first_problems(error: ValidationError) -> list[tuple[str, str, str]]:
         Dotted key, positions counted from 1 (empty where the leaf as a whole is meant),
         message, what was found.
     """
-    faults = []
+    faults: dict[tuple[str, str], list[str]] = {}
     for item in error.errors(include_url=False):
-        key = ".".join(
-            str(part + 1 if isinstance(part, int) else part)
-            for part in item["loc"]
-            if not _is_branch(part) or len(item["loc"]) == 1
-        )
-        message = item["msg"].removeprefix("Value error, ")
-        if item["type"] == "extra_forbidden":
-            message = "unknown key"
-        found = "" if item["type"] == "missing" or not key else repr(item["input"])
-        faults.append((key, message, found))
-    return faults
+        parts = [part for part in item["loc"] if not _is_branch(part) or len(item["loc"]) == 1]
+        key = ".".join(str(part + 1 if isinstance(part, int) else part) for part in parts)
+        found = "" if item["type"] == "missing" or not key else as_written(item["input"])
+        names = [part for part in parts if isinstance(part, str)]
+        heading = ".".join([table, *names] if table else names)
+        faults.setdefault((key, found), []).append(_message(item, heading))
+    return [
+        (key, alternatives(words).replace(f", or {_EXPECTED}", ", or "), found)
+        for (key, found), words in faults.items()
+    ]
+
+
+def _message(fault: ErrorDetails, heading: str) -> str:
+    """One fault in the words of this program; what the models say themselves stays whole."""
+    if fault["type"] == "missing":
+        return "missing key"
+    if fault["type"] == "extra_forbidden":
+        return "unknown key"
+    words = expected_words(fault, heading)
+    return words if fault["type"] == "value_error" else f"{_EXPECTED}{words}"
 
 
 def _is_branch(part: int | str) -> bool:
     """Whether a part of a place is the name of a type, put there by a union, and not a key."""
-    return isinstance(part, str) and ("[" in part or part in {"bool", "str", "SourceTable"})
+    return isinstance(part, str) and ("[" in part or part in _BRANCHES)

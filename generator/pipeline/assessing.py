@@ -69,6 +69,8 @@ def assess(campaign: str | Path, on: date | None = None) -> Assessment:
         If the data have errors; carries all of them.
     """
     read, law, asked = _intake(Path(campaign))
+    for problem in read.warnings:
+        _log.warning("%s", problem)
     day = on or read.settings.campaign.assessment_date or date.today()  # noqa: DTZ011 - local day
     return _judged(read, law, asked, day)
 
@@ -77,17 +79,16 @@ def _intake(folder: Path) -> tuple[Campaign, LawBook, tuple[Clause, ...]]:
     from generator.errors import DataProblems
     from generator.intake import read_campaign
     from generator.lawbook import buyer_clauses, claim_problems, read_law_book
+    from generator.sheets import uncovered_characters
 
     _log.info("intake: %s", folder)
-    campaign = read_campaign(folder, _check_tables, _check_tender)
+    campaign = read_campaign(folder, _check_tables, _check_tender, uncovered_characters)
     law = read_law_book()
     claims = tuple(claim_problems(campaign.lamps, law))
     if claims:
         raise DataProblems([*campaign.warnings, *claims])
     asked = law.clauses(campaign.settings.campaign.regimes)
     own = buyer_clauses(campaign.settings.clause, "campaign.toml")
-    for problem in campaign.warnings:
-        _log.warning("%s", problem)
     _log.info("  %d lamps, %d units", len(campaign.lamps), len(campaign.units))
     return campaign, law, (*asked, *own)
 

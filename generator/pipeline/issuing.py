@@ -228,11 +228,11 @@ def _sheets(
 ) -> Site:
     from generator.comparison import compare
     from generator.datasets import method, sources
-    from generator.language.speaking import speaking
+    from generator.language.speaking import quoting, speaking
     from generator.metrics import curves_of
     from generator.publish.site import Site
     from generator.records.comparison import SheetContext
-    from generator.sheets import theme_overrides
+    from generator.sheets import own_words, theme_overrides
 
     _log.info("comparison")
     campaign = assessment.campaign
@@ -249,10 +249,11 @@ def _sheets(
         products=products,
         harmonic_tables=_harmonic_tables(assessment),
     )
+    words, own = own_words(campaign.settings), campaign.settings.campaign.language
     trees = {}
     for language in campaign.settings.languages:
         _log.info("sheets: %s", language)
-        with speaking(language):
+        with speaking(language), quoting(words, own):
             trees[language] = _tree(assessment, context)
     return Site(trees, theme, context.overrides)
 

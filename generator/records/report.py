@@ -152,9 +152,14 @@ def _work(
     stated = laboratory.methods
     plain = (stated,) if isinstance(stated, str) else stated
     names = [method.name for method in report.methods] or [name for name in plain if name]
-    yield _item("methods", say("Methods"), "; ".join(names), "7.8.2.1 f")
-    deviations = "; ".join(
-        f"{method.name}: {method.deviations}" for method in report.methods if method.deviations
+    yield _item("methods", say("Methods"), joined(SEMICOLON, names), "7.8.2.1 f")
+    deviations = joined(
+        SEMICOLON,
+        (
+            joined(": ", (method.name, method.deviations))
+            for method in report.methods
+            if method.deviations
+        ),
     )
     yield _item("deviations", say("Deviations from the methods"), deviations, "7.8.2.1 n")
     yield _item("conditions", say("Conditions of the test"), report.conditions, "7.8.3.1 a")

@@ -38,6 +38,12 @@ class CampaignTable(Table):
     spectra_unit: Literal["W/nm", "relative"] | None = None
     regimes: tuple[str, ...] | None = None
 
+    @property
+    def catalogue(self) -> str:
+        """Tag of the catalogue for the language; empty where there is none."""
+        own = self.language.partition("-")[0].lower()
+        return own if own in LANGUAGES else ""
+
 
 class Laboratory(Table):
     """``[laboratory]``: who measured, and how."""
@@ -121,6 +127,8 @@ class SheetTable(Table):
     @field_validator("languages")
     @classmethod
     def _each_once(cls, languages: tuple[str, ...]) -> tuple[str, ...]:
+        if not languages:
+            raise ValueError(f"one or more of {', '.join(LANGUAGES)}; or no such key")
         if len(set(languages)) < len(languages):
             raise ValueError("each language once")
         return languages
@@ -143,5 +151,4 @@ class Settings(TenderSettings):
     @property
     def languages(self) -> tuple[str, ...]:
         """Languages of the sheets, by tag; at least one."""
-        own = self.campaign.language.partition("-")[0].lower()
-        return self.sheet.languages or (own if own in LANGUAGES else "en",)
+        return self.sheet.languages or (self.campaign.catalogue or "en",)

@@ -11,6 +11,7 @@ from generator.sheets.comparison_sheet import describe_comparison
 from generator.sheets.html_sheet import render_html
 from generator.sheets.lamp_description import LampSheet
 from generator.sheets.lamp_sheet import describe_lamp
+from generator.sheets.own_words import own_words
 from generator.sheets.page_place import PagePlace, page_place, tree_of
 from generator.sheets.pdf_sheet import (
     PdfEngine,
@@ -44,6 +45,7 @@ __all__ = [
     "describe_lamp",
     "describe_letters",
     "describe_tender_report",
+    "own_words",
     "page_place",
     "palette",
     "pdf_engine",

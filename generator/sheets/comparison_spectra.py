@@ -24,7 +24,7 @@ Array = NDArray[np.float64]
 
 SPECTRUM_LINES = (
     ("ink", ""),
-    ("accent", ""),
+    ("accent", "14 3"),
     ("bad", "7 2.5"),
     ("good", "2 2"),
     ("open", "8 2 2 2"),

@@ -18,10 +18,12 @@ from typing import Any
 from weakref import WeakKeyDictionary
 from xml.etree.ElementTree import Element
 
+from generator.sheets.engine_styles import share_styles
 from generator.sheets.engine_text import replace_everywhere, shorten_text
 from generator.sheets.paper_drawing import paper_drawing
+from generator.sheets.pdf_writing import lighten_compression
 
-__all__ = ["lean_defaults", "put_aside_drawings", "take_shortcuts"]
+__all__ = ["TooFullError", "lean_defaults", "put_aside_drawings", "take_shortcuts"]
 
 _FITTING_VERSION = "70."
 _WORDS_OF_NOTES = ("footnote", "note(", "list-item")
@@ -38,6 +40,20 @@ _TITLE = f"{_SVG}title"
 
 _PARTS: WeakKeyDictionary[Element, list[Element]] = WeakKeyDictionary()
 """Drawing -> its elements, where they were taken out of the page."""
+
+
+class TooFullError(Exception):
+    """A document does not keep to the pages it asked for; the rest of it is not made.
+
+    Parameters
+    ----------
+    page_one
+        Whether page one runs over, which was to stand alone; else there are too many pages.
+    """
+
+    def __init__(self, *, page_one: bool) -> None:
+        super().__init__("page one runs over" if page_one else "too many pages")
+        self.page_one = page_one
 
 
 def put_aside_drawings(root: Element) -> None:
@@ -99,12 +115,38 @@ def take_shortcuts() -> bool:
     if not weasyprint.__version__.startswith(_FITTING_VERSION):
         return False
     shorten_text()
+    share_styles()
+    from generator.sheets.setting.engine_hooks import set_type_ourselves
+
+    set_type_ourselves()
     _shorten_lengths()
     _shorten_drawings()
     _shorten_styles()
     _shorten_backgrounds()
     _shorten_borders()
+    _end_trials_early()
+    lighten_compression()
     return True
+
+
+def _end_trials_early() -> None:
+    """Leave a document that does not keep to the pages it asked for."""
+    from weasyprint.layout import page
+
+    plain = page.remake_page
+
+    def remake_page(index: int, context: Any, root: Any, html: Any) -> Any:
+        made = plain(index, context, root, html)
+        most = getattr(html, "most_pages", None)
+        resume_at, next_page, *_ = context.page_maker[index + 1]
+        if most is not None and resume_at is not None:
+            if index == 0 and next_page["break"] == "any":
+                raise TooFullError(page_one=True)
+            if index + 1 == most:
+                raise TooFullError(page_one=False)
+        return made
+
+    page.remake_page = remake_page
 
 
 def _shorten_drawings() -> None:
@@ -270,8 +312,8 @@ def _fixed_lengths(style: Any) -> dict[str, Any] | None:
 def _shorten_lengths() -> None:  # noqa: C901, PLR0915 - one small function for each shortcut
     """Resolve the lengths of a style once; most need no box to be resolved for."""
     from weasyprint.css import functions, properties
+    from weasyprint.layout import block, percent
     from weasyprint.layout import float as floated
-    from weasyprint.layout import percent
 
     plain_math, plain_percentages = functions.check_math, percent.resolve_percentages
     plain_radii, plain_one = percent.resolve_radii_percentages, percent.resolve_one_percentage
@@ -331,6 +373,10 @@ def _shorten_lengths() -> None:  # noqa: C901, PLR0915 - one small function for 
             return containing_block.content_box_x(), box.position_y, containing_block.width
         return plain_collisions(context, box, containing_block, outer)
 
+    def collapse_margin(margins: Any) -> Any:
+        return max(0, *margins) + min(0, *margins) if margins else 0
+
+    replace_everywhere(block.collapse_margin, collapse_margin)
     replace_everywhere(plain_collisions, avoid_collisions)
     replace_everywhere(plain_math, check_math)
     replace_everywhere(plain_percentages, resolve_percentages)

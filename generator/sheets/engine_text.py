@@ -12,7 +12,7 @@ from dataclasses import dataclass
 from functools import lru_cache
 from typing import Any
 
-__all__ = ["replace_everywhere", "shorten_text"]
+__all__ = ["forget_lines", "replace_everywhere", "shorten_text"]
 
 
 _BESIDE_FONT = (
@@ -24,6 +24,23 @@ _BESIDE_FONT = (
     "overflow_wrap",
 )
 """What tells the layouts of two styles apart that have the same font, size and language."""
+
+
+@dataclass(slots=True)
+class _Memory:
+    """How many broken lines are kept; with a new list, those of the old one are forgotten."""
+
+    lines: list[int]
+
+
+_memory = _Memory([])
+_MOST_LINES = 5_000
+
+
+def forget_lines() -> None:
+    """Let go of the lines of past documents where they have become many."""
+    if len(_memory.lines) > _MOST_LINES:
+        _memory.lines = []
 
 
 def replace_everywhere(plain: Any, short: Any) -> None:
@@ -174,10 +191,12 @@ def shorten_text() -> None:  # noqa: C901, PLR0915 - one small function for each
         rest = (max_width, justification_spacing, is_line_start, minimum)
         if type(own) is not ComputedStyle or style["white_space"] != own["white_space"]:
             return plain_split(text, style, context, *rest)
-        kept = own.__dict__.setdefault("lines", {})
-        key = (text, *rest)
+        if own.__dict__.get("lines_of") is not _memory.lines:
+            own.lines_of, own.lines = _memory.lines, {}
+        kept, key = own.lines, (text, *rest)
         if key not in kept:
             kept[key] = plain_split(text, style, context, *rest)
+            _memory.lines.append(1)
         return kept[key]
 
     replace_everywhere(plain_split, split_first_line)
@@ -197,15 +216,17 @@ def _keep(layout: Any) -> None:
 
 def _font_keys(plain: Any) -> Any:
     """Describe each font once. The font is held, so that no other can take its address."""
-    from weasyprint.text.ffi import ffi, pango
+    from weasyprint.text.ffi import ffi, gobject
 
     known: dict[int, Any] = {}
+    ffi.cdef("void *g_object_ref(void *object);", override=True)
 
     def font_key(pango_font: Any) -> Any:
         address = int(ffi.cast("uintptr_t", pango_font))
         if address not in known:
-            known[address] = (plain(pango_font), pango.pango_font_get_hb_font(pango_font))
-        return known[address][0]
+            known[address] = plain(pango_font)
+            gobject.g_object_ref(pango_font)
+        return known[address]
 
     return font_key
 
@@ -217,7 +238,8 @@ def _first_line_painter(plain: Any) -> Any:  # noqa: C901 - one loop over runs a
     glyph_form = struct.Struct("=IiiiI")
     if ffi.sizeof("PangoGlyphInfo") != glyph_form.size:
         return plain
-    not_plain = pango.PANGO_GLYPH_UNKNOWN_FLAG
+    not_plain = pango.PANGO_GLYPH_EMPTY
+    """Letters without a mark, such as soft hyphens, and above them those that no face has."""
 
     def paint(
         stream: Any, textbox: Any, text_overflow: Any, block_ellipsis: Any, matrix: Any

@@ -29,6 +29,7 @@ from generator.sheets.number_format import (
 )
 from generator.sheets.words import (
     BASIS_WORDS,
+    CLASS_GRADES,
     COMPARISON_SIGNS,
     GRADE_NAMES,
     MARKS,
@@ -79,7 +80,7 @@ def figure_text(figure: Figure | None, name: str) -> FigureText:
     if figure.value is None:
         return FigureText(*head, NOT_MEASURED, "", "", figure.reason or say("no reason given"))
     if isinstance(figure.value, str):
-        grade = GRADE_NAMES[figure.grade]
+        grade = CLASS_GRADES[figure.grade]
         return FigureText(*head, figure.value, "", grade, "", _detail(figure, 0))
     uncertainty = figure.expanded_uncertainty
     decimals = _decimals(uncertainty, name)

@@ -178,16 +178,16 @@ def _identity(lamp: Lamp, names: ShownNames) -> tuple[Pair, ...]:
 
 def _verdict_sentence(counts: Counter[VerdictWord]) -> str:
     numbers = {
-        "judged": sum(counts[word] for word in _JUDGED),
+        "count": sum(counts[word] for word in _JUDGED),
         "failed": counts[VerdictWord.FAIL],
         "passed": counts[VerdictWord.PASS],
         "open": counts[VerdictWord.INCONCLUSIVE],
         "unmeasured": counts[VerdictWord.NOT_MEASURED],
     }
-    if not numbers["judged"]:
+    if not numbers["count"]:
         return VERDICT_SENTENCES["none"]
     first = "fails" if numbers["failed"] else "passes some"
-    if numbers["passed"] == numbers["judged"]:
+    if numbers["passed"] == numbers["count"]:
         first = "passes all"
     keys = [first]
     keys += ["open"] if numbers["open"] else []
@@ -274,10 +274,9 @@ def _evidence(assessment: Assessment, lamp_id: str) -> str:
     counted = joined(
         ", ", (GRADE_COUNTS[grade].format(count=grades[grade]) for grade in Grade if grades[grade])
     )
-    first = {0: "no unit", 1: "one unit"}.get(units, "units")
-    second = "figures" if counted else "no figures"
-    keys = (first, second)
-    return joined(" ", (EVIDENCE[key].format(units=units, counted=counted) for key in keys))
+    measured = EVIDENCE["units"].format(count=units) if units else EVIDENCE["no unit"]
+    rests = EVIDENCE["figures"].format(counted=counted) if counted else EVIDENCE["no figures"]
+    return joined(" ", (measured, rests))
 
 
 def _gaps(assessment: Assessment, lamp: Lamp) -> list[str]:

@@ -6,7 +6,8 @@ import re
 from collections.abc import Iterable, Iterator
 from decimal import Decimal
 
-from generator.language import Passage, joined, told
+from generator.language import SEMICOLON, Passage, joined, told
+from generator.language.speaking import in_language
 from generator.quantities import QUANTITIES, quantity
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext
@@ -80,7 +81,7 @@ def _named_source(text: str, context: SheetContext) -> str:
     """A source key with its clause, the key by the title of the document."""
     key, *clause = text.parts if isinstance(text, Passage) else text.split(", ", 1)
     known = context.sources.get(key)
-    return joined(", ", (known.title, *clause)) if known else text
+    return joined(", ", (in_language(known.title, "en"), *clause)) if known else text
 
 
 def method_texts(figures: Iterable[Figure], context: SheetContext) -> tuple[MethodText, ...]:
@@ -221,7 +222,7 @@ def _laboratory(settings: Settings) -> dict[str, str]:
         "laboratory": laboratory.name,
         "address": laboratory.address,
         "accreditation": laboratory.accreditation,
-        "methods": methods if isinstance(methods, str) else "; ".join(methods),
+        "methods": methods if isinstance(methods, str) else joined(SEMICOLON, methods),
     }
 
 
@@ -292,10 +293,10 @@ def _life_cycle(assessment: Assessment, lamp_id: str) -> Iterator[UseText]:
         if bid.cost is not None:
             years, lamps = bid.cost.years, bid.cost.lamps
             yield UseText(
-                USE_LABELS["life"].format(years=years),
+                USE_LABELS["life"].format(count=years),
                 shown(bid.cost.total, 0),
                 bid.cost.currency,
-                LIFE_BASES[bid.cost.prices].format(lamps=lamps),
+                LIFE_BASES[bid.cost.prices].format(count=lamps),
             )
 
 

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from generator.language import say, say_as
+from generator.language import say, say_as, say_counted
 from generator.records.figure import Grade
 from generator.records.finding import Severity
 
@@ -85,9 +85,13 @@ SILHOUETTE = {
 
 VERDICT_SENTENCES = {
     "none": say("No clause could be judged."),
-    "fails": say("Fails {failed} of {judged} judgements."),
-    "passes all": say("Passes all {judged} judgements."),
-    "passes some": say("Passes {passed} of {judged} judgements."),
+    "fails": say_counted(
+        "Fails {failed} of {count} judgement.", "Fails {failed} of {count} judgements."
+    ),
+    "passes all": say_counted("Passes the one judgement.", "Passes all {count} judgements."),
+    "passes some": say_counted(
+        "Passes {passed} of {count} judgement.", "Passes {passed} of {count} judgements."
+    ),
     "open": say("{open} cannot be told within the uncertainty."),
     "not measured": say("{unmeasured} not measured."),
 }
@@ -119,8 +123,7 @@ GRADE_COUNTS = {
 }
 
 EVIDENCE = {
-    "units": say("{units} units in the campaign."),
-    "one unit": say("One unit in the campaign."),
+    "units": say_counted("One unit in the campaign.", "{count} units in the campaign."),
     "no unit": say("No unit in the campaign."),
     "figures": say("Figures: {counted}."),
     "no figures": say("No figures."),
@@ -132,7 +135,10 @@ FOLDED = {
     "methods": say("Further methods on the HTML sheet: {count}."),
     "notes": say("Further notes on the verdicts on the HTML sheet: {count}."),
     "remarks": say("The remarks continue on the HTML sheet."),
-    "products": say("Product information, {count} fields, stands on the HTML sheet."),
+    "products": say_counted(
+        "Product information, {count} field, stands on the HTML sheet.",
+        "Product information, {count} fields, stands on the HTML sheet.",
+    ),
     "tables": say(
         "This is the short form. Declared values beside determined ones, product information, the "
         "units with their spread, grades and methods stand on the HTML sheet."
@@ -248,7 +254,7 @@ USE_LABELS = {
     "cost": say("Electricity bill a year"),
     "location": say("Carbon a year, by the grid"),
     "market": say("Carbon a year, by contract"),
-    "life": say("Cost over {years} years"),
+    "life": say_counted("Cost over {count} year", "Cost over {count} years"),
     "saving": say("Energy saved a year"),
 }
 
@@ -261,7 +267,13 @@ USE_BASES = {
 }
 
 LIFE_BASES = {
-    "real": say("present value for {lamps} lamps, purchase to end of life, real prices"),
-    "nominal": say("present value for {lamps} lamps, purchase to end of life, nominal prices"),
+    "real": say_counted(
+        "present value for {count} lamp, purchase to end of life, real prices",
+        "present value for {count} lamps, purchase to end of life, real prices",
+    ),
+    "nominal": say_counted(
+        "present value for {count} lamp, purchase to end of life, nominal prices",
+        "present value for {count} lamps, purchase to end of life, nominal prices",
+    ),
 }
 """Kind of prices -> on what the cost over the life rests."""

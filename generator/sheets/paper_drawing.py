@@ -11,7 +11,6 @@ from __future__ import annotations
 import re
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
-from functools import cache
 from itertools import pairwise
 from typing import Any
 from xml.etree.ElementTree import Element
@@ -332,31 +331,19 @@ class PaperDrawing:
                     _paint_blend(stream, mark)
 
     def _write(self, stream: Any, label: _Label) -> None:
-        split_first_line, draw_first_line, matrix, text_box = _engine_parts()
+        from generator.sheets.setting.shapes import shaped, write_shape
+
         style = _label_style(self._faces, label)
-        layout, _, _, width, _, _ = split_first_line(label.words, style, None, None, 0)
-        layout.reactivate(style)
+        shape = shaped(label.words, style)
         share = {"start": 0.0, "middle": 0.5, "end": 1.0}[label.anchor]
         x, y = label.at
         stream.begin_text()
         if label.bordered:
             stream.stream.append(b"2 Tr")
-        place = matrix(d=-1, e=x - share * width, f=y)
-        draw_first_line(stream, text_box(layout, style), "none", "none", place)
+        write_shape(stream, shape, style, x - share * shape.width, y)
         if label.bordered:
             stream.stream.append(b"0 Tr")
         stream.end_text()
-
-
-@cache
-def _engine_parts() -> tuple[Any, Any, Any, Any]:
-    """What the engine has to break, paint and place a text with."""
-    from weasyprint.draw.text import draw_first_line
-    from weasyprint.matrix import Matrix
-    from weasyprint.svg.text import TextBox
-    from weasyprint.text.line_break import split_first_line
-
-    return split_first_line, draw_first_line, Matrix, TextBox
 
 
 def _label_style(font_config: Any, label: _Label) -> Any:

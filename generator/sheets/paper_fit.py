@@ -22,8 +22,8 @@ __all__ = ["REST", "ROOMY", "ROWS", "SHORT_REST", "SHORT_ROWS", "Budget", "Trial
 
 _WORDS = {mark: word for word, mark in MARKS.items()}
 _ORDER = ("fail", "inconclusive", "not-measured", "pass", "not-applicable")
-_FIRST_DRAWINGS = ("spectrum", "light", "mains", "rendering", "white", "watts")
-_THEN_DRAWINGS = ("harmonics", "ageing", "intensity", "plane", "hues")
+_FIRST_DRAWINGS = ("spectrum", "light", "mains", "rendering", "intensity", "white", "watts")
+_THEN_DRAWINGS = ("harmonics", "ageing", "plane", "hues")
 
 
 @dataclasses.dataclass(frozen=True, slots=True)

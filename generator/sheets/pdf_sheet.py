@@ -13,10 +13,19 @@ from dataclasses import dataclass
 from datetime import UTC, date, datetime
 from functools import cache
 from pathlib import Path
+from types import SimpleNamespace
 from typing import Any
+from xml.etree.ElementTree import Element
 
 from generator.errors import SheetError
-from generator.sheets.engine_shortcuts import lean_defaults, put_aside_drawings, take_shortcuts
+from generator.sheets.engine_shortcuts import (
+    TooFullError,
+    lean_defaults,
+    put_aside_drawings,
+    take_shortcuts,
+)
+from generator.sheets.engine_styles import remember_styles
+from generator.sheets.engine_text import forget_lines
 from generator.sheets.html_sheet import Sheet, render_paper
 from generator.sheets.lamp_description import LampSheet
 from generator.sheets.paper_fit import Trials, fitted
@@ -98,9 +107,37 @@ def _asset_fetcher() -> Any:
     return AssetFetcher(allowed_protocols=(), allow_redirects=False, fail_on_errors=True)
 
 
+class _WrappedWhenAsked:
+    """The root of a page, for the selectors of the engine; most pages need none of them.
+
+    Parameters
+    ----------
+    root
+        The tree of the page.
+    """
+
+    def __init__(self, root: Element) -> None:
+        self.etree_element = root
+
+    def query_all(self, *tags: str) -> Iterator[Any]:
+        """Find the elements of some tags, in the order of the page."""
+        return (
+            SimpleNamespace(etree_element=item)
+            for item in self.etree_element.iter()
+            if item.tag in tags
+        )
+
+    def iter_subtree(self) -> Any:
+        """Wrap every element of the page."""
+        from cssselect2 import ElementWrapper
+
+        return ElementWrapper.from_html_root(
+            self.etree_element, content_language=None
+        ).iter_subtree()
+
+
 def _read(page: str, fetcher: Any) -> Any:
     """Give the page to the engine as a tree; as text where it is not well formed."""
-    from cssselect2 import ElementWrapper
     from weasyprint import HTML
 
     root = page_tree(page)
@@ -109,14 +146,16 @@ def _read(page: str, fetcher: Any) -> Any:
     put_aside_drawings(root)
     document = HTML.__new__(HTML)
     document.base_url, document.url_fetcher, document.media_type = None, fetcher, "print"
-    document.wrapper_element = ElementWrapper.from_html_root(root, content_language=None)
-    document.etree_element = document.wrapper_element.etree_element
+    document.wrapper_element, document.etree_element = _WrappedWhenAsked(root), root
     return document
 
 
 @contextlib.contextmanager
 def _collected_afterwards() -> Iterator[None]:
-    """Keep the collector from running amid a document; collect after it."""
+    """Keep the collector from running amid a document; collect after it.
+
+    What is alive then stays for all documents and need not be looked at after each.
+    """
     was_on = gc.isenabled()
     gc.disable()
     try:
@@ -125,6 +164,7 @@ def _collected_afterwards() -> Iterator[None]:
         if was_on:
             gc.enable()
         gc.collect()
+        gc.freeze()
 
 
 class PdfEngine:
@@ -161,10 +201,12 @@ class PdfEngine:
             of_lamp: CSS(string=style, url_fetcher=self._fetcher, font_config=self._fonts)
             for of_lamp, style in written.items()
         }
+        for of_lamp, style in written.items():
+            remember_styles(self._styles[of_lamp], style)
         self._defaults = lean_defaults(written[False])
         gc.freeze()
 
-    def lay_out(self, page: str, *, of_lamp: bool = True) -> Any:
+    def lay_out(self, page: str, *, of_lamp: bool = True, most_pages: int | None = None) -> Any:
         """Lay out a page of HTML; give the document of the engine.
 
         Parameters
@@ -173,8 +215,16 @@ class PdfEngine:
             A whole page.
         of_lamp
             Whether it is a page of one lamp; pages of many have rules of their own.
+        most_pages
+            How many pages it may have, page one alone up to the break of the style sheet.
+
+        Raises
+        ------
+        TooFullError
+            Where it does not keep to them, if the engine can tell early.
         """
         document = _read(page, self._fetcher)
+        document.most_pages = most_pages
         if self._defaults is not None:
             document._ua_stylesheets = lambda _forms: [self._defaults]
         return document.render(
@@ -202,6 +252,7 @@ class PdfEngine:
             If a lamp does not fit on its pages.
         """
         with _collected_afterwards():
+            _forget_past_texts()
             document = self._fitting(sheet)
             document.metadata.attachments = _attached(attachments, sheet.frame.assessed_on)
             _claim_accessibility(document)
@@ -215,10 +266,15 @@ class PdfEngine:
         while (budget := trials.budget) is not None:
             page = render_paper(fitted(sheet, budget), dense=budget.dense)
             if page != tried:
-                document, tried = self.lay_out(page), page
-                alone = _short_form_fits(document)
-                if alone and len(document.pages) <= most:
-                    return document
+                tried = page
+                try:
+                    document = self.lay_out(page, most_pages=most)
+                except TooFullError as full:
+                    alone = not full.page_one
+                else:
+                    alone = _short_form_fits(document)
+                    if alone and len(document.pages) <= most:
+                        return document
             trials.tighten(page_one=not alone)
         raise SheetError(f"the sheet of {sheet.lamp_id} does not fit on {most} pages")
 
@@ -234,6 +290,15 @@ def written_pdf(document: Any) -> bytes:
         # The engine leaves the file of its colour profile to be closed by the interpreter.
         warnings.simplefilter("ignore", ResourceWarning)
         return bytes(document.write_pdf(pdf_variant=_VARIANT, finisher=finish_archive))
+
+
+def _forget_past_texts() -> None:
+    """Let go of what was kept of the texts of past documents where it has become much."""
+    if take_shortcuts():
+        from generator.sheets.setting.shapes import forget_shapes
+
+        forget_lines()
+        forget_shapes()
 
 
 def _claim_accessibility(document: Any) -> None:

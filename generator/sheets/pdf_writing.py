@@ -7,9 +7,11 @@ from __future__ import annotations
 
 import zlib
 from collections.abc import Callable
+from functools import lru_cache
+from types import SimpleNamespace
 from typing import Any
 
-__all__ = ["write_out"]
+__all__ = ["lighten_compression", "write_out"]
 
 _LEVEL = 6
 """Of compression; the highest takes twice the time for two bytes in a hundred."""
@@ -21,9 +23,22 @@ def _number(value: float) -> bytes:
     return f"{value:f}".rstrip("0").encode()
 
 
-_SIMPLE: dict[type, Callable[[Any], bytes]] = {
+def _dictionary(item: Any) -> bytes:
+    return b"<<" + _pairs(item) + b">>"
+
+
+def _array(item: Any) -> bytes:
+    return b"[" + b" ".join(map(_plain, item)) + b"]"
+
+
+@lru_cache(maxsize=4096)
+def _word(text: str) -> bytes:
+    return text.encode("ascii")
+
+
+_WRITERS: dict[type, Callable[[Any], bytes]] = {
     bytes: bytes,
-    str: lambda item: item.encode("ascii"),
+    str: _word,
     int: lambda item: b"%d" % item,
     float: _number,
 }
@@ -31,20 +46,30 @@ _SIMPLE: dict[type, Callable[[Any], bytes]] = {
 
 def _plain(item: Any) -> bytes:
     """Write out a value, the way the engine does."""
-    simple = _SIMPLE.get(type(item))
-    if simple is not None:
-        return simple(item)
+    kind = type(item)
+    writer = _WRITERS.get(kind)
+    if writer is None:
+        writer = _WRITERS[kind] = _writer(item)
+    return writer(item)
+
+
+def _writer(item: Any) -> Callable[[Any], bytes]:
+    """How values of the kind of an item are written."""
     if isinstance(item, dict):
-        return b"<<" + _pairs(item) + b">>"
+        return _dictionary
     if isinstance(item, list):
-        return b"[" + b" ".join(map(_plain, item)) + b"]"
-    return bytes(item.data) if hasattr(item, "data") else str(item).encode("ascii")
+        return _array
+    if hasattr(item, "data"):
+        return lambda value: bytes(value.data)
+    return lambda value: str(value).encode("ascii")
 
 
 def _pairs(item: dict[Any, Any]) -> bytes:
     return b"".join(
-        b"/%b %b" % (key.encode("ascii") if type(key) is str else _plain(key), _plain(value))
-        for key, value in item.items()
+        [
+            b"/%b %b" % (_word(key) if type(key) is str else _plain(key), _plain(value))
+            for key, value in item.items()
+        ]
     )
 
 
@@ -56,6 +81,13 @@ def _stream(item: Any) -> bytes:
         content = zlib.compress(content, _LEVEL)
     extra["Length"] = len(content)
     return b"\n".join((_plain(extra), b"stream", content, b"endstream"))
+
+
+def lighten_compression() -> None:
+    """Let the engine compress what it packs itself no harder than the rest."""
+    import pydyf
+
+    pydyf.zlib = SimpleNamespace(compressobj=lambda level: zlib.compressobj(min(level, _LEVEL)))
 
 
 def write_out(pdf: Any) -> None:

@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Iterable
 from typing import TYPE_CHECKING
 
-from generator.language.speaking import spoken_language
+from generator.language import joined
+from generator.language.speaking import in_language, spoken_language
 from generator.records.assessment import Assessment
 from generator.records.comparison import SheetContext, SourceLike
 from generator.sheets.description import SheetFrame, SourceText
@@ -54,7 +55,9 @@ def sheet_frame(
         campaign=settings.campaign.title,
         reference=settings.campaign.reference,
         client=settings.campaign.client,
-        laboratory=", ".join(part for part in (laboratory.name, laboratory.accreditation) if part),
+        laboratory=joined(
+            ", ", (part for part in (laboratory.name, laboratory.accreditation) if part)
+        ),
         assessed_on=assessment.assessed_on.isoformat(),
         assessed_words=date_words(assessment.assessed_on),
         version=f"lampassay {assessment.version}",
@@ -79,8 +82,11 @@ def _short(table: SheetTable) -> bool:
 
 
 def source_text(source: SourceLike | None, key: str) -> str:
-    """Write a source: title, edition, publisher, date; its key where it is not known."""
+    """Write a source: title, edition, publisher, date; its key where it is not known.
+
+    Sources are written in English whatever is being spoken.
+    """
     if source is None:
         return key
     parts = (source.title, source.edition, source.publisher, source.date)
-    return ", ".join(part for part in parts if part)
+    return in_language(", ".join(part for part in parts if part), "en")

@@ -48,9 +48,9 @@ def cost_blocks(lot: LotResult, titles: Mapping[str, str], currency: str) -> Ite
         for item in lot.bids
         if item.withheld
     ]
-    first = next((item.cost for item in costed if item.cost is not None), None)
-    if first is not None:
-        yield ParagraphBlock(_study(first, currency), "quiet")
+    studies = [item.cost for item in costed if item.cost is not None]
+    if studies:
+        yield ParagraphBlock(_study(studies[0], currency), "quiet")
         yield item_table(lot, titles, currency)
         yield ParagraphBlock(_EQUAL, "quiet")
         yield _light_table(costed, currency)
@@ -132,12 +132,9 @@ def _light_table(costed: Sequence[BidResult], currency: str) -> TableBlock:
 def _break_even_table(costed: Sequence[BidResult], currency: str) -> TableBlock:
     rows = []
     for item in costed:
-        even = item.break_even
-        year = NONE
-        if even is not None:
+        if (even := item.break_even) is not None:
             year = say("never") if even.year is None else str(even.year)
-        saving = amount(even.saving if even else None)
-        rows.append((item.shown_as, saving, year, _payback(even) if even else NONE))
+            rows.append((item.shown_as, amount(even.saving), year, _payback(even)))
     headings = (
         say("Bid"),
         say("Saving, {currency}", currency=currency),
@@ -159,18 +156,18 @@ def tornado_blocks(
     lot: LotResult, moved: Sensitivity, currency: str, colours: Palette
 ) -> Iterator[Block]:
     """Sensitivity: a drawing for the bid that stands first, a table for every bid."""
-    bids = [item for item in lot.bids if item.sensitivity and item.cost is not None]
+    bids = [(item, item.cost) for item in lot.bids if item.sensitivity and item.cost is not None]
     if not bids:
         return
     yield HeadingBlock(say("Sensitivity"), 3)
-    yield DrawingBlock(_tornado(bids[0], currency, colours))
+    yield DrawingBlock(_tornado(*bids[0], currency, colours))
     spans = {
         "tariff": moved.tariff_percent,
         "hours per year": moved.hours_percent,
         "discount rate": moved.discount_rate_percent,
         "life": moved.life_percent,
     }
-    rows = tuple((item.shown_as, *_ranges(item, tuple(spans))) for item in bids)
+    rows = tuple((item.shown_as, *_ranges(item, tuple(spans))) for item, _ in bids)
     moves = (
         say("{assumption} ± {span} %", assumption=MOVED_ASSUMPTIONS[name], span=span)
         for name, span in spans.items()
@@ -194,7 +191,7 @@ def _ranges(item: BidResult, names: Sequence[str]) -> Iterator[str]:
         )
 
 
-def _tornado(item: BidResult, currency: str, colours: Palette) -> Drawing:
+def _tornado(item: BidResult, cost: LifeCycleCost, currency: str, colours: Palette) -> Drawing:
     bars = tuple(
         replace(bar, assumption=told(MOVED_ASSUMPTIONS[bar.assumption])) for bar in item.sensitivity
     )
@@ -207,7 +204,6 @@ def _tornado(item: BidResult, currency: str, colours: Palette) -> Drawing:
         high=amount(ends[1]),
         currency=currency,
     )
-    cost = float(item.cost.total) if item.cost is not None else 0.0
     rows = tuple((bar.assumption, amount(bar.low_cost), amount(bar.high_cost)) for bar in bars)
     table = DataTable(
         (say("assumption"), say("cost at the lower"), say("cost at the higher")), rows
@@ -216,25 +212,21 @@ def _tornado(item: BidResult, currency: str, colours: Palette) -> Drawing:
         "tornado",
         say("Sensitivity of the cost"),
         says,
-        draw_tornado(bars, cost, currency, told(says), colours),
+        draw_tornado(bars, float(cost.total), currency, told(says), colours),
         table,
     )
 
 
 def energy_blocks(lot: LotResult, titles: Mapping[str, str]) -> Iterator[Block]:
     """Energy of a year, its saving, and emissions on each basis."""
-    known = [item for item in lot.bids if item.energy is not None]
+    known = [(item.shown_as, item.energy) for item in lot.bids if item.energy is not None]
     if not known:
         return
     yield HeadingBlock(say("Energy and emissions of a year"), 3)
-    first = known[0].energy
-    bases = first.emissions if first is not None else ()
+    first = known[0][1]
     rows = []
-    for item in known:
-        use = item.energy
-        if use is None:
-            continue
-        cells = [item.shown_as, str(use.lamps), number(use.in_use_kwh, 0)]
+    for name, use in known:
+        cells = [name, str(use.lamps), number(use.in_use_kwh, 0)]
         cells += [number(use.standby_kwh, 0), number(use.saving_kwh, 0)]
         for emission in use.emissions:
             cells += [number(emission.tonnes, 2), number(emission.saving_tonnes, 2)]
@@ -246,7 +238,7 @@ def energy_blocks(lot: LotResult, titles: Mapping[str, str]) -> Iterator[Block]:
         say("Standby, kWh"),
         say("Saved, kWh"),
     ]
-    for emission in bases:
+    for emission in first.emissions:
         basis = EMISSION_BASES[emission.basis]
         headings += [say("{basis}, t CO\u2082e", basis=basis), say("saved, t CO\u2082e")]
     yield TableBlock(_energy_caption(lot, titles), tuple(headings), tuple(rows))
@@ -258,9 +250,9 @@ def energy_blocks(lot: LotResult, titles: Mapping[str, str]) -> Iterator[Block]:
             year=emission.factor.year or say("year not stated"),
             source=emission.factor.source,
         )
-        for emission in bases
+        for emission in first.emissions
     )
-    yield ListBlock((*factors, *(first.notes if first is not None else ())))
+    yield ListBlock((*factors, *first.notes))
 
 
 def _energy_caption(lot: LotResult, titles: Mapping[str, str]) -> str:

@@ -37,7 +37,7 @@ def asked_for(settings: TenderSettings, titles: Mapping[str, str]) -> tuple[str,
         end = tender.reports_to or say("the assessment")
         words.append(ASKED_REPORTS["window"].format(begin=begin, end=end))
     if tender.minimum_sample_units:
-        words.append(ASKED_REPORTS["sample"].format(units=tender.minimum_sample_units))
+        words.append(ASKED_REPORTS["sample"].format(count=tender.minimum_sample_units))
     if tender.laboratory_required:
         words.append(ASKED_REPORTS["laboratory"])
     if tender.accreditation_required:
@@ -125,7 +125,7 @@ def eligibility_blocks(
     counts = [item.eligibility.outcome for item in lot.bids]
     yield ParagraphBlock(
         LOT_OUTCOME.format(
-            bids=len(counts),
+            count=len(counts),
             admissible=counts.count(Outcome.ADMISSIBLE),
             clarify=counts.count(Outcome.TO_CLARIFY),
             refused=counts.count(Outcome.NOT_ADMISSIBLE),

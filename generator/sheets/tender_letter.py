@@ -64,7 +64,7 @@ def _letter(code: str, assessment: Assessment, context: SheetContext) -> TenderD
     frame = tender_frame(assessment, context, title, to, _SOURCES)
     return TenderDocument(
         frame=frame,
-        over=f"{settings.campaign.title}. {frame.assessed_words}",
+        over=joined(". ", (settings.campaign.title, frame.assessed_words)),
         lead=to,
         blocks=tuple(_blocks(own, tender, settings.use.currency or "")),
         pdf_name=f"bidder-{code.lower()}.pdf" if context.with_pdf else "",

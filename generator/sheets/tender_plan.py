@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 
-from generator.language import say, say_as
+from generator.language import joined, say, say_as
 from generator.records.tender import RelampingPlan
 from generator.sheets.tender_description import Block, HeadingBlock, ListBlock, TableBlock
 from generator.sheets.tender_text import NONE, amount, number
@@ -33,7 +33,7 @@ def plan_blocks(
         (
             room.title or room.room,
             str(room.relamp_year),
-            f"{room.points} × {titles.get(room.existing_lamp, room.existing_lamp)}",
+            joined(" × ", (str(room.points), titles.get(room.existing_lamp, room.existing_lamp))),
             f"{room.quantity} × {names[room.new_lamp]}" if room.new_lamp else room.reason,
             number(room.existing_kwh, 0),
             number(room.new_kwh, 0),

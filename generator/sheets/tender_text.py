@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from decimal import Decimal
 
-from generator.language import say, say_as, told
+from generator.language import Capital, say, say_as, told
 from generator.quantities import QUANTITIES
 from generator.records.tender import money
 from generator.sheets.number_format import grouped, shown
@@ -60,8 +60,7 @@ def percent(share: float | Decimal, decimals: int = 1) -> str:
 
 def capital(text: str) -> str:
     """Text, said in the language that is being spoken, that begins with a capital letter."""
-    said = told(text)
-    return said[:1].upper() + said[1:]
+    return told(Capital(text))
 
 
 def chance(probability: float) -> str:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 
-from generator.language import say, say_as
+from generator.language import say, say_as, say_counted
 from generator.records.tender import CostItem, Outcome
 from generator.sheets.description import Caution
 
@@ -38,9 +38,11 @@ REPORT_LEAD = {
     "unranked": say("{lot}: the bids are not ranked, since the tender names no award criteria."),
 }
 
-LOT_OUTCOME = say(
-    "Of {bids} bids {admissible} may be accepted, {clarify} must be clarified first and {refused} "
-    "may not be accepted."
+LOT_OUTCOME = say_counted(
+    "Of {count} bid {admissible} may be accepted, {clarify} must be clarified first and {refused} "
+    "may not be accepted.",
+    "Of {count} bids {admissible} may be accepted, {clarify} must be clarified first and {refused} "
+    "may not be accepted.",
 )
 
 OUTCOMES: Mapping[str, str] = {
@@ -129,7 +131,9 @@ CHECK_TITLES = {
 ASKED_REPORTS = {
     "report": say("A test report with number and date that names the offered model."),
     "window": say("A date of the report from {begin} to {end}."),
-    "sample": say("Measurements of {units} units or more."),
+    "sample": say_counted(
+        "Measurements of {count} unit or more.", "Measurements of {count} units or more."
+    ),
     "laboratory": say("The name of the laboratory."),
     "accreditation": say("The accreditation of the laboratory."),
     "clauses": say("The requirements of the buyer, and these: {clauses}."),

@@ -4,12 +4,14 @@ from __future__ import annotations
 
 from generator.language import say, say_as
 from generator.records.figure import GRADE_WORDS as GRADE_NAMES
+from generator.records.figure import Grade
 from generator.records.verdict import BASIS_WORDS, VERDICT_WORDS, VerdictWord
 from generator.sheets.description import Caution
 
 __all__ = [
     "BASIS_WORDS",
     "CAUTIONS",
+    "CLASS_GRADES",
     "COMPARISON_SIGNS",
     "DRAWING_HEADINGS",
     "GRADE_NAMES",
@@ -26,6 +28,13 @@ __all__ = [
 ]
 
 NOT_MEASURED = say("not measured")
+
+CLASS_GRADES = {
+    Grade.COMPUTED: say_as("grade of a class", "computed"),
+    Grade.REPORTED: say_as("grade of a class", "reported"),
+    Grade.DECLARED: say_as("grade of a class", "declared"),
+}
+"""The three grades beside a class, which has another gender than a value in some languages."""
 
 COMPARISON_SIGNS = {
     "at least": "\u2265",

@@ -7,7 +7,7 @@ from fractions import Fraction
 import pytest
 
 from generator.conformity.evidence import LampRecord
-from generator.conformity.scope import in_scope, unit_in_scope, window_bounds
+from generator.conformity.scope import _figure_text, in_scope, unit_in_scope, window_bounds
 from generator.records.clause import DatedValue, LawBook
 from generator.records.figure import Figure, FigureSet, Grade
 from generator.records.lamp import Lamp
@@ -35,6 +35,18 @@ def test_bounds(window: DatedValue, x: str, lower: float, upper: float) -> None:
     assert float(found[0]) == pytest.approx(lower, abs=5e-6)
     assert float(found[1]) == pytest.approx(upper, abs=5e-6)
     assert found[1] - found[0] == F("0.0604")
+
+
+def test_figures_and_window_are_written_with_like_decimals(window: DatedValue) -> None:
+    # The window at x = 0.44, worked apart: y from 0.372222 to 0.432622.
+    figures = {"x": F("0.44"), "y": F("0.403512"), "luminous_flux_lm": F("668"), "ra": F("84.753")}
+    written = {name: str(_figure_text(name, figures, window)) for name in figures}
+    assert written == {
+        "x": "chromaticity x 0.44000",
+        "y": "chromaticity y 0.40351 (window 0.37222 to 0.43262)",
+        "luminous_flux_lm": "luminous flux 668.00 lm",
+        "ra": "general colour rendering index 84.75",
+    }
 
 
 def test_one_figure_outside_settles_it(window: DatedValue) -> None:

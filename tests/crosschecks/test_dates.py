@@ -29,6 +29,8 @@ def test_report_older_than_the_model(bench, report, severity, days) -> None:
         assert (found.severity, found.deviation) == (severity, -days)
         assert report.isoformat() in found.compared
         assert "2025-06-01" in found.compared
+        assert f"{days} day{'' if days == 1 else 's'} older" in found.compared
+        assert found.deviation_unit == "d"
 
 
 @pytest.mark.parametrize(("day", "count"), [(1, 0), (2, 1)])

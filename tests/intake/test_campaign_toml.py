@@ -116,6 +116,16 @@ def test_what_is_not_toml_is_named_by_its_line(text: str, row: int) -> None:
     assert problems == [(row, None, "TOML 1.0")]
 
 
+@pytest.mark.parametrize(
+    ("value", "found"),
+    [("[" * 5000, "lists or tables too deep"), ("9" * 5000, "a number of too many digits")],
+)
+def test_what_no_parser_takes_is_said_in_plain_words(value: str, found: str) -> None:
+    problems = ProblemList("campaign.toml")
+    assert read_settings(f"a = {value}", problems) is None
+    assert problems.problems[0].found.startswith(found)
+
+
 @pytest.mark.parametrize("text", ["", "campaign = 5\n", "[[campaign]]\n", "campaign = []\n"])
 def test_a_file_without_campaign_table(text: str) -> None:
     settings, problems = _read(text)

@@ -18,8 +18,11 @@ from generator.language.speaking import (
     speaking,
     spoken_language,
 )
+from generator.records.figure import Grade
 from generator.records.settings import Language
+from generator.sheets.lamp_words import USE_LABELS
 from generator.sheets.typeface import uncovered_characters
+from generator.sheets.words import CLASS_GRADES
 from tests.language.write_catalogues import (
     TRANSLATED,
     catalogue_path,
@@ -165,6 +168,21 @@ def test_polish_counts_have_three_forms():
     with speaking("pl"):
         forms = {told(say_counted("{count} unit", "{count} units", n)) for n in (1, 2, 5, 22)}
     assert len({form.split(maxsplit=1)[1] for form in forms}) == 3
+
+
+def test_a_class_has_its_own_gender_and_years_their_own_forms():
+    """Una clase declarada, un valor declarado; 1 roku, 5 lat: from memory."""
+    words = {}
+    for tag in ("es", "it", "pl"):
+        with speaking(tag):
+            cost = USE_LABELS["life"]
+            years = [told(cost.format(count=count)).split()[-1] for count in (1, 5)]
+            words[tag] = (told(CLASS_GRADES[Grade.DECLARED]), *years)
+    assert words == {
+        "es": ("declarada", "año", "años"),
+        "it": ("dichiarata", "anno", "anni"),
+        "pl": ("deklarowana", "roku", "lat"),
+    }
 
 
 def test_languages_have_their_own_names():

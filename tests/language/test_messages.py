@@ -93,6 +93,13 @@ def test_counts_choose_the_pattern():
         assert told(say_counted("{count} lamp", "{count} lamps", 2)) == "2 LAMPEN"
 
 
+def test_a_count_may_come_later():
+    later = say_counted("{count} lamp", "{count} lamps")
+    assert [later.format(count=number) for number in (1, 2)] == ["1 lamp", "2 lamps"]
+    with spoken_by(Backwards()):
+        assert [told(later.format(count=number)) for number in (1, 2)] == ["1 LAMPE", "2 LAMPEN"]
+
+
 def test_parts_put_together_are_said_one_by_one():
     passage = joined(" – ", [say("the lamp"), "Model 1.5", numeral("1.5")]) + "!"
     assert passage == "the lamp – Model 1.5 – 1.5!"

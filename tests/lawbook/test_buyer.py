@@ -66,7 +66,7 @@ def test_a_float_is_taken_by_its_text() -> None:
 def test_a_misspelt_quantity_gets_a_suggestion() -> None:
     ((key, found, expected, message),) = problems({**GOOD, "quantity": "luminous_flux"})
     assert key == "clause.1.quantity"
-    assert found == "'luminous_flux'"
+    assert found == '"luminous_flux"'
     assert expected == "luminous_flux_lm"
     assert "did you mean luminous_flux_lm" in message
 

@@ -74,6 +74,10 @@ def test_every_leaf_says_where_and_when_it_was_looked_up(book: LawBook) -> None:
         assert "shared" not in item.note
 
 
+def test_the_title_of_an_exemption_continues_a_sentence(book: LawBook) -> None:
+    assert [item.id for item in book.exemptions if not item.title[0].islower()] == []
+
+
 def test_every_eu_constant_was_read_but_for_the_printed_image(book: LawBook) -> None:
     not_read = {
         item.id

@@ -3,9 +3,13 @@
 from __future__ import annotations
 
 import dataclasses
+import json
+import subprocess
+import sys
 from dataclasses import dataclass
 from datetime import date
 from decimal import Decimal
+from functools import cache
 
 import numpy as np
 import pytest
@@ -576,3 +580,32 @@ def invented_context(invented_assessment) -> SheetContext:
         matrix=ComparisonMatrix(MATRIX, tuple(rows)),
         methods={"cct_ohno_2013": InventedMethod()},
     )
+
+
+LONG_WAY = """
+import json, sys
+import generator.sheets.engine_shortcuts as shortcuts
+import generator.sheets.pdf_sheet as pdf_sheet
+shortcuts.take_shortcuts = pdf_sheet.take_shortcuts = lambda: False
+for line in sys.stdin:
+    theme, page, of_lamp = json.loads(line)
+    document = pdf_sheet.pdf_engine(theme).lay_out(page, of_lamp=of_lamp)
+    print(pdf_sheet.written_pdf(document).hex(), flush=True)
+"""
+
+
+@pytest.fixture(scope="session")
+def long_way():
+    """Gives a function that renders a page without the shortcuts, in a process of its own."""
+    with subprocess.Popen(
+        [sys.executable, "-c", LONG_WAY], stdin=subprocess.PIPE, stdout=subprocess.PIPE, text=True
+    ) as process:
+
+        @cache
+        def render(page, theme="tender", *, of_lamp=True):
+            process.stdin.write(json.dumps([theme, page, of_lamp]) + "\n")
+            process.stdin.flush()
+            return bytes.fromhex(process.stdout.readline())
+
+        yield render
+        process.stdin.close()

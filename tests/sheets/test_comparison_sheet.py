@@ -20,6 +20,7 @@ from generator.sheets import describe_comparison, render_html, site_assets
 from generator.sheets.comparison_data import limit_lines, page_json
 from generator.sheets.comparison_ruler import draw_cell_ruler
 from generator.sheets.comparison_scatter import ScatterAxis, ScatterPoint, draw_scatter
+from generator.sheets.comparison_spectra import SPECTRUM_LINES
 from generator.sheets.drawings.margin_ruler import Distance
 from generator.sheets.html_sheet import render_paper
 from generator.sheets.themes import palette, templates_folder
@@ -117,6 +118,13 @@ def test_spectra_are_laid_over_one_another_white_by_white(invented_comparison):
     tree = ElementTree.fromstring(drawing.svg)  # noqa: S314 - our own drawing
     assert len(tree.findall(".//{http://www.w3.org/2000/svg}path[@fill='none']")) == 2
     assert drawing.table.headings[0] == "wavelength, nm"
+
+
+def test_lines_of_spectra_are_told_apart_without_colour():
+    dashes = [dash for _, dash in SPECTRUM_LINES]
+    assert len(set(dashes)) == len(dashes)
+    script = (templates_folder() / "base" / "scripts" / "comparison-plots.js").read_text("utf-8")
+    assert f"const LINES = {json.dumps([list(line) for line in SPECTRUM_LINES])};" in script
 
 
 def test_without_spectra_the_page_says_so(invented_assessment, invented_context):

@@ -6,6 +6,7 @@ from decimal import Decimal
 import pytest
 
 from generator.errors import SheetError
+from generator.language.speaking import speaking
 from generator.records.comparison import SheetContext
 from generator.records.figure import Figure, Grade
 from generator.records.risk import CampaignRisk
@@ -51,6 +52,15 @@ def test_figure_with_uncertainty():
 def test_declared_figure_is_shown_as_written():
     text = figure_text(_figure(value=Decimal("80.00"), grade=Grade.DECLARED), "ra")
     assert text.number == "80.00"
+
+
+def test_a_class_is_declared_in_its_own_gender():
+    """Una clase declarada, but un valor declarado: from memory."""
+    declared = {"quantity": "energy_efficiency_class", "value": "F", "grade": Grade.DECLARED}
+    with speaking("es"):
+        text = figure_text(_figure(**declared), "energy_efficiency_class")
+        value = figure_text(_figure(grade=Grade.DECLARED), "ra")
+        assert (f"{text.grade}", f"{value.grade}") == ("declarada", "declarado")
 
 
 def test_missing_figure_says_so_with_its_reason():

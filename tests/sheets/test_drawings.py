@@ -288,6 +288,15 @@ def test_colour_strip_draws_what_is_known():
     assert len(root.findall(f".//{SVG}rect")) == 16 + 8 + 16
 
 
+def test_numbers_hang_clear_of_the_teeth_where_words_are_large():
+    """On a narrow screen words are 13 units high, digits about nine of them."""
+    root = _root(draw_colour_strip([None] * 16, [40.0] * 16, "shift", TENDER))
+    teeth = root.findall(f".//{SVG}rect")[-16:]
+    foot = max(float(tooth.get("y")) + float(tooth.get("height")) for tooth in teeth)
+    number = next(text for text in root.iter(f"{SVG}text") if text.text == "40")
+    assert foot + 11 <= float(number.get("y")) <= 190
+
+
 def test_words_and_numbers_of_a_drawing_are_said_in_the_language():
     class Speaker:
         def pattern(self, message):

@@ -17,6 +17,7 @@ from generator.sheets import (
     site_assets,
     theme_overrides,
 )
+from generator.sheets.description import Pair
 from generator.sheets.html_sheet import render_paper
 from generator.sheets.themes import palette, paper_style, templates_folder, themes
 
@@ -277,3 +278,19 @@ def test_an_act_without_a_clause_that_applies_has_no_table(invented_assessment, 
         assert "<tbody>\n</tbody>" not in text
         assert f'<p class="outside act">{first.heading}</p>' in text
         assert text.count("Not applicable: ") == 1
+
+
+def test_a_reason_of_two_sentences_stands_in_no_brackets(invented_assessment, invented_context):
+    sheet = describe_lamp(invented_assessment, "L-01", invented_context)
+    first, *others = sheet.verdicts
+    reasons = (
+        Pair("Displacement factor", "the act sets no limit here. No limit up to 5 W"),
+        Pair("Excitation purity", ""),
+    )
+    told = dataclasses.replace(first, not_applicable=reasons)
+    told_sheet = dataclasses.replace(sheet, verdicts=(told, *others))
+    for page in (render_html(told_sheet), render_paper(told_sheet)):
+        assert (
+            "Not applicable: The act sets no limit here. No limit up to 5 W\u00a0– Displacement "
+            "factor. Excitation purity.</p>"
+        ) in re.sub("</?strong>", "", page)

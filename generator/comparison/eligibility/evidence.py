@@ -6,7 +6,7 @@ from collections.abc import Sequence
 from datetime import date
 
 from generator.comparison.eligibility.gate_findings import GateFindings
-from generator.language import joined, say, say_as
+from generator.language import joined, say, say_as, say_counted
 from generator.records.finding import Finding, Severity
 from generator.records.lamp import Lamp
 from generator.records.tender import Bid
@@ -169,10 +169,12 @@ def _check_sample(units: int, tender: TenderTable, findings: GateFindings) -> No
     findings.ask(
         "evidence-sample",
         say("Size of the sample"),
-        say(
-            "The measurements cover {units} units; the tender asks for {least} or more. Please "
+        say_counted(
+            "The measurements cover {count} unit; the tender asks for {least} or more. Please "
             "supply measurements of the units that are missing.",
-            units=units,
+            "The measurements cover {count} units; the tender asks for {least} or more. Please "
+            "supply measurements of the units that are missing.",
+            units,
             least=least,
         ),
     )
@@ -197,10 +199,12 @@ def check_offer(lamp: Lamp, lot: TenderLot, quantity: int, findings: GateFinding
         findings.ask(
             "offer-quantity",
             say_as("lamps", "Quantity"),
-            say(
-                "The bid offers {offered} lamps; the lot asks for {quantity}. Please confirm that "
+            say_counted(
+                "The bid offers {count} lamp; the lot asks for {quantity}. Please confirm that "
                 "the price holds for the whole quantity.",
-                offered=offered,
+                "The bid offers {count} lamps; the lot asks for {quantity}. Please confirm that "
+                "the price holds for the whole quantity.",
+                offered,
                 quantity=quantity,
             ),
         )

@@ -87,7 +87,7 @@ class ProblemList:
     ) -> None:
         """Note something that stops the issue."""
         self._errors += 1
-        self._note("error", message, row, column, found, expected)
+        self._note("error", message, row, column, shown(found), expected)
 
     def warning(
         self,
@@ -97,9 +97,18 @@ class ProblemList:
         column: str | None = None,
         found: str = "",
         expected: str = "",
+        whole: bool = False,
     ) -> None:
-        """Note something that is named on the sheet but does not stop the issue."""
-        self._note("warning", message, row, column, found, expected)
+        """Note something that is named on the sheet but does not stop the issue.
+
+        Parameters
+        ----------
+        message, row, column, found, expected
+            As :class:`generator.errors.Problem` has them.
+        whole
+            Whether what was found is a list made by the program, which is not cut.
+        """
+        self._note("warning", message, row, column, found if whole else shown(found), expected)
 
     def _note(
         self,
@@ -116,7 +125,7 @@ class ProblemList:
         place = None if column is None else shown(column)
         text = _printable(message)
         self._problems.append(
-            Problem(level, self.file, row, place, shown(found), _printable(expected), text)
+            Problem(level, self.file, row, place, _printable(found), _printable(expected), text)
         )
 
     @property

@@ -60,11 +60,11 @@ def _fidelity(canvas: Canvas, across: Scale, fidelity: Sequence[float | None]) -
     """Hang the loss of fidelity under the strip, a longer tooth for a greater loss."""
     top, low = _STRIP + _THICK + 17, _HEIGHT - 14
     for row, words in enumerate(told(say("loss of\nfidelity")).split("\n")):
-        canvas.text((0, top + 8 + 11 * row), words, "quiet")
+        canvas.text((0, top + 6 + 13 * row), words, "quiet")
     down = Scale(100, 40, top, low)
     for order, value in enumerate(fidelity, start=1):
         if value is None:
             continue
         at, tip = across(order), down(max(value, 40.0))
         canvas.rectangle((at - 6, top), (12, max(tip - top, 0.8)), "tooth")
-        canvas.text((at, tip + 10), f"{value:.0f}", anchor="middle")
+        canvas.text((at, tip + 12), f"{value:.0f}", anchor="middle")

@@ -4,7 +4,7 @@
 
 (() => {
   const SVG = "http://www.w3.org/2000/svg";
-  const LINES = [["ink", ""], ["accent", ""], ["bad", "7 2.5"], ["good", "2 2"], ["open", "8 2 2 2"], ["tooth", "4 3"]];
+  const LINES = [["ink", ""], ["accent", "14 3"], ["bad", "7 2.5"], ["good", "2 2"], ["open", "8 2 2 2"], ["tooth", "4 3"]];
 
   function element(name, attributes, words) {
     const made = document.createElementNS(SVG, name);
