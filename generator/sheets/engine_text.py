@@ -6,7 +6,6 @@ measures, and makes and shapes them again for every word it paints.
 
 from __future__ import annotations
 
-import struct
 import sys
 from dataclasses import dataclass
 from functools import lru_cache
@@ -35,6 +34,7 @@ class _Memory:
 
 _memory = _Memory([])
 _MOST_LINES = 5_000
+_SOFT_HYPHEN = "\u00ad"
 
 
 def forget_lines() -> None:
@@ -231,71 +231,26 @@ def _font_keys(plain: Any) -> Any:
     return font_key
 
 
-def _first_line_painter(plain: Any) -> Any:  # noqa: C901 - one loop over runs and glyphs
+def _first_line_painter(plain: Any) -> Any:
     """Paint a line whose glyphs stand where the face puts them; others as the engine does."""
-    from weasyprint.text.ffi import FROM_UNITS, ffi, pango
+    from weasyprint.text.ffi import pango
 
-    glyph_form = struct.Struct("=IiiiI")
-    if ffi.sizeof("PangoGlyphInfo") != glyph_form.size:
-        return plain
-    not_plain = pango.PANGO_GLYPH_EMPTY
-    """Letters without a mark, such as soft hyphens, and above them those that no face has."""
+    from generator.sheets.setting.shapes import shape_of_line, write_spans
 
     def paint(
         stream: Any, textbox: Any, text_overflow: Any, block_ellipsis: Any, matrix: Any
     ) -> Any:
-        others = (stream, textbox, text_overflow, block_ellipsis, matrix)
-        layout = textbox.pango_layout
-        if text_overflow == "ellipsis" or block_ellipsis != "none":
-            return plain(*others)
-        if not layout.text.strip():
+        text, layout = textbox.pango_layout.text, textbox.pango_layout.layout
+        if text_overflow == "ellipsis" or block_ellipsis != "none" or _SOFT_HYPHEN in text:
+            return plain(stream, textbox, text_overflow, block_ellipsis, matrix)
+        if not text.strip():
             return []
-        runs = []
-        run = pango.pango_layout_get_line_readonly(layout.layout, 0).runs[0]
-        while run != ffi.NULL:
-            item, run = run.data, run.next
-            string = item.glyphs
-            font, font_size = stream.add_font(item.item.analysis.font)
-            glyphs = list(
-                glyph_form.iter_unpack(
-                    ffi.buffer(string.glyphs, string.num_glyphs * glyph_form.size)
-                )
-            )
-            moved = any(glyph >= not_plain or across or up for glyph, _, across, up, _ in glyphs)
-            if moved or font.bitmap or font.png or font.svg or font.colr:
-                return plain(*others)
-            runs.append((item, glyphs, font, font_size))
+        line = pango.pango_layout_get_line_readonly(layout, 0)
+        shape = shape_of_line(line, text.encode(), textbox.style)
+        if shape.spans is None:
+            return plain(stream, textbox, text_overflow, block_ellipsis, matrix)
         stream.set_text_matrix(*matrix.values)
-        for item, glyphs, font, font_size in runs:
-            stream.set_font_size(font.hash, font_size)
-            if not font.to_unicode.keys() >= {glyph[0] for glyph in glyphs}:
-                _map_glyphs(font, item, glyphs, layout.text.encode())
-            written, widths = "", font.widths
-            scale = 1000 * FROM_UNITS / font_size
-            for glyph, width, *_ in glyphs:
-                if glyph not in widths:
-                    pango.pango_font_get_glyph_extents(
-                        item.item.analysis.font, glyph, stream.ink_rect, stream.logical_rect
-                    )
-                    widths[glyph] = round(stream.logical_rect.width * scale)
-                written += f"{glyph:04x}"
-                if nearer := int(widths[glyph] - width * scale):
-                    written += f">{nearer}<"
-            stream.stream.append(f"[<{written}>] TJ".replace("<>", "").encode())
+        write_spans(stream, shape.spans)
         return []
 
     return paint
-
-
-def _map_glyphs(font: Any, item: Any, glyphs: Any, text: bytes) -> None:
-    """Tell what the glyphs of a run stand for."""
-    start, end = item.item.offset, item.item.offset + item.item.length
-    backwards = item.item.analysis.level % 2
-    places = [item.glyphs.log_clusters[at] for at in range(len(glyphs))]
-    for at, (glyph, *_) in enumerate(glyphs):
-        if backwards:
-            last = places[at - 1] if at else end - start
-        else:
-            last = places[at + 1] if at + 1 < len(glyphs) else end - start
-        if glyph not in font.to_unicode:
-            font.to_unicode[glyph] = text[start + places[at] : start + last].decode()

@@ -2,14 +2,15 @@
 
 Run from the root of the checkout, on one core::
 
-    python tests/benchmarks/bench_pdf.py CAMPAIGN_FOLDER
+    python tests/benchmarks/bench_pdf.py CAMPAIGN_FOLDER [LANGUAGE]
 
 For every theme the first lamps of the campaign warm the engine up; each of the others is made
 once, the whole way from the description to the bytes, as in a batch. Between them blank documents
-are made, and the median of each kind is the baseline:
+are made, and the median of each kind is a baseline:
 
-- ``as it comes``: by the engine without anything of ours, its faces loaded once; the bar is ten
-  of these a page;
+- ``by default``: one call of the engine as it comes, nothing kept from the call before; the bar is
+  ten of these a page;
+- ``faces kept``: the same with the faces loaded once;
 - ``our own way``: by our engine with its style sheets and shortcuts, as PDF/A-3a.
 """
 
@@ -29,6 +30,7 @@ import pikepdf
 
 from generator.datasets import sources
 from generator.datasets.methods import method
+from generator.language.speaking import speaking
 from generator.metrics import curves_of
 from generator.pipeline import assess
 from generator.records.comparison import SheetContext
@@ -42,11 +44,13 @@ from weasyprint import HTML
 from weasyprint.text.fonts import FontConfiguration
 faces = FontConfiguration()
 for _ in sys.stdin:
-    start = time.process_time()
-    HTML(string=sys.argv[1]).write_pdf(font_config=faces)
-    print(time.process_time() - start, flush=True)
+    for kept in ({}, {"font_config": faces}):
+        start = time.process_time()
+        HTML(string=sys.argv[1]).write_pdf(**kept)
+        print(time.process_time() - start, flush=True)
 """
 WARMING = 3
+BASELINES = ("by default", "faces kept", "our own way")
 BLANK = (
     '<!DOCTYPE html><html lang="en"><head><title>blank</title></head><body><p>.</p></body></html>'
 )
@@ -83,11 +87,11 @@ class AsItComes:
             text=True,
         )
 
-    def blank(self):
-        """Time of a blank document [s]."""
+    def blanks(self):
+        """Times of a blank document, by default and with the faces kept [s]."""
         self._process.stdin.write("\n")
         self._process.stdin.flush()
-        return float(self._process.stdout.readline())
+        return [float(self._process.stdout.readline()) for _ in range(2)]
 
 
 def main():
@@ -101,26 +105,25 @@ def main():
     lamps = [lamp.lamp_id for lamp in assessment.campaign.lamps]
     for theme in themes():
         dressed = in_theme(assessment, theme)
-        sheets = [describe_lamp(dressed, lamp, context) for lamp in lamps]
+        with speaking(sys.argv[2] if len(sys.argv) > 2 else "en"):
+            sheets = [describe_lamp(dressed, lamp, context) for lamp in lamps]
         engine = pdf_engine(theme)
         blank = lambda engine=engine: written_pdf(engine.lay_out(BLANK))  # noqa: E731 - short
         for sheet in sheets[:WARMING]:
             render_pdf(sheet)
             blank()
-            plain_engine.blank()
-        costs, floors, plains = [], [], []
+            plain_engine.blanks()
+        costs, floors = [], []
         for sheet in sheets[WARMING:]:
             data, spent = seconds(lambda sheet=sheet: render_pdf(sheet))
             costs.append(spent / pages_of(data))
-            floors.append(seconds(blank)[1])
-            plains.append(plain_engine.blank())
-        page, own, plain = map(statistics.median, (costs, floors, plains))
-        print(
-            f"{theme:12} {1000 * page:5.0f} ms a page (largest {1000 * max(costs):4.0f})  "
-            f"as it comes: {page / plain:4.1f} of {1000 * plain:4.1f} ms, "
-            f"largest {max(costs) / plain:4.1f}  "
-            f"our own way: {page / own:4.1f} of {1000 * own:4.1f} ms"
-        )
+            floors.append([*plain_engine.blanks(), seconds(blank)[1]])
+        page, most = statistics.median(costs), max(costs)
+        print(f"{theme:12} {1000 * page:4.0f} ms a page, dearest {1000 * most:4.0f}", end="")
+        for name, times in zip(BASELINES, zip(*floors, strict=True), strict=True):
+            floor = statistics.median(times)
+            print(f"   {name} {page / floor:4.1f}, {most / floor:4.1f}", end="")
+        print()
 
 
 if __name__ == "__main__":

@@ -11,7 +11,16 @@ from weasyprint.pdf import stream
 from weasyprint.text import line_break
 from weasyprint.text.ffi import FROM_UNITS, TO_UNITS, ffi, pango
 
-__all__ = ["Shape", "broken", "forget_shapes", "shaped", "strut", "write_shape"]
+__all__ = [
+    "Shape",
+    "broken",
+    "forget_shapes",
+    "shape_of_line",
+    "shaped",
+    "strut",
+    "write_shape",
+    "write_spans",
+]
 
 _GLYPH = struct.Struct("=IiiiI")
 _MOST_SHAPES = 30_000
@@ -71,9 +80,6 @@ class _Hand:
 _HANDS: WeakSet[_Hand] = WeakSet()
 """Every hand; each lives with the faces that it sets texts in."""
 
-_HELD: dict[Any, Any] = {}
-"""Font -> a layout that uses it, so that it lives."""
-
 
 def strut(style: Any) -> tuple[float, float]:
     """Height of a line and its baseline from the top [px].
@@ -126,7 +132,7 @@ def shaped(text: str, style: Any) -> Shape:
     if shape is None:
         hand.layout.set_text(text)
         line = pango.pango_layout_get_line_readonly(hand.layout.layout, 0)
-        shape = _shape(line, text.encode(), style)
+        shape = shape_of_line(line, text.encode(), style)
         if shape.spans is None:
             layout = line_break.create_layout(text, style, None, None, 0)
             shape = Shape(shape.width, None, layout)
@@ -163,7 +169,7 @@ def _broken(text: str, style: Any, width: float, layout: Any) -> list[Shape] | N
             line = pango.pango_layout_get_line_readonly(layout.layout, len(shapes))
             if line == ffi.NULL:
                 return shapes
-            shape = _shape(line, written, style)
+            shape = shape_of_line(line, written, style)
             if shape.spans is None:
                 return None
             shapes.append(shape)
@@ -171,21 +177,31 @@ def _broken(text: str, style: Any, width: float, layout: Any) -> list[Shape] | N
         pango.pango_layout_set_width(layout.layout, -1)
 
 
-def _shape(line: Any, text: bytes, style: Any) -> Shape:
-    """The shape of a line of a layout."""
+def shape_of_line(line: Any, text: bytes, style: Any) -> Shape:
+    """Give the shape of a line of a layout.
+
+    Parameters
+    ----------
+    line
+        The line, of Pango.
+    text
+        The text of the whole layout.
+    style
+        Its style, of the engine.
+    """
     width, _ = line_break.line_size(line, style)
     spans: list[_Span] = []
     run = line.runs[0] if line.runs != ffi.NULL else ffi.NULL
     while run != ffi.NULL:
         item, run = run.data, run.next
-        span = _span(item, text, style)
+        span = _span(item, text)
         if span is None:
             return Shape(width, None)
         spans.append(span)
     return Shape(width, tuple(spans))
 
 
-def _span(item: Any, text: bytes, style: Any) -> _Span | None:
+def _span(item: Any, text: bytes) -> _Span | None:
     """The glyphs of an item; ``None`` where one stands elsewhere than the face puts it."""
     string, font = item.glyphs, item.item.analysis.font
     size = string.num_glyphs * _GLYPH.size
@@ -194,11 +210,6 @@ def _span(item: Any, text: bytes, style: Any) -> _Span | None:
     if any(glyph >= unknown or across or up for glyph, _, across, up, _ in glyphs):
         return None
     key, _, font_size = stream.get_pango_font_key(font)
-    if key not in _HELD:
-        start = item.item.offset
-        words = text[start : start + item.item.length].decode()
-        _HELD[key] = line_break.create_layout(words, style, None, None, 0)
-        pango.pango_layout_get_line_readonly(_HELD[key].layout, 0)
     scale = 1000 * FROM_UNITS / font_size
     widths: dict[int, int] = {}
     operator = ""
@@ -255,16 +266,26 @@ def write_shape(page: Any, shape: Shape, style: Any, x: float, y: float) -> None
         text_box = TextBox(shape.layout, style)
         draw_first_line(page, text_box, "clip", "none", Matrix(d=-1, e=x, f=y))
         return
-    operators = page.stream
-    operators.append(b"1 0 0 -1 %.3f %.3f Tm" % (x, y))
-    for span in shape.spans:
+    page.stream.append(b"1 0 0 -1 %.3f %.3f Tm" % (x, y))
+    write_spans(page, shape.spans)
+
+
+def write_spans(page: Any, spans: tuple[_Span, ...]) -> None:
+    """Write glyphs where the page stands, inside a text object.
+
+    Parameters
+    ----------
+    page
+        The page of the engine.
+    spans
+        The glyphs.
+    """
+    for span in spans:
         font = page._fonts.get(span.key) or page.add_font(span.font)[0]
         page.set_font_size(font.hash, span.size)
-        known = font.__dict__.setdefault("set_spans", set())
-        if id(span) not in known:
-            known.add(id(span))
+        if not font.to_unicode.keys() >= span.letters.keys():
             for glyph, width in span.widths.items():
                 font.widths.setdefault(glyph, width)
             for glyph, letters in span.letters.items():
                 font.to_unicode.setdefault(glyph, letters)
-        operators.append(span.operator)
+        page.stream.append(span.operator)
