@@ -22,6 +22,9 @@ _COMPOUND = re.compile(r"(\+?)\s*([^\s>+,]+)")
 _BEYOND = re.compile(r"~|:(?!:|(?:before|after|root|marker)\b)")
 _ATTRIBUTE = re.compile(r"\[[^]]*\]")
 _NAME = re.compile(r"\.?[\w-]+")
+_BY_PAGE = re.compile(r"\d(?:vw|vh|vi|vb|vmin|vmax)\b")
+"""Lengths that follow the size of the page, which is not the same for all documents."""
+
 _MOST_KINDS = 20_000
 
 
@@ -57,7 +60,7 @@ class _Memory:
 
 def _asked_by_place(style: str) -> frozenset[str] | None:
     """Tags and classes whose place a style sheet asks for; ``None`` where it asks for more."""
-    if "@layer" in style:
+    if "@layer" in style or _BY_PAGE.search(style):
         return None
     placed: set[str] = set()
     for selectors in _SELECTORS.findall(_COMMENT.sub("", style)):

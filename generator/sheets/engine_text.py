@@ -27,20 +27,29 @@ _BESIDE_FONT = (
 
 @dataclass(slots=True)
 class _Memory:
-    """How many broken lines are kept; with a new list, those of the old one are forgotten."""
+    """How many broken lines are kept since the last time that they were let go.
 
-    lines: list[int]
+    Parameters
+    ----------
+    age
+        How often they were; lines of an earlier age are not used again.
+    lines
+        Their number.
+    """
+
+    age: int = 0
+    lines: int = 0
 
 
-_memory = _Memory([])
+_memory = _Memory()
 _MOST_LINES = 5_000
 _SOFT_HYPHEN = "\u00ad"
 
 
 def forget_lines() -> None:
     """Let go of the lines of past documents where they have become many."""
-    if len(_memory.lines) > _MOST_LINES:
-        _memory.lines = []
+    if _memory.lines > _MOST_LINES:
+        _memory.age, _memory.lines = _memory.age + 1, 0
 
 
 def replace_everywhere(plain: Any, short: Any) -> None:
@@ -191,12 +200,12 @@ def shorten_text() -> None:  # noqa: C901, PLR0915 - one small function for each
         rest = (max_width, justification_spacing, is_line_start, minimum)
         if type(own) is not ComputedStyle or style["white_space"] != own["white_space"]:
             return plain_split(text, style, context, *rest)
-        if own.__dict__.get("lines_of") is not _memory.lines:
-            own.lines_of, own.lines = _memory.lines, {}
+        if own.__dict__.get("age_of_lines") != _memory.age:
+            own.age_of_lines, own.lines = _memory.age, {}
         kept, key = own.lines, (text, *rest)
         if key not in kept:
             kept[key] = plain_split(text, style, context, *rest)
-            _memory.lines.append(1)
+            _memory.lines += 1
         return kept[key]
 
     replace_everywhere(plain_split, split_first_line)

@@ -87,7 +87,9 @@ def lighten_compression() -> None:
     """Let the engine compress what it packs itself no harder than the rest."""
     import pydyf
 
-    pydyf.zlib = SimpleNamespace(compressobj=lambda level: zlib.compressobj(min(level, _LEVEL)))
+    pydyf.zlib = SimpleNamespace(
+        compress=zlib.compress, compressobj=lambda level: zlib.compressobj(min(level, _LEVEL))
+    )
 
 
 def write_out(pdf: Any) -> None:

@@ -20,6 +20,7 @@ from generator.sheets.setting.reading import (
     paragraph_of,
     stands_in_room,
 )
+from generator.sheets.setting.set_box import SetBox
 from generator.sheets.setting.structure import PageStructure
 from generator.sheets.setting.table import grid_of
 from generator.sheets.setting.table_box import SetTable
@@ -55,7 +56,7 @@ def _lay_out_boxes() -> None:
     plain = block.block_level_layout_switch
 
     def block_level_layout_switch(context: Any, box: Any, *others: Any, **named: Any) -> Any:
-        if isinstance(box, SetParagraph | SetTable):
+        if isinstance(box, SetBox):
             bottom_space, skip, around, page_is_empty = others[:4]
             start = next(iter(skip)) if skip else 0
             return (*box.lay_out(context, bottom_space, start, around, page_is_empty), None)
@@ -69,7 +70,7 @@ def _paint_boxes() -> None:
 
     def draw_block_level(page: Any, stream: Any, tree: Any) -> None:
         for box, inner in tree.items():
-            if isinstance(box, SetParagraph | SetTable):
+            if isinstance(box, SetBox):
                 box.paint(stream)
             else:
                 plain(page, stream, {box: {}})
@@ -85,7 +86,7 @@ def _tag_boxes() -> None:
     def build_box_tree(
         box: Any, parent: Any, pdf: Any, number: int, nums: Any, annotations: Any, tags: Any
     ) -> Iterator[Any]:
-        if isinstance(box, SetParagraph | SetTable):
+        if isinstance(box, SetBox):
             made = box.tag(parent, PageStructure(pdf, number, nums, tags))
             if made is not None:
                 yield made

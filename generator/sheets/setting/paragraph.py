@@ -9,10 +9,12 @@ operators that write it.
 from __future__ import annotations
 
 import re
+from collections.abc import Iterator
 from dataclasses import dataclass, field, replace
 from functools import lru_cache
 from typing import Any, NamedTuple
 
+from pydyf import String
 from weasyprint.text import line_break
 from weasyprint.text.ffi import ffi
 
@@ -326,12 +328,19 @@ class Paragraph:
         """
         if not any(run.ground is not None for run in self.runs):
             return
+        for stretch, x, y in self._placed(lines, place):
+            if stretch.run.ground is not None:
+                _paint_ground(page, stretch, x, y)
+
+    def _placed(
+        self, lines: list[Line], place: tuple[float, float, float]
+    ) -> Iterator[tuple[_Stretch, float, float]]:
+        """The pieces of lines, each with the point where its baseline begins [px]."""
         left, top, width = place
         for line in lines:
+            x, y = left + self.offset(line, width), top + line.baseline
             for stretch in line.stretches:
-                if stretch.run.ground is not None:
-                    x = left + self.offset(line, width) + stretch.x
-                    _paint_ground(page, stretch, x, top + line.baseline)
+                yield stretch, x + stretch.x, y
             top += line.height
 
     def write(
@@ -354,25 +363,22 @@ class Paragraph:
         part
             The part to be written; ``None`` for all.
         """
-        left, top, width = place
         page.begin_text()
         colour = None
-        for line in lines:
-            x, y = left + self.offset(line, width), top + line.baseline
-            for stretch in line.stretches:
-                run = stretch.run
-                if part is None or run.part == part:
-                    if run.style["color"] is not colour:
-                        colour = run.style["color"]
-                        page.set_color(colour)
-                    language = run.style["lang"]
-                    foreign = language != self.style["lang"]
-                    if foreign:
-                        page.stream.append(f"/Span <</Lang ({language})>> BDC".encode())
-                    write_shape(page, stretch.shape, run.style, x + stretch.x, y)
-                    if foreign:
-                        page.stream.append(b"EMC")
-            top += line.height
+        for stretch, x, y in self._placed(lines, place):
+            run = stretch.run
+            if part is not None and run.part != part:
+                continue
+            if run.style["color"] is not colour:
+                colour = run.style["color"]
+                page.set_color(colour)
+            language = run.style["lang"]
+            foreign = language != self.style["lang"]
+            if foreign:
+                page.stream.append(b"/Span <</Lang %b>> BDC" % String(language).data)
+            write_shape(page, stretch.shape, run.style, x, y)
+            if foreign:
+                page.stream.append(b"EMC")
         page.end_text()
 
 

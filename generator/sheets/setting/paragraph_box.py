@@ -4,30 +4,17 @@ from __future__ import annotations
 
 from typing import Any
 
-from weasyprint.formatting_structure import boxes
 from weasyprint.layout import block
 from weasyprint.layout.float import avoid_collisions
 
 from generator.sheets.setting.paragraph import Line, Paragraph
+from generator.sheets.setting.set_box import SetBox
 from generator.sheets.setting.structure import PageStructure
 
 __all__ = ["SetParagraph"]
 
-_ANYWHERE = {"break": "any", "page": None}
 
-
-class _Size:
-    """Stands where the engine asks a replaced box for its size."""
-
-    def __init__(self, paragraph: Paragraph) -> None:
-        self._paragraph = paragraph
-
-    def get_intrinsic_size(self, resolution: float, font_size: float) -> tuple[Any, Any, Any]:
-        del resolution, font_size
-        return self._paragraph.longest, None, None
-
-
-class SetParagraph(boxes.BlockReplacedBox):  # type: ignore[misc] # the library has no types
+class SetParagraph(SetBox):
     """A block whose lines are set here.
 
     Parameters
@@ -41,7 +28,7 @@ class SetParagraph(boxes.BlockReplacedBox):  # type: ignore[misc] # the library 
     """
 
     def __init__(self, element: Any, style: Any, paragraph: Paragraph) -> None:
-        super().__init__(element.tag, style, element, _Size(paragraph))
+        super().__init__(element, style)
         self.paragraph = paragraph
         self.lines: list[Line] = []
         self.width: Any = 0
@@ -50,26 +37,7 @@ class SetParagraph(boxes.BlockReplacedBox):  # type: ignore[misc] # the library 
     def lay_out(
         self, context: Any, bottom_space: float, start: int, around: Any, page_is_empty: bool
     ) -> Any:
-        """Set the lines that the page has room for.
-
-        Parameters
-        ----------
-        context
-            Layout context of the engine.
-        bottom_space
-            Room to be left at the bottom of the page [px].
-        start
-            The first line to be set.
-        around
-            The containing block.
-        page_is_empty
-            Whether something has to be set, whatever room there is.
-
-        Returns
-        -------
-        tuple
-            The box, where to go on, and what else the engine asks for.
-        """
+        """Set the lines that the page has room for; see the base."""
         box = self.copy()
         box.remove_decoration_sides = set()
         if page_is_empty and context.current_page > 1 and not context.forced_break:
@@ -83,11 +51,16 @@ class SetParagraph(boxes.BlockReplacedBox):  # type: ignore[misc] # the library 
         resume_at = None if kept == len(lines) else {start + kept: None}
         apart = block.avoid_page_break(box.style["break_inside"], context)
         if (lines and not kept) or (resume_at and apart and not page_is_empty):
-            return None, None, dict(_ANYWHERE), [], False
+            return self.nowhere()
         box.remove_decoration(start=False, end=resume_at is not None)
         box.lines = lines[:kept]
         box.height = sum(line.height for line in box.lines)
-        return box, resume_at, dict(_ANYWHERE), [], not (lines or box._is_framed())
+        return box.placed(resume_at, collapses=not (lines or box._is_framed()))
+
+    @property
+    def longest(self) -> float:
+        """Length of the text on one line [px]."""
+        return self.paragraph.longest
 
     def _stand_beside(self, context: Any, around: Any) -> None:
         """Make room for what floats beside the block: all its lines are as short."""

@@ -5,27 +5,17 @@ from __future__ import annotations
 from itertools import groupby
 from typing import Any
 
-from weasyprint.formatting_structure import boxes
 from weasyprint.layout import block
 
 from generator.sheets.setting.grounds import bare_box, paint_ground, paints_ground
+from generator.sheets.setting.set_box import SetBox
 from generator.sheets.setting.structure import PageStructure
 from generator.sheets.setting.table import Cell, Cut, Grid
 
 __all__ = ["SetTable"]
 
-_ANYWHERE = {"break": "any", "page": None}
 
-
-class _Size:
-    """Stands where the engine asks a replaced box for its size."""
-
-    def get_intrinsic_size(self, resolution: float, font_size: float) -> tuple[Any, Any, Any]:
-        del resolution, font_size
-        return 0, 0, None
-
-
-class SetTable(boxes.BlockReplacedBox):  # type: ignore[misc] # the library has no types
+class SetTable(SetBox):
     """A table whose rows are set here.
 
     Parameters
@@ -35,7 +25,7 @@ class SetTable(boxes.BlockReplacedBox):  # type: ignore[misc] # the library has 
     """
 
     def __init__(self, grid: Grid) -> None:
-        super().__init__(grid.element.tag, grid.style, grid.element, _Size())
+        super().__init__(grid.element, grid.style)
         self.grid = grid
         self.cut: Any = None
         self.drawn: dict[Cell, tuple[float, float, float, float]] = {}
@@ -43,26 +33,7 @@ class SetTable(boxes.BlockReplacedBox):  # type: ignore[misc] # the library has 
     def lay_out(
         self, context: Any, bottom_space: float, start: int, around: Any, page_is_empty: bool
     ) -> Any:
-        """Set the rows that the page has room for.
-
-        Parameters
-        ----------
-        context
-            Layout context of the engine.
-        bottom_space
-            Room to be left at the bottom of the page [px].
-        start
-            The first row to be set.
-        around
-            The containing block.
-        page_is_empty
-            Whether something has to be set, whatever room there is.
-
-        Returns
-        -------
-        tuple
-            The box, where to go on, and what else the engine asks for.
-        """
+        """Set the rows that the page has room for; see the base."""
         box = self.copy()
         outer = self.grid.outer["left"] + self.grid.outer["right"]
         within = self.style["box_sizing"] == "border-box"
@@ -78,7 +49,7 @@ class SetTable(boxes.BlockReplacedBox):  # type: ignore[misc] # the library has 
             stop += 1
         whole = block.avoid_page_break(box.style["break_inside"], context)
         if (stop == start and rows) or (whole and stop < len(rows) and not page_is_empty):
-            return None, None, dict(_ANYWHERE), [], False
+            return self.nowhere()
         box.cut = Cut(setting, start, stop)
         box.width = setting.width + outer
         box.height = box.cut.height
@@ -86,7 +57,7 @@ class SetTable(boxes.BlockReplacedBox):  # type: ignore[misc] # the library has 
         resume_at = None if stop == len(rows) else {stop: None}
         if resume_at:
             box.margin_bottom = 0
-        return box, resume_at, dict(_ANYWHERE), [], False
+        return box.placed(resume_at)
 
     def paint(self, stream: Any) -> None:
         """Paint caption, cells and lines on a page of the engine."""

@@ -1,5 +1,8 @@
 """Paragraphs that the sheets set themselves: words, places and languages as the engine has them."""
 
+import io
+
+import pikepdf
 import pytest
 
 from generator.sheets import pdf_engine
@@ -200,6 +203,14 @@ def test_the_language_of_a_part_is_in_the_file():
         ("Lbl", "it"),
         ("LBody", "pl"),
     }
+
+
+def test_a_language_that_is_none_cannot_write_into_the_page():
+    body = '<p>word <span lang="x) &gt;&gt; BDC (y">mot</span> end</p>'
+    _, data = _printed(body)
+    with pikepdf.open(io.BytesIO(data)) as pdf:
+        operators = [str(item.operator) for item in pikepdf.parse_content_stream(pdf.pages[0])]
+    assert operators.count("BDC") + operators.count("BMC") == operators.count("EMC")
 
 
 def test_a_page_says_its_language_once():
